@@ -1,0 +1,42 @@
+package org.sweeptally.site;
+
+import java.util.Optional;
+import org.sweeptally.geo.GeoPolygon;
+import org.sweeptally.geo.LatLon;
+import org.sweeptally.model.DetectionProfile;
+
+/**
+ * One sensor that measures positions.
+ *
+ * @param position             where it stands; empty for a sensor that moves and says in every part where it is
+ * @param roams                where a moving sensor may be; empty: anywhere
+ * @param reachMetres          beyond it the probability of detection is 0
+ * @param noise                of a measurement that brings none of its own
+ * @param detectionProbability by distance
+ * @param clutterPerScan       expected number of false detections in a scan of the whole reach
+ * @param intervalSeconds      usual time between scans; only for forecasts and advice, the filter takes times as they come
+ * @param sweepSeconds         how long a look lasts; the scan takes effect that long after its scan time
+ * @param leastIntervalSeconds no scan comes sooner than this after the one before
+ * @param disorderSeconds      how far the sensor's parts may be out of their own order
+ * @param silentSeconds        how long the sensor may say nothing before the picture goes on without it
+ */
+public record SensorSettings(
+        String name,
+        Optional<LatLon> position,
+        Optional<GeoPolygon> roams,
+        double reachMetres,
+        PositionNoise noise,
+        DetectionProfile detectionProbability,
+        double clutterPerScan,
+        double intervalSeconds,
+        double sweepSeconds,
+        double leastIntervalSeconds,
+        double disorderSeconds,
+        double silentSeconds) {
+
+    /**
+     * Standard deviations of a measured position, metres, along the line of sight and across it; the
+     * same number twice for a sensor whose error has no direction.
+     */
+    public record PositionNoise(double alongSigmaMetres, double acrossSigmaMetres) {}
+}
