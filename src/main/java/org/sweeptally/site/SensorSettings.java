@@ -4,6 +4,7 @@ import java.util.Optional;
 import org.sweeptally.geo.GeoPolygon;
 import org.sweeptally.geo.LatLon;
 import org.sweeptally.model.DetectionProfile;
+import org.sweeptally.model.SensorModel;
 
 /**
  * One sensor that measures positions.
@@ -33,6 +34,11 @@ public record SensorSettings(
         double leastIntervalSeconds,
         double disorderSeconds,
         double silentSeconds) {
+
+    /** The sensor as the filter sees it. */
+    public SensorModel model() {
+        return new SensorModel(name, reachMetres, detectionProbability, clutterPerScan);
+    }
 
     /**
      * Standard deviations of a measured position, metres, along the line of sight and across it; the

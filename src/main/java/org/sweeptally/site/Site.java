@@ -3,6 +3,7 @@ package org.sweeptally.site;
 import java.util.List;
 import java.util.Optional;
 import java.util.OptionalLong;
+import org.sweeptally.filter.FilterSettings;
 
 /**
  * Everything that a site file says, validated, with every default filled in.
@@ -38,5 +39,27 @@ public record Site(
 
     public Optional<RegionSettings> region(String regionName) {
         return regions.stream().filter(r -> r.name().equals(regionName)).findFirst();
+    }
+
+    /** What the recursion of a region needs, in metres and seconds. */
+    public FilterSettings filterSettings(RegionSettings region) {
+        double squareMetresPerSquareKilometre = 1e6;
+        double secondsPerHour = 3600;
+        return new FilterSettings(
+                motion.accelerationNoise(),
+                motion.speedSigmaMetresPerSecond(),
+                lifetimeSeconds,
+                unseen.birthsPerSquareKilometrePerHour() / squareMetresPerSquareKilometre / secondsPerHour,
+                unseen.outsidePerSquareKilometre() / squareMetresPerSquareKilometre,
+                unseen.initialPerSquareKilometre() / squareMetresPerSquareKilometre,
+                thresholds.confirming(),
+                thresholds.ending(),
+                FilterSettings.RECYCLING_BELOW,
+                bounds.gateSigmas(),
+                region.unseenCellMetres(),
+                bounds.components(),
+                bounds.unseenTerms(),
+                bounds.exactAssociationSteps(),
+                bounds.propagationSweeps());
     }
 }

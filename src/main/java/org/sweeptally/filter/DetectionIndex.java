@@ -1,0 +1,125 @@
+package org.sweeptally.filter;
+
+import java.util.Arrays;
+import java.util.List;
+import org.ejml.data.DMatrix4x4;
+import org.sweeptally.model.Gaussian;
+import org.sweeptally.model.PositionMeasurement;
+
+/**
+ * Finds the measurements that may lie in a density's gate without looking at all of them: a raster of buckets over the
+ * scan, about one measurement in each. Building costs O(m), a query what it finds.
+ */
+final class DetectionIndex {
+
+    private final double minEast;
+    private final double minNorth;
+    private final double bucketMetres;
+    private final int columns;
+    private final int rows;
+
+    /** Measurements sorted by bucket, and within a bucket by their place in the scan. */
+    private final int[] bucketStart;
+    private final int[] sorted;
+
+    private final double largestSigma;
+    private final double leastLag;
+    private final double greatestLag;
+
+    private int[] found = new int[64];
+
+    DetectionIndex(List<Observation> observations) {
+        double west = Double.POSITIVE_INFINITY;
+        double east = Double.NEGATIVE_INFINITY;
+        double south = Double.POSITIVE_INFINITY;
+        double north = Double.NEGATIVE_INFINITY;
+        double variance = 0;
+        double shortest = Double.POSITIVE_INFINITY;
+        double longest = Double.NEGATIVE_INFINITY;
+        for (Observation observation : observations) {
+            PositionMeasurement z = observation.measurement();
+            west = Math.min(west, z.east());
+            east = Math.max(east, z.east());
+            south = Math.min(south, z.north());
+            north = Math.max(north, z.north());
+            variance = Math.max(variance, Math.max(z.varEast(), z.varNorth()));
+            shortest = Math.min(shortest, z.lagSeconds());
+            longest = Math.max(longest, z.lagSeconds());
+        }
+        int m = observations.size();
+        largestSigma = Math.sqrt(variance);
+        leastLag = shortest;
+        greatestLag = longest;
+        minEast = west;
+        minNorth = south;
+        double width = m == 0 ? 0 : east - west;
+        double height = m == 0 ? 0 : north - south;
+        bucketMetres = Math.max(1e-3, Math.max(
+                Math.sqrt(width * height / Math.max(1, m)), Math.max(width, height) / Math.max(1, m)));
+        columns = 1 + (int) (width / bucketMetres);
+        rows = 1 + (int) (height / bucketMetres);
+        bucketStart = new int[columns * rows + 1];
+        sorted = new int[m];
+        int[] bucket = new int[m];
+        for (int j = 0; j < m; j++) {
+            PositionMeasurement z = observations.get(j).measurement();
+            bucket[j] = row(z.north()) * columns + column(z.east());
+            bucketStart[bucket[j] + 1]++;
+        }
+        for (int b = 0; b < columns * rows; b++) {
+            bucketStart[b + 1] += bucketStart[b];
+        }
+        int[] next = Arrays.copyOf(bucketStart, columns * rows);
+        for (int j = 0; j < m; j++) {
+            sorted[next[bucket[j]]++] = j;
+        }
+    }
+
+    /**
+     * Finds all measurements within a box around the gate of a density; some may lie outside the gate itself.
+     *
+     * @return how many; {@link #found} names them, in order of the scan
+     */
+    int query(Gaussian density, double gateSigmas) {
+        if (sorted.length == 0) {
+            return 0;
+        }
+        DMatrix4x4 p = density.covariance;
+        double lag = Math.max(Math.abs(leastLag), Math.abs(greatestLag));
+        double reachEast = gateSigmas * (Math.sqrt(p.a11) + lag * Math.sqrt(p.a33) + largestSigma);
+        double reachNorth = gateSigmas * (Math.sqrt(p.a22) + lag * Math.sqrt(p.a44) + largestSigma);
+        double east1 = density.mean.a1 - leastLag * density.mean.a3;
+        double east2 = density.mean.a1 - greatestLag * density.mean.a3;
+        double north1 = density.mean.a2 - leastLag * density.mean.a4;
+        double north2 = density.mean.a2 - greatestLag * density.mean.a4;
+        int firstColumn = column(Math.min(east1, east2) - reachEast);
+        int lastColumn = column(Math.max(east1, east2) + reachEast);
+        int firstRow = row(Math.min(north1, north2) - reachNorth);
+        int lastRow = row(Math.max(north1, north2) + reachNorth);
+        int count = 0;
+        for (int row = firstRow; row <= lastRow; row++) {
+            int from = bucketStart[row * columns + firstColumn];
+            int to = bucketStart[row * columns + lastColumn + 1];
+            if (count + to - from > found.length) {
+                found = Arrays.copyOf(found, 2 * (count + to - from));
+            }
+            System.arraycopy(sorted, from, found, count, to - from);
+            count += to - from;
+        }
+        Arrays.sort(found, 0, count);
+        return count;
+    }
+
+    /** A measurement's place in the scan, of those that the last query found. */
+    int found(int i) {
+        return found[i];
+    }
+
+    private int column(double east) {
+        return (int) Math.max(0, Math.min(columns - 1.0, Math.floor((east - minEast) / bucketMetres)));
+    }
+
+    private int row(double north) {
+        return (int) Math.max(0, Math.min(rows - 1.0, Math.floor((north - minNorth) / bucketMetres)));
+    }
+}

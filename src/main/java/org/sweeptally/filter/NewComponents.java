@@ -1,0 +1,110 @@
+package org.sweeptally.filter;
+
+import java.util.ArrayList;
+import java.util.List;
+import java.util.SortedMap;
+import java.util.SortedSet;
+import java.util.TreeMap;
+import java.util.TreeSet;
+import org.sweeptally.filter.Unseen.Heir;
+import org.sweeptally.model.Gaussian;
+
+/**
+ * Begins a component at every observation of a scan, from the unseen part. Alone in the world, observation j would be an
+ * object seen for the first time with probability e / (clutter + e) (Williams 2015); here it is that times the marginal
+ * probability that no component caused it.
+ */
+final class NewComponents {
+
+    /** A component less likely than this adds nothing but work: its expected objects go to the grid. */
+    private static final double LEAST_EXISTENCE = 1e-5;
+
+    private final Scan scan;
+    private final long logTimeMicros;
+    private final Unseen unseen;
+    private final UnseenEvidence evidence;
+    private final Counters counters;
+    private final SortedSet<Identity> alive = new TreeSet<>();
+
+    NewComponents(
+            Scan scan,
+            long logTimeMicros,
+            Unseen unseen,
+            UnseenEvidence evidence,
+            List<Component> components,
+            Counters counters) {
+        this.scan = scan;
+        this.logTimeMicros = logTimeMicros;
+        this.unseen = unseen;
+        this.evidence = evidence;
+        this.counters = counters;
+        for (Component component : components) {
+            alive.add(component.identity());
+        }
+    }
+
+    List<Component> begin(ScanHypotheses hypotheses) {
+        SortedMap<Identity, Integer> heirs = heirs(hypotheses);
+        List<Component> begun = new ArrayList<>();
+        for (int j = 0; j < scan.observations().size(); j++) {
+            double existence = existence(hypotheses, j);
+            if (existence >= LEAST_EXISTENCE) {
+                begun.add(component(hypotheses, j, heirs));
+            } else if (existence > 0) {
+                Gaussian density = unseen.firstSeen(scan, evidence, j);
+                unseen.deposit(density.east(), density.north(), existence);
+            }
+        }
+        return begun;
+    }
+
+    /** Which observation goes on with which tag: the greatest contribution, then the lower index. */
+    private SortedMap<Identity, Integer> heirs(ScanHypotheses hypotheses) {
+        SortedMap<Identity, Integer> heirs = new TreeMap<>();
+        SortedMap<Identity, Double> contributions = new TreeMap<>();
+        for (int j = 0; j < scan.observations().size(); j++) {
+            Heir heir = unseen.heir(evidence, j);
+            double existence = existence(hypotheses, j);
+            if (heir == null || existence < LEAST_EXISTENCE || alive.contains(heir.tag().identity())) {
+                continue;
+            }
+            double contribution = existence * heir.share();
+            Double before = contributions.get(heir.tag().identity());
+            if (before == null || contribution > before) {
+                contributions.put(heir.tag().identity(), contribution);
+                heirs.put(heir.tag().identity(), j);
+            }
+        }
+        return heirs;
+    }
+
+    private double existence(ScanHypotheses hypotheses, int j) {
+        double e = evidence.total(j);
+        return e > 0 ? hypotheses.nobodys(j) * (e / (scan.look().clutterPerSquareMetre() + e)) : 0;
+    }
+
+    private Component component(ScanHypotheses hypotheses, int j, SortedMap<Identity, Integer> heirs) {
+        Observation observation = scan.observations().get(j);
+        double e = evidence.total(j);
+        double clutter = scan.look().clutterPerSquareMetre();
+        double logOdds = LogOdds.ofRatio(hypotheses.nobodys(j) * e, clutter + e * hypotheses.somebodys(j));
+        Component.Use use = new Component.Use(observation.part(), observation.index(), observation.id(), 1);
+        return new Component(
+                history(j, observation, heirs), unseen.firstSeen(scan, evidence, j), logOdds, false, List.of(use));
+    }
+
+    private ObjectHistory history(int j, Observation observation, SortedMap<Identity, Integer> heirs) {
+        Heir heir = unseen.heir(evidence, j);
+        ObjectHistory history;
+        if (heir != null && Integer.valueOf(j).equals(heirs.get(heir.tag().identity()))) {
+            history = heir.tag().detected(logTimeMicros);
+            counters.add(Counters.Name.IDENTITIES_RETURNED, 1);
+        } else {
+            Identity identity = new Identity(
+                    scan.sensor(), scan.scanTimeMicros(), observation.part(), observation.index());
+            long seenMicros = logTimeMicros - Math.round(observation.measurement().lagSeconds() * 1e6);
+            history = new ObjectHistory(identity, seenMicros, logTimeMicros, false, null, 0);
+        }
+        return observation.declared() == null ? history : history.declaredAs(observation.declared(), 1);
+    }
+}

@@ -1,0 +1,181 @@
+package org.sweeptally.filter;
+
+import java.io.DataInput;
+import java.io.DataOutput;
+import java.io.IOException;
+import java.util.ArrayList;
+import java.util.Collections;
+import java.util.Comparator;
+import java.util.List;
+import org.sweeptally.filter.count.NumberDistribution;
+import org.sweeptally.filter.count.PoissonBinomial;
+import org.sweeptally.geo.PlaneArea;
+import org.sweeptally.model.NearlyConstantVelocity;
+
+/**
+ * The recursion of one region: a Poisson multi-Bernoulli filter. Objects that some detection speaks for are Bernoulli
+ * {@linkplain Component components}; all others are the Poisson {@linkplain Unseen unseen part}. After each scan the
+ * posterior, a mixture over all ways to associate, is put back into this form through the marginal probabilities of
+ * association: the track-oriented marginal multi-Bernoulli/Poisson filter of Williams 2015, "Marginal multi-Bernoulli
+ * filters: RFS derivation of MHT, JIPDA, and association-based MeMBer", IEEE TAES 51(3):1664-1687.
+ *
+ * <p>One scan is {@link #predict} and {@link #update}. No method reads a clock or a random source, and sums run in the
+ * order of the lists, so that equal input gives equal state to the last bit.
+ */
+public final class ObjectFilter {
+
+    private final PlaneArea core;
+    private final double apronMetres;
+    private final Counters counters = new Counters();
+    private final Unseen unseen;
+
+    private FilterSettings settings;
+    private NearlyConstantVelocity motion;
+    private List<Component> components = new ArrayList<>();
+
+    /**
+     * @param core        the area that the region answers for, in its plane
+     * @param apronMetres how far around the core the region hears
+     */
+    public ObjectFilter(FilterSettings settings, PlaneArea core, double apronMetres) {
+        this.settings = settings;
+        this.core = core;
+        this.apronMetres = apronMetres;
+        this.motion = new NearlyConstantVelocity(settings.accelerationNoise());
+        this.unseen = new Unseen(settings, core, apronMetres, counters);
+    }
+
+    /** Goes on with other settings. */
+    public void settings(FilterSettings changed) {
+        unseen.settings(changed);
+        settings = changed;
+        motion = new NearlyConstantVelocity(changed.accelerationNoise());
+    }
+
+    /** The live components: those that were there in their old order, then new ones in the order of the scan. */
+    public List<Component> components() {
+        return Collections.unmodifiableList(components);
+    }
+
+    public Counters counters() {
+        return counters;
+    }
+
+    /** Lets time pass, 0 seconds or more: survival, motion, births, inflow. */
+    public void predict(double seconds) {
+        double survival = StrictMath.exp(-seconds / settings.lifetimeSeconds());
+        for (Component component : components) {
+            component.logOdds = LogOdds.survive(component.logOdds, survival);
+            motion.predict(component.density, seconds);
+        }
+        unseen.predict(motion, survival, seconds);
+    }
+
+    /**
+     * Takes in one scan, to whose log time the state must have been predicted.
+     *
+     * @return components that are no longer on the list
+     */
+    public ScanResult update(Scan scan, long logTimeMicros) {
+        counters.add(Counters.Name.SCANS, 1);
+        counters.add(Counters.Name.OBSERVATIONS, scan.observations().size());
+        DetectionIndex index = new DetectionIndex(scan.observations());
+        UnseenEvidence evidence = unseen.evidence(scan, index);
+        ScanHypotheses hypotheses = ScanHypotheses.of(components, scan, index, evidence, settings, counters);
+
+        List<Component> begun = new NewComponents(scan, logTimeMicros, unseen, evidence, components, counters)
+                .begin(hypotheses);
+        for (int i = 0; i < components.size(); i++) {
+            hypotheses.update(components.get(i), i, logTimeMicros);
+        }
+        unseen.missed(scan.look());
+
+        counters.add(Counters.Name.COMPONENTS_BEGUN, begun.size());
+        components.addAll(begun);
+        ScanResult result = sortOut();
+        unseen.tidy();
+        return result;
+    }
+
+    /** Confirms, recycles and lets go. */
+    private ScanResult sortOut() {
+        List<Component> kept = new ArrayList<>(components.size());
+        List<Component> recycled = new ArrayList<>();
+        List<Component> gone = new ArrayList<>();
+        for (Component component : components) {
+            double existence = component.existence();
+            component.confirmed = existence >= (component.confirmed ? settings.ending() : settings.confirming());
+            if (isGone(component)) {
+                gone.add(component);
+            } else if (existence < settings.recyclingBelow()) {
+                recycled.add(component);
+            } else {
+                kept.add(component);
+            }
+        }
+        counters.add(Counters.Name.COMPONENTS_RECYCLED, recycled.size());
+        counters.add(Counters.Name.COMPONENTS_GONE, gone.size());
+        if (kept.size() > settings.components()) {
+            kept = surest(kept, recycled);
+        }
+        for (Component component : recycled) {
+            unseen.recycle(component.existence(), component.density, component.history);
+        }
+        components = kept;
+        return new ScanResult(recycled, gone);
+    }
+
+    private boolean isGone(Component component) {
+        double outside = -apronMetres - core.signedDistanceMetres(component.density.east(), component.density.north());
+        return outside > 0 && outside > settings.gateSigmas() * component.density.largestPositionSigma();
+    }
+
+    /** As many as the bound allows, in their order; the others are recycled. */
+    private List<Component> surest(List<Component> all, List<Component> recycled) {
+        List<Component> byExistence = new ArrayList<>(all);
+        byExistence.sort(Comparator.comparingDouble(component -> -component.logOdds));
+        double least = byExistence.get(settings.components() - 1).logOdds;
+        List<Component> kept = new ArrayList<>(settings.components());
+        for (Component component : all) {
+            if (component.logOdds >= least && kept.size() < settings.components()) {
+                kept.add(component);
+            } else {
+                recycled.add(component);
+                counters.add(Counters.Name.COMPONENTS_OVER_BOUND, 1);
+            }
+        }
+        return kept;
+    }
+
+    /** Distribution of the number of components' objects in the core, each weighted with its probability of being there. */
+    public NumberDistribution count() {
+        double[] probabilities = new double[components.size()];
+        for (int i = 0; i < probabilities.length; i++) {
+            Component component = components.get(i);
+            probabilities[i] = component.existence() * InsideShare.of(component.density, core);
+        }
+        return PoissonBinomial.of(probabilities);
+    }
+
+    /** Expected number of objects in the core that no component stands for. */
+    public double expectedUnseen() {
+        return unseen.expectedInCore();
+    }
+
+    /** Writes the whole state, exact to the bit. */
+    public void write(DataOutput out) throws IOException {
+        FilterState.write(out, components, unseen, counters);
+    }
+
+    /**
+     * Reads what {@link #write} wrote.
+     *
+     * @throws IOException if the bytes are no such state, or one of another area
+     */
+    public static ObjectFilter read(DataInput in, FilterSettings settings, PlaneArea core, double apronMetres)
+            throws IOException {
+        ObjectFilter filter = new ObjectFilter(settings, core, apronMetres);
+        FilterState.read(in, filter.components, filter.unseen, filter.counters);
+        return filter;
+    }
+}

@@ -1,0 +1,177 @@
+package org.sweeptally.filter;
+
+import java.util.ArrayList;
+import java.util.Arrays;
+import java.util.List;
+import org.sweeptally.filter.association.Association;
+import org.sweeptally.filter.association.AssociationBounds;
+import org.sweeptally.filter.association.AssociationProblem;
+import org.sweeptally.filter.association.AssociationMarginals;
+import org.sweeptally.model.Gaussian;
+import org.sweeptally.model.Look;
+import org.sweeptally.model.PositionUpdate;
+
+/**
+ * Which component may have caused which observation of a scan, how probable each pair is in the light of all others, and
+ * what that makes of a component.
+ *
+ * <p>With existence r, probability of detection pd and likelihood l: a pair weighs r pd l(z), a missed component
+ * 1 - r pd, an observation of nobody's clutter + e (Williams 2015). The marginal probabilities of one-to-one associations
+ * with these weights come from {@link Association}.
+ */
+final class ScanHypotheses {
+
+    /** Detections used with less than this probability are not named in what is published. */
+    private static final double LEAST_USE = 0.01;
+
+    private final Scan scan;
+    private final AssociationProblem problem;
+    private final AssociationMarginals marginals;
+
+    /** Probability of detection of each component, averaged over its density. */
+    private final double[] detection;
+
+    /** Probability of each observation that some component caused it, summed so that small ones stay exact. */
+    private final double[] somebodys;
+
+    private final PositionUpdate update = new PositionUpdate();
+    private final Mixture mixture = new Mixture();
+    private final double[] step = new double[4];
+
+    private ScanHypotheses(Scan scan, AssociationProblem problem, AssociationMarginals marginals, double[] detection) {
+        this.scan = scan;
+        this.problem = problem;
+        this.marginals = marginals;
+        this.detection = detection;
+        this.somebodys = new double[problem.columns()];
+        for (int pair = 0; pair < problem.pairs(); pair++) {
+            somebodys[problem.column(pair)] += marginals.pair(pair);
+        }
+    }
+
+    static ScanHypotheses of(
+            List<Component> components,
+            Scan scan,
+            DetectionIndex index,
+            UnseenEvidence evidence,
+            FilterSettings settings,
+            Counters counters) {
+        AssociationProblem problem = new AssociationProblem();
+        double clutter = scan.look().clutterPerSquareMetre();
+        for (int j = 0; j < scan.observations().size(); j++) {
+            problem.addColumn(clutter + evidence.total(j));
+        }
+        double[] detection = new double[components.size()];
+        for (int i = 0; i < detection.length; i++) {
+            detection[i] = gate(components.get(i), scan, index, settings, counters, problem);
+        }
+        counters.add(Counters.Name.GATED_COMPONENT_PAIRS, problem.pairs());
+        AssociationMarginals marginals = Association.solve(
+                problem, new AssociationBounds(settings.exactAssociationSteps(), settings.propagationSweeps()));
+        counters.add(Counters.Name.CLUSTERS_CLOSED_FORM, marginals.counts().closed());
+        counters.add(Counters.Name.CLUSTERS_EXACT, marginals.counts().exact());
+        counters.add(Counters.Name.CLUSTERS_PROPAGATED, marginals.counts().propagated());
+        counters.add(Counters.Name.PROPAGATION_SWEEPS, marginals.counts().sweeps());
+        counters.add(Counters.Name.PROPAGATION_CAPPED, marginals.counts().sweepCapHits());
+        counters.add(Counters.Name.CLUSTERS_IMPOSSIBLE, marginals.counts().impossible());
+        return new ScanHypotheses(scan, problem, marginals, detection);
+    }
+
+    /** Adds a component's row to the problem; returns its averaged probability of detection. */
+    private static double gate(
+            Component component,
+            Scan scan,
+            DetectionIndex index,
+            FilterSettings settings,
+            Counters counters,
+            AssociationProblem problem) {
+        Look look = scan.look();
+        Gaussian density = component.density;
+        double constant = look.constantOver(density);
+        double averaged = Double.isNaN(constant) ? look.averageOver(density) : constant;
+        double existence = component.existence();
+        problem.addRow(LogOdds.complement(component.logOdds) + existence * (1 - averaged));
+        if (constant == 0) {
+            return 0;
+        }
+        PositionUpdate update = new PositionUpdate();
+        update.prior(density);
+        double gate = settings.gateSigmas() * settings.gateSigmas();
+        int candidates = index.query(density, settings.gateSigmas());
+        for (int c = 0; c < candidates; c++) {
+            int j = index.found(c);
+            if (!update.measure(scan.observations().get(j).measurement())) {
+                counters.add(Counters.Name.INNOVATIONS_NOT_POSITIVE, 1);
+            } else if (update.distanceSquared() <= gate) {
+                double there = Double.isNaN(constant)
+                        ? look.probabilityOfDetection(update.updatedEast(), update.updatedNorth())
+                        : constant;
+                problem.addPair(j, existence * there * update.likelihood());
+            }
+        }
+        return averaged;
+    }
+
+    /** Marginal probability that no component caused an observation. */
+    double nobodys(int j) {
+        return marginals.nobody(j);
+    }
+
+    /** Marginal probability that some component caused it. */
+    double somebodys(int j) {
+        return somebodys[j];
+    }
+
+    /**
+     * Existence and density of component i after the scan. Existence is what the associations leave of it: detected by
+     * some observation, or missed and there all the same. The density is the Gaussian with the moments of the mixture.
+     */
+    void update(Component component, int i, long logTimeMicros) {
+        double existence = component.existence();
+        double absent = LogOdds.complement(component.logOdds);
+        double hidden = existence * (1 - detection[i]);
+        double missed = marginals.missed(i);
+        double missedThere = absent + hidden > 0 ? missed * (hidden / (absent + hidden)) : 0;
+        double missedAbsent = absent + hidden > 0 ? missed * (absent / (absent + hidden)) : missed;
+
+        Gaussian prior = component.density;
+        mixture.reset(prior.mean.a1, prior.mean.a2, prior.mean.a3, prior.mean.a4);
+        Arrays.fill(step, 0);
+        mixture.add(missedThere, step, 0, prior.covariance);
+        update.prior(prior);
+        double detected = 0;
+        for (int pair = problem.rowStart(i); pair < problem.rowStart(i + 1); pair++) {
+            double probability = marginals.pair(pair);
+            detected += probability;
+            update.measure(scan.observations().get(problem.column(pair)).measurement());
+            update.step(step, 0);
+            mixture.add(probability, step, 0, update.updatedCovariance());
+        }
+        double there = mixture.weight();
+        component.logOdds = LogOdds.ofRatio(there, missedAbsent);
+        component.used = List.of();
+        if (there > 0) {
+            component.density = mixture.matched();
+            use(component, i, there);
+            if (detected > 0.5 * there) {
+                component.history = component.history.detected(logTimeMicros);
+            }
+        }
+    }
+
+    private void use(Component component, int i, double there) {
+        List<Component.Use> used = new ArrayList<>();
+        for (int pair = problem.rowStart(i); pair < problem.rowStart(i + 1); pair++) {
+            double probability = marginals.pair(pair) / there;
+            if (probability >= LEAST_USE) {
+                Observation observation = scan.observations().get(problem.column(pair));
+                used.add(new Component.Use(
+                        observation.part(), observation.index(), observation.id(), Math.min(1, probability)));
+                if (observation.declared() != null) {
+                    component.history = component.history.declaredAs(observation.declared(), Math.min(1, probability));
+                }
+            }
+        }
+        component.used = List.copyOf(used);
+    }
+}

@@ -1,0 +1,235 @@
+package org.sweeptally.filter;
+
+import java.util.ArrayList;
+import java.util.Comparator;
+import java.util.List;
+import org.ejml.data.DMatrix4x4;
+import org.sweeptally.geo.PlaneArea;
+import org.sweeptally.model.Gaussian;
+import org.sweeptally.model.Look;
+import org.sweeptally.model.NearlyConstantVelocity;
+import org.sweeptally.model.PositionMeasurement;
+import org.sweeptally.model.PositionUpdate;
+
+/**
+ * The Poisson part: the intensity of objects that no component stands for. Never detected ones are in the grid; what is
+ * left of components whose existence fell low are Gaussian terms, each tagged with who it was ("recycling", Williams
+ * 2012, "Hybrid Poisson and multi-Bernoulli filters"). Mass only moves between the two, or out of the area heard.
+ */
+final class Unseen {
+
+    /** A term goes back to the grid where its peak is below this share of the grid's density: it could decide nothing. */
+    private static final double FAINT_SHARE = 0.1;
+
+    private final PlaneArea core;
+    private final double apronMetres;
+    private final Counters counters;
+    private final PositionUpdate update = new PositionUpdate();
+    private final Mixture mixture = new Mixture();
+    private final double[] step = new double[4];
+
+    private FilterSettings settings;
+    private UnseenGrid grid;
+    private List<UnseenTerm> terms = new ArrayList<>();
+
+    Unseen(FilterSettings settings, PlaneArea core, double apronMetres, Counters counters) {
+        this.settings = settings;
+        this.core = core;
+        this.apronMetres = apronMetres;
+        this.counters = counters;
+        grid = new UnseenGrid(settings, core, apronMetres);
+        grid.fill(settings.initialPerSquareMetre());
+    }
+
+    UnseenGrid grid() {
+        return grid;
+    }
+
+    List<UnseenTerm> terms() {
+        return terms;
+    }
+
+    void settings(FilterSettings changed) {
+        if (changed.unseenCellMetres() != settings.unseenCellMetres()) {
+            UnseenGrid finer = new UnseenGrid(changed, core, apronMetres);
+            finer.takeFrom(grid);
+            grid = finer;
+        }
+        settings = changed;
+    }
+
+    void predict(NearlyConstantVelocity motion, double survival, double seconds) {
+        grid.predict(settings, seconds);
+        for (UnseenTerm term : terms) {
+            term.weight *= survival;
+            motion.predict(term.density, seconds);
+        }
+    }
+
+    /** What the unseen part says of each observation. */
+    UnseenEvidence evidence(Scan scan, DetectionIndex index) {
+        List<Observation> observations = scan.observations();
+        UnseenEvidence evidence = new UnseenEvidence(observations.size());
+        for (int j = 0; j < observations.size(); j++) {
+            PositionMeasurement z = observations.get(j).measurement();
+            double detection = scan.look().probabilityOfDetection(z.east(), z.north());
+            evidence.addGrid(j, detection > 0 ? detection * grid.density(z.east(), z.north()) : 0);
+        }
+        double gate = settings.gateSigmas() * settings.gateSigmas();
+        for (int t = 0; t < terms.size(); t++) {
+            UnseenTerm term = terms.get(t);
+            int candidates = index.query(term.density, settings.gateSigmas());
+            if (candidates == 0) {
+                continue;
+            }
+            update.prior(term.density);
+            double everywhere = scan.look().constantOver(term.density);
+            for (int c = 0; c < candidates; c++) {
+                int j = index.found(c);
+                if (!update.measure(observations.get(j).measurement())) {
+                    counters.add(Counters.Name.INNOVATIONS_NOT_POSITIVE, 1);
+                } else if (update.distanceSquared() <= gate) {
+                    double detection = Double.isNaN(everywhere)
+                            ? scan.look().probabilityOfDetection(update.updatedEast(), update.updatedNorth())
+                            : everywhere;
+                    evidence.addTerm(j, t, term.weight * detection * update.likelihood());
+                }
+            }
+        }
+        counters.add(Counters.Name.GATED_TERM_PAIRS, evidence.pairs());
+        evidence.sort();
+        return evidence;
+    }
+
+    /** The density of an object first seen by an observation: the unseen part, updated by it. */
+    Gaussian firstSeen(Scan scan, UnseenEvidence evidence, int j) {
+        PositionMeasurement z = scan.observations().get(j).measurement();
+        mixture.reset(z.east(), z.north(), 0, 0);
+        if (evidence.fromGrid(j) > 0) {
+            step[0] = step[1] = step[2] = step[3] = 0;
+            mixture.add(evidence.fromGrid(j), step, 0, fromGrid(z).covariance);
+        }
+        for (int pair = evidence.firstPair(j); pair < evidence.endPair(j); pair++) {
+            Gaussian prior = terms.get(evidence.term(pair)).density;
+            update.prior(prior);
+            update.measure(z);
+            update.step(step, 0);
+            step[0] += prior.mean.a1 - z.east();
+            step[1] += prior.mean.a2 - z.north();
+            step[2] += prior.mean.a3;
+            step[3] += prior.mean.a4;
+            mixture.add(evidence.value(pair), step, 0, update.updatedCovariance());
+        }
+        return mixture.matched();
+    }
+
+    /** An object from the grid, seen some time ago at z: since then it moved on with its unknown velocity. */
+    private Gaussian fromGrid(PositionMeasurement z) {
+        Gaussian density = Gaussian.atRest(
+                z.east(), z.north(), z.varEast(), z.covEastNorth(), z.varNorth(), settings.speedSigma());
+        DMatrix4x4 p = density.covariance;
+        double cross = z.lagSeconds() * p.a33;
+        p.a11 += z.lagSeconds() * cross;
+        p.a22 += z.lagSeconds() * cross;
+        p.a13 = p.a31 = p.a24 = p.a42 = cross;
+        return density;
+    }
+
+    /** The tag from which over half of the evidence for an observation comes, with its share; null if there is none. */
+    Heir heir(UnseenEvidence evidence, int j) {
+        double half = 0.5 * evidence.total(j);
+        for (int pair = evidence.firstPair(j); pair < evidence.endPair(j); pair++) {
+            ObjectHistory tag = terms.get(evidence.term(pair)).tag;
+            double sum = 0;
+            for (int other = evidence.firstPair(j); other < evidence.endPair(j); other++) {
+                if (terms.get(evidence.term(other)).tag.identity().equals(tag.identity())) {
+                    sum += evidence.value(other);
+                }
+            }
+            if (sum > half) {
+                return new Heir(tag, sum / evidence.total(j));
+            }
+        }
+        return null;
+    }
+
+    /** A history that may go on in a new component, and the share of the component that comes from it. */
+    record Heir(ObjectHistory tag, double share) {}
+
+    /** Thins the unseen part by a look that could have detected what is in it. */
+    void missed(Look look) {
+        grid.missed(look);
+        for (UnseenTerm term : terms) {
+            double everywhere = look.constantOver(term.density);
+            term.weight *= 1 - (Double.isNaN(everywhere) ? look.averageOver(term.density) : everywhere);
+        }
+    }
+
+    /** Takes in what is left of a component. */
+    void recycle(double existence, Gaussian density, ObjectHistory history) {
+        if (existence > 0) {
+            terms.add(new UnseenTerm(existence, density, history));
+        }
+    }
+
+    /** Takes in expected objects at a place where nobody needs to know who they were. */
+    void deposit(double east, double north, double amount) {
+        grid.deposit(east, north, amount);
+    }
+
+    /** Lets go of terms that left, and gives terms back to the grid that are too wide, too faint or too many. */
+    void tidy() {
+        List<UnseenTerm> kept = new ArrayList<>(terms.size());
+        for (UnseenTerm term : terms) {
+            double sigma = term.density.largestPositionSigma();
+            if (core.signedDistanceMetres(term.density.east(), term.density.north())
+                    < -apronMetres - settings.gateSigmas() * sigma) {
+                counters.add(Counters.Name.TERMS_GONE, 1);
+            } else if (sigma > settings.unseenCellMetres()) {
+                give(term, Counters.Name.TERMS_RETURNED_WIDE);
+            } else if (isFaint(term)) {
+                give(term, Counters.Name.TERMS_RETURNED_FAINT);
+            } else {
+                kept.add(term);
+            }
+        }
+        if (kept.size() > settings.unseenTerms()) {
+            kept = heaviest(kept);
+        }
+        terms = kept;
+    }
+
+    private boolean isFaint(UnseenTerm term) {
+        double area = 2 * StrictMath.PI * Math.sqrt(term.density.positionDeterminant());
+        return term.weight < FAINT_SHARE * area * grid.density(term.density.east(), term.density.north());
+    }
+
+    private void give(UnseenTerm term, Counters.Name why) {
+        boolean heard = grid.deposit(term.density.east(), term.density.north(), term.weight);
+        counters.add(heard ? why : Counters.Name.TERMS_GONE, 1);
+    }
+
+    private List<UnseenTerm> heaviest(List<UnseenTerm> all) {
+        List<UnseenTerm> byWeight = new ArrayList<>(all);
+        byWeight.sort(Comparator.comparingDouble(term -> -term.weight));
+        double least = byWeight.get(settings.unseenTerms() - 1).weight;
+        List<UnseenTerm> kept = new ArrayList<>(settings.unseenTerms());
+        for (UnseenTerm term : all) {
+            if (term.weight >= least && kept.size() < settings.unseenTerms()) {
+                kept.add(term);
+            } else {
+                give(term, Counters.Name.TERMS_OVER_BOUND);
+            }
+        }
+        return kept;
+    }
+
+    /** Expected number of objects of the unseen part in the core. */
+    double expectedInCore() {
+        double sum = grid.inCore();
+        for (UnseenTerm term : terms) {
+            sum += term.weight * InsideShare.of(term.density, core);
+        }
+        return sum;
+    }
+}

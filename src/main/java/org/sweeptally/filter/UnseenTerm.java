@@ -1,0 +1,21 @@
+package org.sweeptally.filter;
+
+import org.sweeptally.model.Gaussian;
+
+/**
+ * A Gaussian term of the unseen part: what is left of a component whose existence fell low, with its history as a tag.
+ */
+final class UnseenTerm {
+
+    /** Expected number of objects in the term, below 1. */
+    double weight;
+
+    final Gaussian density;
+    final ObjectHistory tag;
+
+    UnseenTerm(double weight, Gaussian density, ObjectHistory tag) {
+        this.weight = weight;
+        this.density = density;
+        this.tag = tag;
+    }
+}

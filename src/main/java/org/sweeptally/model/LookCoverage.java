@@ -1,0 +1,35 @@
+package org.sweeptally.model;
+
+import java.util.Optional;
+import org.sweeptally.geo.PlaneArea;
+
+/**
+ * Where one look looked, within the sensor's reach: a ring, a sector, a polygon, or what they have in common.
+ *
+ * @param fromMetres         least distance from the sensor, 0 for none
+ * @param toMetres           greatest distance from the sensor, infinite for none
+ * @param fromAzimuthRadians start of the sector, clockwise from the plane's north
+ * @param widthRadians       width of the sector, clockwise from its start; 2 pi for all around
+ * @param area               polygon in the region's plane, if any
+ */
+public record LookCoverage(
+        double fromMetres, double toMetres, double fromAzimuthRadians, double widthRadians, Optional<PlaneArea> area) {
+
+    private static final double TURN = 2 * StrictMath.PI;
+
+    /** Whether the look looked at a place, given by its offset from the sensor and by its coordinates in the plane. */
+    boolean covers(double offsetEast, double offsetNorth, double east, double north) {
+        double squared = offsetEast * offsetEast + offsetNorth * offsetNorth;
+        if (squared < fromMetres * fromMetres || squared > toMetres * toMetres) {
+            return false;
+        }
+        if (widthRadians < TURN) {
+            double into = StrictMath.atan2(offsetEast, offsetNorth) - fromAzimuthRadians;
+            into -= TURN * Math.floor(into / TURN);
+            if (into > widthRadians) {
+                return false;
+            }
+        }
+        return area.isEmpty() || area.get().contains(east, north);
+    }
+}

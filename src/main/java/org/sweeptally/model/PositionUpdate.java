@@ -1,0 +1,181 @@
+package org.sweeptally.model;
+
+import org.ejml.data.DMatrix4;
+import org.ejml.data.DMatrix4x4;
+
+/**
+ * The Kalman update of one density by position measurements (Kalman 1960). What does not depend on the measured
+ * place (gain, innovation covariance, updated covariance) is computed once and shared by all measurements that are
+ * equally exact and equally old, which in most scans is all of them.
+ *
+ * <p>With H = [I, -lag I]: innovation covariance S = H P H' + R, gain K = P H' S^-1, updated covariance P - K S K'.
+ * Use: {@link #prior}, then for each measurement {@link #measure} and the accessors.
+ */
+public final class PositionUpdate {
+
+    private Gaussian prior;
+    private PositionMeasurement gainOf;
+
+    /** S^-1, and the factor 1 / (2 pi sqrt |S|) of the innovation's density. */
+    private double inverse11;
+    private double inverse12;
+    private double inverse22;
+    private double peak;
+
+    /** K, 4 x 2, row by row. */
+    private double k11;
+    private double k12;
+    private double k21;
+    private double k22;
+    private double k31;
+    private double k32;
+    private double k41;
+    private double k42;
+
+    private final DMatrix4x4 updated = new DMatrix4x4();
+    private boolean updatedIsCurrent;
+
+    private double innovationEast;
+    private double innovationNorth;
+
+    /** Starts on another density. */
+    public void prior(Gaussian density) {
+        prior = density;
+        gainOf = null;
+    }
+
+    /** Takes one measurement; false where the innovation covariance is not positive definite, and then nothing may be read. */
+    public boolean measure(PositionMeasurement z) {
+        if (gainOf == null || !z.sharesGainWith(gainOf)) {
+            if (!gain(z)) {
+                gainOf = null;
+                return false;
+            }
+            gainOf = z;
+        }
+        DMatrix4 x = prior.mean;
+        innovationEast = z.east() - (x.a1 - z.lagSeconds() * x.a3);
+        innovationNorth = z.north() - (x.a2 - z.lagSeconds() * x.a4);
+        return true;
+    }
+
+    /** Squared distance of the measurement in standard deviations: the innovation's Mahalanobis distance. */
+    public double distanceSquared() {
+        return inverse11 * innovationEast * innovationEast
+                + 2 * inverse12 * innovationEast * innovationNorth
+                + inverse22 * innovationNorth * innovationNorth;
+    }
+
+    /** Density of the measurement under the prior, per square metre. */
+    public double likelihood() {
+        return peak * StrictMath.exp(-0.5 * distanceSquared());
+    }
+
+    /** Natural logarithm of {@link #likelihood}. */
+    public double logLikelihood() {
+        return StrictMath.log(peak) - 0.5 * distanceSquared();
+    }
+
+    /** Writes the step from the prior's mean to the updated mean: four numbers from an index on. */
+    public void step(double[] into, int at) {
+        into[at] = k11 * innovationEast + k12 * innovationNorth;
+        into[at + 1] = k21 * innovationEast + k22 * innovationNorth;
+        into[at + 2] = k31 * innovationEast + k32 * innovationNorth;
+        into[at + 3] = k41 * innovationEast + k42 * innovationNorth;
+    }
+
+    /** Where the update puts the object, metres east. */
+    public double updatedEast() {
+        return prior.mean.a1 + k11 * innovationEast + k12 * innovationNorth;
+    }
+
+    /** Where the update puts the object, metres north. */
+    public double updatedNorth() {
+        return prior.mean.a2 + k21 * innovationEast + k22 * innovationNorth;
+    }
+
+    /** The updated covariance; valid until the next call of {@link #measure} or {@link #prior}. */
+    public DMatrix4x4 updatedCovariance() {
+        if (!updatedIsCurrent) {
+            updateCovariance();
+            updatedIsCurrent = true;
+        }
+        return updated;
+    }
+
+    /** The updated density, for use outside a mixture. */
+    public Gaussian updated() {
+        double[] step = new double[4];
+        step(step, 0);
+        DMatrix4 x = prior.mean;
+        return new Gaussian(
+                new DMatrix4(x.a1 + step[0], x.a2 + step[1], x.a3 + step[2], x.a4 + step[3]),
+                new DMatrix4x4(updatedCovariance()));
+    }
+
+    private boolean gain(PositionMeasurement z) {
+        DMatrix4x4 p = prior.covariance;
+        double lag = z.lagSeconds();
+        // P H', 4 x 2.
+        double c11 = p.a11 - lag * p.a13;
+        double c12 = p.a12 - lag * p.a14;
+        double c21 = p.a21 - lag * p.a23;
+        double c22 = p.a22 - lag * p.a24;
+        double c31 = p.a31 - lag * p.a33;
+        double c32 = p.a32 - lag * p.a34;
+        double c41 = p.a41 - lag * p.a43;
+        double c42 = p.a42 - lag * p.a44;
+        double s11 = c11 - lag * c31 + z.varEast();
+        double s12 = c12 - lag * c32 + z.covEastNorth();
+        double s22 = c22 - lag * c42 + z.varNorth();
+        double determinant = s11 * s22 - s12 * s12;
+        if (!(determinant > 0 && s11 > 0)) {
+            return false;
+        }
+        inverse11 = s22 / determinant;
+        inverse12 = -s12 / determinant;
+        inverse22 = s11 / determinant;
+        peak = 1 / (2 * StrictMath.PI * Math.sqrt(determinant));
+        k11 = c11 * inverse11 + c12 * inverse12;
+        k12 = c11 * inverse12 + c12 * inverse22;
+        k21 = c21 * inverse11 + c22 * inverse12;
+        k22 = c21 * inverse12 + c22 * inverse22;
+        k31 = c31 * inverse11 + c32 * inverse12;
+        k32 = c31 * inverse12 + c32 * inverse22;
+        k41 = c41 * inverse11 + c42 * inverse12;
+        k42 = c41 * inverse12 + c42 * inverse22;
+        updatedIsCurrent = false;
+        return true;
+    }
+
+    /** P - K (P H')', upper triangle first, so that it stays symmetric to the bit. */
+    private void updateCovariance() {
+        DMatrix4x4 p = prior.covariance;
+        double lag = gainOf.lagSeconds();
+        double c11 = p.a11 - lag * p.a13;
+        double c12 = p.a12 - lag * p.a14;
+        double c21 = p.a21 - lag * p.a23;
+        double c22 = p.a22 - lag * p.a24;
+        double c31 = p.a31 - lag * p.a33;
+        double c32 = p.a32 - lag * p.a34;
+        double c41 = p.a41 - lag * p.a43;
+        double c42 = p.a42 - lag * p.a44;
+        DMatrix4x4 u = updated;
+        u.a11 = p.a11 - (k11 * c11 + k12 * c12);
+        u.a12 = p.a12 - (k11 * c21 + k12 * c22);
+        u.a13 = p.a13 - (k11 * c31 + k12 * c32);
+        u.a14 = p.a14 - (k11 * c41 + k12 * c42);
+        u.a22 = p.a22 - (k21 * c21 + k22 * c22);
+        u.a23 = p.a23 - (k21 * c31 + k22 * c32);
+        u.a24 = p.a24 - (k21 * c41 + k22 * c42);
+        u.a33 = p.a33 - (k31 * c31 + k32 * c32);
+        u.a34 = p.a34 - (k31 * c41 + k32 * c42);
+        u.a44 = p.a44 - (k41 * c41 + k42 * c42);
+        u.a21 = u.a12;
+        u.a31 = u.a13;
+        u.a41 = u.a14;
+        u.a32 = u.a23;
+        u.a42 = u.a24;
+        u.a43 = u.a34;
+    }
+}

@@ -1,0 +1,17 @@
+package org.sweeptally.model;
+
+/**
+ * How a sensor detects, as the filter sees it.
+ *
+ * @param name           the sensor's name
+ * @param reachMetres    beyond it the probability of detection is 0
+ * @param detection      probability of detection by distance
+ * @param clutterPerScan expected number of false detections in a scan of the whole reach, which is a disc
+ */
+public record SensorModel(String name, double reachMetres, DetectionProfile detection, double clutterPerScan) {
+
+    /** Expected number of false detections per square metre and scan. */
+    public double clutterPerSquareMetre() {
+        return clutterPerScan / (StrictMath.PI * reachMetres * reachMetres);
+    }
+}
