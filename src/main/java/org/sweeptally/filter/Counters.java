@@ -26,6 +26,7 @@ public final class Counters {
         COMPONENTS_RECYCLED,
         COMPONENTS_GONE,
         COMPONENTS_OVER_BOUND,
+        TERMS_TOO_LIGHT,
         TERMS_RETURNED_WIDE,
         TERMS_RETURNED_FAINT,
         TERMS_GONE,

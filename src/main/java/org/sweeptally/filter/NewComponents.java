@@ -7,7 +7,6 @@ import java.util.SortedSet;
 import java.util.TreeMap;
 import java.util.TreeSet;
 import org.sweeptally.filter.Unseen.Heir;
-import org.sweeptally.model.Gaussian;
 
 /**
  * Begins a component at every observation of a scan, from the unseen part. Alone in the world, observation j would be an
@@ -16,13 +15,11 @@ import org.sweeptally.model.Gaussian;
  */
 final class NewComponents {
 
-    /** A component less likely than this adds nothing but work: its expected objects go to the grid. */
-    private static final double LEAST_EXISTENCE = 1e-5;
-
     private final Scan scan;
     private final long logTimeMicros;
     private final Unseen unseen;
     private final UnseenEvidence evidence;
+    private final double recyclingBelow;
     private final Counters counters;
     private final SortedSet<Identity> alive = new TreeSet<>();
 
@@ -32,11 +29,13 @@ final class NewComponents {
             Unseen unseen,
             UnseenEvidence evidence,
             List<Component> components,
+            FilterSettings settings,
             Counters counters) {
         this.scan = scan;
         this.logTimeMicros = logTimeMicros;
         this.unseen = unseen;
         this.evidence = evidence;
+        this.recyclingBelow = settings.recyclingBelow();
         this.counters = counters;
         for (Component component : components) {
             alive.add(component.identity());
@@ -48,11 +47,10 @@ final class NewComponents {
         List<Component> begun = new ArrayList<>();
         for (int j = 0; j < scan.observations().size(); j++) {
             double existence = existence(hypotheses, j);
-            if (existence >= LEAST_EXISTENCE) {
+            if (existence >= recyclingBelow) {
                 begun.add(component(hypotheses, j, heirs));
             } else if (existence > 0) {
-                Gaussian density = unseen.firstSeen(scan, evidence, j);
-                unseen.deposit(density.east(), density.north(), existence);
+                unseen.seen(scan, logTimeMicros, evidence, j, existence, fresh(scan.observations().get(j)), alive);
             }
         }
         return begun;
@@ -65,7 +63,7 @@ final class NewComponents {
         for (int j = 0; j < scan.observations().size(); j++) {
             Heir heir = unseen.heir(evidence, j);
             double existence = existence(hypotheses, j);
-            if (heir == null || existence < LEAST_EXISTENCE || alive.contains(heir.tag().identity())) {
+            if (heir == null || existence < recyclingBelow || alive.contains(heir.tag().identity())) {
                 continue;
             }
             double contribution = existence * heir.share();
@@ -100,11 +98,17 @@ final class NewComponents {
             history = heir.tag().detected(logTimeMicros);
             counters.add(Counters.Name.IDENTITIES_RETURNED, 1);
         } else {
-            Identity identity = new Identity(
-                    scan.sensor(), scan.scanTimeMicros(), observation.part(), observation.index());
-            long seenMicros = logTimeMicros - Math.round(observation.measurement().lagSeconds() * 1e6);
-            history = new ObjectHistory(identity, seenMicros, logTimeMicros, false, null, 0);
+            history = fresh(observation);
         }
         return observation.declared() == null ? history : history.declaredAs(observation.declared(), 1);
+    }
+
+    /** The history of an object that begins with an observation. */
+    private ObjectHistory fresh(Observation observation) {
+        Identity identity =
+                new Identity(scan.sensor(), scan.scanTimeMicros(), observation.part(), observation.index());
+        long seenMicros = logTimeMicros - Math.round(observation.measurement().lagSeconds() * 1e6);
+        return new ObjectHistory(
+                identity, seenMicros, logTimeMicros, false, observation.declared(), observation.declared() == null ? 0 : 1);
     }
 }

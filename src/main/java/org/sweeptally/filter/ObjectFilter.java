@@ -7,6 +7,7 @@ import java.util.ArrayList;
 import java.util.Collections;
 import java.util.Comparator;
 import java.util.List;
+import org.sweeptally.filter.association.Association;
 import org.sweeptally.filter.count.NumberDistribution;
 import org.sweeptally.filter.count.PoissonBinomial;
 import org.sweeptally.geo.PlaneArea;
@@ -27,6 +28,7 @@ public final class ObjectFilter {
     private final PlaneArea core;
     private final double apronMetres;
     private final Counters counters = new Counters();
+    private final Association association = new Association();
     private final Unseen unseen;
 
     private FilterSettings settings;
@@ -81,9 +83,11 @@ public final class ObjectFilter {
         counters.add(Counters.Name.OBSERVATIONS, scan.observations().size());
         DetectionIndex index = new DetectionIndex(scan.observations());
         UnseenEvidence evidence = unseen.evidence(scan, index);
-        ScanHypotheses hypotheses = ScanHypotheses.of(components, scan, index, evidence, settings, counters);
+        ScanHypotheses hypotheses =
+                ScanHypotheses.of(components, scan, index, evidence, settings, counters, association);
 
-        List<Component> begun = new NewComponents(scan, logTimeMicros, unseen, evidence, components, counters)
+        List<Component> begun = new NewComponents(
+                        scan, logTimeMicros, unseen, evidence, components, settings, counters)
                 .begin(hypotheses);
         for (int i = 0; i < components.size(); i++) {
             hypotheses.update(components.get(i), i, logTimeMicros);

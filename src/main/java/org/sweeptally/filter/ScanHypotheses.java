@@ -55,7 +55,8 @@ final class ScanHypotheses {
             DetectionIndex index,
             UnseenEvidence evidence,
             FilterSettings settings,
-            Counters counters) {
+            Counters counters,
+            Association association) {
         AssociationProblem problem = new AssociationProblem();
         double clutter = scan.look().clutterPerSquareMetre();
         for (int j = 0; j < scan.observations().size(); j++) {
@@ -66,7 +67,7 @@ final class ScanHypotheses {
             detection[i] = gate(components.get(i), scan, index, settings, counters, problem);
         }
         counters.add(Counters.Name.GATED_COMPONENT_PAIRS, problem.pairs());
-        AssociationMarginals marginals = Association.solve(
+        AssociationMarginals marginals = association.solve(
                 problem, new AssociationBounds(settings.exactAssociationSteps(), settings.propagationSweeps()));
         counters.add(Counters.Name.CLUSTERS_CLOSED_FORM, marginals.counts().closed());
         counters.add(Counters.Name.CLUSTERS_EXACT, marginals.counts().exact());

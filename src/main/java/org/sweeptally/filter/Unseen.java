@@ -3,6 +3,7 @@ package org.sweeptally.filter;
 import java.util.ArrayList;
 import java.util.Comparator;
 import java.util.List;
+import java.util.SortedSet;
 import org.ejml.data.DMatrix4x4;
 import org.sweeptally.geo.PlaneArea;
 import org.sweeptally.model.Gaussian;
@@ -18,8 +19,8 @@ import org.sweeptally.model.PositionUpdate;
  */
 final class Unseen {
 
-    /** A term goes back to the grid where its peak is below this share of the grid's density: it could decide nothing. */
-    private static final double FAINT_SHARE = 0.1;
+    /** What is less likely than this does not become a term but goes to the grid at once. */
+    private static final double LEAST_WEIGHT = 1e-5;
 
     private final PlaneArea core;
     private final double apronMetres;
@@ -31,6 +32,9 @@ final class Unseen {
     private FilterSettings settings;
     private UnseenGrid grid;
     private List<UnseenTerm> terms = new ArrayList<>();
+
+    /** Terms that this scan brings; it has been counted for them already, so they are not thinned by it. */
+    private final List<UnseenTerm> entering = new ArrayList<>();
 
     Unseen(FilterSettings settings, PlaneArea core, double apronMetres, Counters counters) {
         this.settings = settings;
@@ -163,6 +167,8 @@ final class Unseen {
             double everywhere = look.constantOver(term.density);
             term.weight *= 1 - (Double.isNaN(everywhere) ? look.averageOver(term.density) : everywhere);
         }
+        terms.addAll(entering);
+        entering.clear();
     }
 
     /** Takes in what is left of a component. */
@@ -172,9 +178,42 @@ final class Unseen {
         }
     }
 
-    /** Takes in expected objects at a place where nobody needs to know who they were. */
-    void deposit(double east, double north, double amount) {
-        grid.deposit(east, north, amount);
+    /**
+     * Takes back an object that an observation speaks for too weakly to make it a component. The terms that it would be
+     * mixed from stay apart, each with its own history: a Poisson intensity may have any number of terms, and which of
+     * them was right shows with the next observations.
+     *
+     * @param existence probability of the object, split by what it comes from
+     * @param fresh     history of an object that begins here
+     * @param alive     identities that live components have
+     */
+    void seen(
+            Scan scan,
+            long logTimeMicros,
+            UnseenEvidence evidence,
+            int j,
+            double existence,
+            ObjectHistory fresh,
+            SortedSet<Identity> alive) {
+        PositionMeasurement z = scan.observations().get(j).measurement();
+        double perEvidence = existence / evidence.total(j);
+        takeIn(perEvidence * evidence.fromGrid(j), fromGrid(z), fresh);
+        for (int pair = evidence.firstPair(j); pair < evidence.endPair(j); pair++) {
+            UnseenTerm prior = terms.get(evidence.term(pair));
+            update.prior(prior.density);
+            update.measure(z);
+            ObjectHistory history = alive.contains(prior.tag.identity()) ? fresh : prior.tag.detected(logTimeMicros);
+            takeIn(perEvidence * evidence.value(pair), update.updated(), history);
+        }
+    }
+
+    private void takeIn(double weight, Gaussian density, ObjectHistory history) {
+        if (weight >= LEAST_WEIGHT) {
+            entering.add(new UnseenTerm(weight, density, history));
+        } else {
+            counters.add(Counters.Name.TERMS_TOO_LIGHT, 1);
+            grid.deposit(density.east(), density.north(), weight);
+        }
     }
 
     /** Lets go of terms that left, and gives terms back to the grid that are too wide, too faint or too many. */
@@ -199,9 +238,10 @@ final class Unseen {
         terms = kept;
     }
 
+    /** Whether even at its peak it is thinner than the grid: then it can no longer decide who a new object is. */
     private boolean isFaint(UnseenTerm term) {
         double area = 2 * StrictMath.PI * Math.sqrt(term.density.positionDeterminant());
-        return term.weight < FAINT_SHARE * area * grid.density(term.density.east(), term.density.north());
+        return term.weight < area * grid.density(term.density.east(), term.density.north());
     }
 
     private void give(UnseenTerm term, Counters.Name why) {
