@@ -26,7 +26,8 @@ public final class Association {
     private final FrontierPlan byRows = new FrontierPlan();
     private final FrontierPlan byColumns = new FrontierPlan();
     private final FrontierAssociation frontier = new FrontierAssociation();
-    private final PropagatedAssociation propagation = new PropagatedAssociation();
+    private final PropagatedAssociation propagation =
+            new PropagatedAssociation(PropagatedAssociation.TOLERANCE);
     private final AssociationMarginals marginals = new AssociationMarginals();
 
     private double logWeight;

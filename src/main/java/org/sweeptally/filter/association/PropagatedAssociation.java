@@ -26,11 +26,16 @@ final class PropagatedAssociation {
     /** Greatest relative change of a message at which propagation stops. */
     static final double TOLERANCE = 1e-9;
 
+    private final double tolerance;
     private double[] rowMessage = new double[32];
     private double[] columnMessage = new double[32];
     private double[] before = new double[32];
     private int sweeps;
     private boolean settled;
+
+    PropagatedAssociation(double tolerance) {
+        this.tolerance = tolerance;
+    }
 
     /** Writes the answer into the cluster, with the Bethe value for its weight. */
     void solve(Cluster cluster, int mostSweeps) {
@@ -44,7 +49,7 @@ final class PropagatedAssociation {
             for (int j = 0; j < cluster.columns; j++) {
                 change = Math.max(change, sendColumn(cluster, j));
             }
-            settled = change <= TOLERANCE;
+            settled = change <= tolerance;
         }
         believe(cluster);
     }

@@ -69,6 +69,23 @@ record DenseAssociation(double[][] w, double[] d, double[] c) {
         return spread(problem, new Association().solve(problem, bounds));
     }
 
+    /** Belief propagation over a problem of one cluster, whatever its shape, to the limit of rounding. */
+    Answer propagate(int mostSweeps) {
+        AssociationProblem problem = problem();
+        Clusters clusters = new Clusters();
+        clusters.split(problem);
+        Cluster cluster = new Cluster();
+        cluster.load(problem, clusters, 0);
+        PropagatedAssociation propagation = new PropagatedAssociation(1e-14);
+        propagation.solve(cluster, mostSweeps);
+        AssociationMarginals marginals = new AssociationMarginals();
+        marginals.begin(problem);
+        cluster.store(marginals);
+        marginals.finish(cluster.logWeight, new AssociationCounts(
+                0, 0, 1, propagation.sweeps(), propagation.settled() ? 0 : 1, 0, 0, 0));
+        return spread(problem, marginals);
+    }
+
     Answer spread(AssociationProblem problem, AssociationMarginals marginals) {
         double[][] p = new double[rows()][columns()];
         double[] missed = new double[rows()];

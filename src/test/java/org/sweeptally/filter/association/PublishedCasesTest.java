@@ -18,7 +18,7 @@ import org.sweeptally.filter.association.DenseAssociation.Answer;
  */
 class PublishedCasesTest {
     private static final double EXACT_TOLERANCE = 1e-12;
-    private static final double PROPAGATED_TOLERANCE = 1e-8;
+    private static final double PROPAGATED_TOLERANCE = 1e-10;
 
     /** Rows of p, each with missed at its end; nobody's; Z; then rows of belief propagation, null where the same. */
     private record Case(
@@ -156,10 +156,9 @@ class PublishedCasesTest {
     @ParameterizedTest
     @MethodSource("cases")
     void beliefPropagationReachesItsFixedPoint(Case given) {
-        Answer answer = given.problem().solve(DenseAssociation.PROPAGATED);
+        Answer answer = given.problem().propagate(100_000);
         compareRows(answer, given.propagated() == null ? given.exact() : given.propagated(), PROPAGATED_TOLERANCE);
         assertThat(answer.counts().sweepCapHits()).isZero();
-        assertThat(answer.counts().exact()).isZero();
     }
 
     /** Two tracks, three detections, uniform clutter and undetected intensity: one update of Williams 2015, by hand. */
