@@ -61,9 +61,9 @@ final class NewComponents {
         SortedMap<Identity, Integer> heirs = new TreeMap<>();
         SortedMap<Identity, Double> contributions = new TreeMap<>();
         for (int j = 0; j < scan.observations().size(); j++) {
-            Heir heir = unseen.heir(evidence, j);
             double existence = existence(hypotheses, j);
-            if (heir == null || existence < recyclingBelow || alive.contains(heir.tag().identity())) {
+            Heir heir = existence < recyclingBelow ? null : unseen.heir(evidence, j);
+            if (heir == null || alive.contains(heir.tag().identity())) {
                 continue;
             }
             double contribution = existence * heir.share();

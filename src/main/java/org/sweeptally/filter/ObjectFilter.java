@@ -8,6 +8,7 @@ import java.util.Collections;
 import java.util.Comparator;
 import java.util.List;
 import org.sweeptally.filter.association.Association;
+import org.sweeptally.filter.association.AssociationProblem;
 import org.sweeptally.filter.count.NumberDistribution;
 import org.sweeptally.filter.count.PoissonBinomial;
 import org.sweeptally.geo.PlaneArea;
@@ -29,6 +30,7 @@ public final class ObjectFilter {
     private final double apronMetres;
     private final Counters counters = new Counters();
     private final Association association = new Association();
+    private final AssociationProblem problem = new AssociationProblem();
     private final Unseen unseen;
 
     private FilterSettings settings;
@@ -84,7 +86,7 @@ public final class ObjectFilter {
         DetectionIndex index = new DetectionIndex(scan.observations());
         UnseenEvidence evidence = unseen.evidence(scan, index);
         ScanHypotheses hypotheses =
-                ScanHypotheses.of(components, scan, index, evidence, settings, counters, association);
+                ScanHypotheses.of(components, scan, index, evidence, settings, counters, association, problem);
 
         List<Component> begun = new NewComponents(
                         scan, logTimeMicros, unseen, evidence, components, settings, counters)

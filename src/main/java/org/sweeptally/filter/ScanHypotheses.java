@@ -56,15 +56,17 @@ final class ScanHypotheses {
             UnseenEvidence evidence,
             FilterSettings settings,
             Counters counters,
-            Association association) {
-        AssociationProblem problem = new AssociationProblem();
+            Association association,
+            AssociationProblem problem) {
+        problem.clear();
         double clutter = scan.look().clutterPerSquareMetre();
         for (int j = 0; j < scan.observations().size(); j++) {
             problem.addColumn(clutter + evidence.total(j));
         }
+        PositionUpdate update = new PositionUpdate();
         double[] detection = new double[components.size()];
         for (int i = 0; i < detection.length; i++) {
-            detection[i] = gate(components.get(i), scan, index, settings, counters, problem);
+            detection[i] = gate(components.get(i), scan, index, settings, counters, problem, update);
         }
         counters.add(Counters.Name.GATED_COMPONENT_PAIRS, problem.pairs());
         AssociationMarginals marginals = association.solve(
@@ -85,7 +87,8 @@ final class ScanHypotheses {
             DetectionIndex index,
             FilterSettings settings,
             Counters counters,
-            AssociationProblem problem) {
+            AssociationProblem problem,
+            PositionUpdate update) {
         Look look = scan.look();
         Gaussian density = component.density;
         double constant = look.constantOver(density);
@@ -95,7 +98,6 @@ final class ScanHypotheses {
         if (constant == 0) {
             return 0;
         }
-        PositionUpdate update = new PositionUpdate();
         update.prior(density);
         double gate = settings.gateSigmas() * settings.gateSigmas();
         int candidates = index.query(density, settings.gateSigmas());

@@ -197,23 +197,31 @@ final class Unseen {
             SortedSet<Identity> alive) {
         PositionMeasurement z = scan.observations().get(j).measurement();
         double perEvidence = existence / evidence.total(j);
-        takeIn(perEvidence * evidence.fromGrid(j), fromGrid(z), fresh);
+        double fromGrid = perEvidence * evidence.fromGrid(j);
+        if (isHeavy(fromGrid, z)) {
+            entering.add(new UnseenTerm(fromGrid, fromGrid(z), fresh));
+        }
         for (int pair = evidence.firstPair(j); pair < evidence.endPair(j); pair++) {
-            UnseenTerm prior = terms.get(evidence.term(pair));
-            update.prior(prior.density);
-            update.measure(z);
-            ObjectHistory history = alive.contains(prior.tag.identity()) ? fresh : prior.tag.detected(logTimeMicros);
-            takeIn(perEvidence * evidence.value(pair), update.updated(), history);
+            double weight = perEvidence * evidence.value(pair);
+            if (isHeavy(weight, z)) {
+                UnseenTerm prior = terms.get(evidence.term(pair));
+                boolean taken = alive.contains(prior.tag.identity());
+                update.prior(prior.density);
+                update.measure(z);
+                entering.add(new UnseenTerm(
+                        weight, update.updated(), taken ? fresh : prior.tag.detected(logTimeMicros)));
+            }
         }
     }
 
-    private void takeIn(double weight, Gaussian density, ObjectHistory history) {
+    /** Whether it is worth a term; else it goes to the grid at once. */
+    private boolean isHeavy(double weight, PositionMeasurement z) {
         if (weight >= LEAST_WEIGHT) {
-            entering.add(new UnseenTerm(weight, density, history));
-        } else {
-            counters.add(Counters.Name.TERMS_TOO_LIGHT, 1);
-            grid.deposit(density.east(), density.north(), weight);
+            return true;
         }
+        counters.add(Counters.Name.TERMS_TOO_LIGHT, 1);
+        grid.deposit(z.east(), z.north(), weight);
+        return false;
     }
 
     /** Lets go of terms that left, and gives terms back to the grid that are too wide, too faint or too many. */
