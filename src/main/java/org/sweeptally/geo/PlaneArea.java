@@ -1,0 +1,209 @@
+package org.sweeptally.geo;
+
+import java.util.ArrayList;
+import java.util.Collections;
+import java.util.List;
+
+/**
+ * A polygon in a {@link LocalPlane}, in metres. Its edges are straight pieces that follow the edges of the polygon it was
+ * made from, which are straight in longitude and latitude, within {@link #EDGE_TOLERANCE_METRES}; two polygons that share
+ * an edge share its pieces.
+ */
+public final class PlaneArea {
+
+    /** Distance that a piece may keep from the edge that it stands for: far below what any sensor measures. */
+    public static final double EDGE_TOLERANCE_METRES = 0.5;
+
+    /** Halvings of an edge, for edges so long that the tolerance cannot be had. */
+    private static final int HALVINGS = 12;
+
+    // Piece k runs from its southern end (fromEast, fromNorth) by (alongEast, alongNorth), up to toNorth.
+    private final double[] fromEast;
+    private final double[] fromNorth;
+    private final double[] toNorth;
+    private final double[] alongEast;
+    private final double[] alongNorth;
+    private final double[] inverseSquare;
+    private final double minEast;
+    private final double maxEast;
+    private final double minNorth;
+    private final double maxNorth;
+    private final double areaSquareMetres;
+
+    /**
+     * The polygon in the plane.
+     *
+     * @throws IllegalArgumentException if a corner does not face the plane
+     */
+    public static PlaneArea of(GeoPolygon polygon, LocalPlane plane) {
+        List<PlanePoint[]> pieces = new ArrayList<>();
+        double area = Math.abs(addRing(polygon.outer(), plane, pieces));
+        int outerPieces = pieces.size();
+        for (List<LatLon> hole : polygon.holes()) {
+            area -= Math.abs(addRing(hole, plane, pieces));
+        }
+        return new PlaneArea(pieces, outerPieces, area);
+    }
+
+    private PlaneArea(List<PlanePoint[]> pieces, int outerPieces, double areaSquareMetres) {
+        int n = pieces.size();
+        fromEast = new double[n];
+        fromNorth = new double[n];
+        toNorth = new double[n];
+        alongEast = new double[n];
+        alongNorth = new double[n];
+        inverseSquare = new double[n];
+        double[] box = {
+            Double.POSITIVE_INFINITY, Double.NEGATIVE_INFINITY, Double.POSITIVE_INFINITY, Double.NEGATIVE_INFINITY
+        };
+        for (int k = 0; k < n; k++) {
+            PlanePoint a = pieces.get(k)[0];
+            PlanePoint b = pieces.get(k)[1];
+            setPiece(k, a.northMetres() < b.northMetres() ? a : b, a.northMetres() < b.northMetres() ? b : a);
+            if (k < outerPieces) {
+                box[0] = Math.min(box[0], a.eastMetres());
+                box[1] = Math.max(box[1], a.eastMetres());
+                box[2] = Math.min(box[2], a.northMetres());
+                box[3] = Math.max(box[3], a.northMetres());
+            }
+        }
+        minEast = box[0];
+        maxEast = box[1];
+        minNorth = box[2];
+        maxNorth = box[3];
+        this.areaSquareMetres = areaSquareMetres;
+    }
+
+    private void setPiece(int k, PlanePoint from, PlanePoint to) {
+        fromEast[k] = from.eastMetres();
+        fromNorth[k] = from.northMetres();
+        toNorth[k] = to.northMetres();
+        alongEast[k] = to.eastMetres() - from.eastMetres();
+        alongNorth[k] = to.northMetres() - from.northMetres();
+        double square = alongEast[k] * alongEast[k] + alongNorth[k] * alongNorth[k];
+        inverseSquare[k] = square > 0 ? 1 / square : 0;
+    }
+
+    /** Whether a point is inside; a point on an edge belongs to the polygon to the east or north. */
+    public boolean contains(double east, double north) {
+        boolean odd = false;
+        for (int k = 0; k < fromEast.length; k++) {
+            odd ^= isCrossed(k, east, north);
+        }
+        return odd;
+    }
+
+    /**
+     * Distance from the nearest edge, metres; positive inside, negative outside, NaN for a point that is not a number.
+     * Cost: one pass over the pieces.
+     */
+    public double signedDistanceMetres(double east, double north) {
+        boolean odd = false;
+        double least = Double.POSITIVE_INFINITY;
+        for (int k = 0; k < fromEast.length; k++) {
+            double right = east - fromEast[k];
+            double up = north - fromNorth[k];
+            odd ^= isCrossed(k, east, north);
+            double share = (right * alongEast[k] + up * alongNorth[k]) * inverseSquare[k];
+            share = Math.min(1, Math.max(0, share));
+            double offEast = right - share * alongEast[k];
+            double offNorth = up - share * alongNorth[k];
+            // Math.min, unlike a comparison, lets NaN through.
+            least = Math.min(least, offEast * offEast + offNorth * offNorth);
+        }
+        double distance = Math.sqrt(least);
+        return odd ? distance : -distance;
+    }
+
+    /**
+     * Whether a line from a point eastwards crosses a piece. Ends are compared as they are, since differences round, and
+     * a point level with the end of two pieces must cross exactly one of them.
+     */
+    private boolean isCrossed(int k, double east, double north) {
+        return north >= fromNorth[k]
+                && north < toNorth[k]
+                && (east - fromEast[k]) * alongNorth[k] < alongEast[k] * (north - fromNorth[k]);
+    }
+
+    public double minEast() {
+        return minEast;
+    }
+
+    public double maxEast() {
+        return maxEast;
+    }
+
+    public double minNorth() {
+        return minNorth;
+    }
+
+    public double maxNorth() {
+        return maxNorth;
+    }
+
+    /** Area without the holes, in the plane. */
+    public double areaSquareMetres() {
+        return areaSquareMetres;
+    }
+
+    /** Adds a ring's pieces; returns its area, positive for a ring that runs counter-clockwise. */
+    private static double addRing(List<LatLon> ring, LocalPlane plane, List<PlanePoint[]> pieces) {
+        double twice = 0;
+        PlanePoint first = plane.toPlane(ring.get(0));
+        for (int i = 0; i < ring.size(); i++) {
+            List<PlanePoint> points = followed(ring.get(i), ring.get((i + 1) % ring.size()), plane);
+            for (int j = 1; j < points.size(); j++) {
+                PlanePoint a = points.get(j - 1);
+                PlanePoint b = points.get(j);
+                pieces.add(new PlanePoint[] {a, b});
+                twice += (a.eastMetres() - first.eastMetres()) * (b.northMetres() - first.northMetres())
+                        - (b.eastMetres() - first.eastMetres()) * (a.northMetres() - first.northMetres());
+            }
+        }
+        return twice / 2;
+    }
+
+    /** Points from a to b along their edge, computed in one direction whichever way the ring runs. */
+    private static List<PlanePoint> followed(LatLon a, LatLon b, LocalPlane plane) {
+        boolean turned = a.latitude() > b.latitude()
+                || (a.latitude() == b.latitude() && a.longitude() > b.longitude());
+        LatLon from = turned ? b : a;
+        LatLon to = turned ? a : b;
+        List<PlanePoint> points = new ArrayList<>();
+        points.add(onPlane(from, plane));
+        follow(from, points.get(0), to, onPlane(to, plane), plane, HALVINGS, points);
+        if (turned) {
+            Collections.reverse(points);
+        }
+        return points;
+    }
+
+    private static void follow(
+            LatLon from, PlanePoint start, LatLon to, PlanePoint end, LocalPlane plane, int halvings, List<PlanePoint> points) {
+        LatLon middle = between(from, to);
+        PlanePoint half = onPlane(middle, plane);
+        double offEast = half.eastMetres() - (start.eastMetres() + end.eastMetres()) / 2;
+        double offNorth = half.northMetres() - (start.northMetres() + end.northMetres()) / 2;
+        boolean near = offEast * offEast + offNorth * offNorth <= EDGE_TOLERANCE_METRES * EDGE_TOLERANCE_METRES;
+        if (near || halvings == 0) {
+            points.add(end);
+        } else {
+            follow(from, start, middle, half, plane, halvings - 1, points);
+            follow(middle, half, to, end, plane, halvings - 1, points);
+        }
+    }
+
+    private static LatLon between(LatLon a, LatLon b) {
+        double step = Math.IEEEremainder(b.longitude() - a.longitude(), 360);
+        double longitude = Math.IEEEremainder(a.longitude() + step / 2, 360);
+        return new LatLon((a.latitude() + b.latitude()) / 2, longitude);
+    }
+
+    private static PlanePoint onPlane(LatLon place, LocalPlane plane) {
+        PlanePoint point = plane.toPlane(place);
+        if (Double.isNaN(point.eastMetres())) {
+            throw new IllegalArgumentException(place + " does not face the plane at " + plane.origin());
+        }
+        return point;
+    }
+}
