@@ -33,6 +33,7 @@ public final class Association {
     private double logWeight;
     private long closed;
     private long exact;
+    private long exactSteps;
     private long propagated;
     private long sweeps;
     private long sweepCapHits;
@@ -53,7 +54,8 @@ public final class Association {
             logWeight += cluster.logWeight;
         }
         marginals.finish(logWeight, new AssociationCounts(
-                closed, exact, propagated, sweeps, sweepCapHits, impossible, underflows, widestFrontier));
+                closed, exact, exactSteps, propagated, sweeps, sweepCapHits, impossible, underflows,
+                widestFrontier));
         return marginals;
     }
 
@@ -123,6 +125,7 @@ public final class Association {
             answerImpossible(oriented);
         }
         exact++;
+        exactSteps += plan.cost;
         widestFrontier = Math.max(widestFrontier, plan.widest);
         return true;
     }
@@ -142,6 +145,7 @@ public final class Association {
     private void begin() {
         closed = 0;
         exact = 0;
+        exactSteps = 0;
         propagated = 0;
         sweeps = 0;
         sweepCapHits = 0;

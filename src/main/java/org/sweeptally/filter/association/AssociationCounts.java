@@ -5,6 +5,7 @@ package org.sweeptally.filter.association;
  *
  * @param closed         clusters of one row or one column, in closed form
  * @param exact          clusters by the exact method
+ * @param exactSteps     table entries that the exact method touched, all clusters together
  * @param propagated     clusters by belief propagation
  * @param sweeps         sweeps of belief propagation, all clusters together
  * @param sweepCapHits   clusters whose messages had not settled at the last sweep allowed
@@ -15,19 +16,21 @@ package org.sweeptally.filter.association;
 public record AssociationCounts(
         long closed,
         long exact,
+        long exactSteps,
         long propagated,
         long sweeps,
         long sweepCapHits,
         long impossible,
         long underflows,
         int widestFrontier) {
-    public static final AssociationCounts NONE = new AssociationCounts(0, 0, 0, 0, 0, 0, 0, 0);
+    public static final AssociationCounts NONE = new AssociationCounts(0, 0, 0, 0, 0, 0, 0, 0, 0);
 
     /** Sums, and the wider of the two frontiers. */
     public AssociationCounts plus(AssociationCounts other) {
         return new AssociationCounts(
                 closed + other.closed,
                 exact + other.exact,
+                exactSteps + other.exactSteps,
                 propagated + other.propagated,
                 sweeps + other.sweeps,
                 sweepCapHits + other.sweepCapHits,

@@ -11,7 +11,7 @@ package org.sweeptally.filter.association;
  * </pre>
  *
  * <p>from nu = 1 until no message changes by more than {@link #TOLERANCE}, relatively. Here w, d and c enter apart: mu is
- * held divided by c and nu by c, so that nothing is divided by d; a d or c of zero is floored.
+ * held divided by c and nu by c, so that nothing is divided by d; a d or c of zero is raised to {@link Cluster#FLOOR}.
  *
  * <p><b>Convergence.</b> With M the greatest row sum and C the greatest column sum of W, the greatest change of a
  * logarithm of nu shrinks by at least the factor rho = M / (1 + M) * C / (1 + C) &lt; 1 a sweep (derived from the
@@ -37,8 +37,9 @@ final class PropagatedAssociation {
         this.tolerance = tolerance;
     }
 
-    /** Writes the answer into the cluster, with the Bethe value for its weight. */
+    /** Writes the answer into the cluster, whose zeros it floors, with the Bethe value for its weight. */
     void solve(Cluster cluster, int mostSweeps) {
+        cluster.floorZeros();
         begin(cluster);
         settled = false;
         for (sweeps = 0; sweeps < mostSweeps && !settled; sweeps++) {
@@ -68,7 +69,7 @@ final class PropagatedAssociation {
     private void sendRow(Cluster cluster, int i) {
         int first = cluster.rowStart[i];
         int end = cluster.rowStart[i + 1];
-        double sum = Math.max(cluster.missedWeight[i], Cluster.FLOOR);
+        double sum = cluster.missedWeight[i];
         for (int p = first; p < end; p++) {
             before[p - first] = sum;
             sum += cluster.weight[p] * columnMessage[p];
@@ -83,7 +84,7 @@ final class PropagatedAssociation {
     private double sendColumn(Cluster cluster, int j) {
         int first = cluster.columnStart[j];
         int end = cluster.columnStart[j + 1];
-        double sum = Math.max(cluster.nobodyWeight[j], Cluster.FLOOR);
+        double sum = cluster.nobodyWeight[j];
         for (int q = first; q < end; q++) {
             before[q - first] = sum;
             sum += rowMessage[cluster.pairOfColumn[q]];
@@ -125,7 +126,7 @@ final class PropagatedAssociation {
             for (int q = cluster.columnStart[j]; q < cluster.columnStart[j + 1]; q++) {
                 sum += rowMessage[cluster.pairOfColumn[q]];
             }
-            cluster.nobody[j] = sum == 0 ? 1 : cluster.nobodyWeight[j] / sum;
+            cluster.nobody[j] = cluster.nobodyWeight[j] / sum;
             cluster.scale.times(sum);
         }
         cluster.logWeight = cluster.scale.log() - overlap.log();
@@ -139,7 +140,7 @@ final class PropagatedAssociation {
             before = new double[length];
         }
         for (int p = 0; p < cluster.pairs(); p++) {
-            columnMessage[p] = 1 / Math.max(cluster.nobodyWeight[cluster.column[p]], Cluster.FLOOR);
+            columnMessage[p] = 1 / cluster.nobodyWeight[cluster.column[p]];
         }
     }
 }

@@ -82,7 +82,7 @@ record DenseAssociation(double[][] w, double[] d, double[] c) {
         marginals.begin(problem);
         cluster.store(marginals);
         marginals.finish(cluster.logWeight, new AssociationCounts(
-                0, 0, 1, propagation.sweeps(), propagation.settled() ? 0 : 1, 0, 0, 0));
+                0, 0, 0, 1, propagation.sweeps(), propagation.settled() ? 0 : 1, 0, 0, 0));
         return spread(problem, marginals);
     }
 
