@@ -20,9 +20,12 @@ final class InsideShare {
     private InsideShare() {}
 
     static double of(Gaussian density, PlaneArea area) {
-        double distance = area.signedDistanceMetres(density.east(), density.north());
-        if (Math.abs(distance) > CLEAR_SIGMAS * density.largestPositionSigma()) {
-            return distance > 0 ? 1 : 0;
+        double clear = CLEAR_SIGMAS * density.largestPositionSigma();
+        if (area.isAtLeast(clear, density.east(), density.north())) {
+            return 1;
+        }
+        if (!area.isAtLeast(-clear, density.east(), density.north())) {
+            return 0;
         }
         DMatrix4x4 p = density.covariance;
         double l11 = Math.sqrt(p.a11);

@@ -132,8 +132,8 @@ public final class ObjectFilter {
     }
 
     private boolean isGone(Component component) {
-        double outside = -apronMetres - core.signedDistanceMetres(component.density.east(), component.density.north());
-        return outside > 0 && outside > settings.gateSigmas() * component.density.largestPositionSigma();
+        double reach = apronMetres + settings.gateSigmas() * component.density.largestPositionSigma();
+        return !core.isAtLeast(-reach, component.density.east(), component.density.north());
     }
 
     /** As many as the bound allows, in their order; the others are recycled. */

@@ -229,8 +229,8 @@ final class Unseen {
         List<UnseenTerm> kept = new ArrayList<>(terms.size());
         for (UnseenTerm term : terms) {
             double sigma = term.density.largestPositionSigma();
-            if (core.signedDistanceMetres(term.density.east(), term.density.north())
-                    < -apronMetres - settings.gateSigmas() * sigma) {
+            double reach = apronMetres + settings.gateSigmas() * sigma;
+            if (!core.isAtLeast(-reach, term.density.east(), term.density.north())) {
                 counters.add(Counters.Name.TERMS_GONE, 1);
             } else if (sigma > settings.unseenCellMetres()) {
                 give(term, Counters.Name.TERMS_RETURNED_WIDE);

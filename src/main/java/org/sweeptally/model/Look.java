@@ -84,11 +84,10 @@ public final class Look {
         if (distance + margin > sensor.reachMetres()) {
             return Double.NaN;
         }
-        double inside = core.signedDistanceMetres(density.east(), density.north()) + apronMetres;
-        if (inside < -margin) {
-            return 0;
+        if (core.isAtLeast(margin - apronMetres, density.east(), density.north())) {
+            return sensor.detection().points().get(0).probability();
         }
-        return inside < margin ? Double.NaN : sensor.detection().points().get(0).probability();
+        return core.isAtLeast(-margin - apronMetres, density.east(), density.north()) ? Double.NaN : 0;
     }
 
     /**
@@ -128,7 +127,7 @@ public final class Look {
     }
 
     private boolean hears(double east, double north) {
-        return core.signedDistanceMetres(east, north) >= -apronMetres;
+        return core.isAtLeast(-apronMetres, east, north);
     }
 
     private double distanceFromSensor(double east, double north) {

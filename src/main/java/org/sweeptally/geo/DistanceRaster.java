@@ -1,0 +1,45 @@
+package org.sweeptally.geo;
+
+/**
+ * Bounds on the distance from a polygon's nearest edge without looking at its edges: the signed distance at the centres of
+ * a raster over the polygon. Distance changes by at most a metre a metre, so that a point's differs from its cell's centre's
+ * by at most half the cell's diagonal. Most questions of "far enough inside?" end here, at the cost of one look-up, however
+ * many edges the polygon has.
+ */
+final class DistanceRaster {
+
+    private static final int CELLS = 64;
+
+    private final double west;
+    private final double south;
+    private final double perEast;
+    private final double perNorth;
+    private final double halfDiagonal;
+    private final double[] atCentre = new double[CELLS * CELLS];
+
+    DistanceRaster(PlaneArea area) {
+        west = area.minEast();
+        south = area.minNorth();
+        double width = (area.maxEast() - west) / CELLS;
+        double height = (area.maxNorth() - south) / CELLS;
+        perEast = 1 / width;
+        perNorth = 1 / height;
+        halfDiagonal = 0.5 * Math.sqrt(width * width + height * height);
+        for (int row = 0; row < CELLS; row++) {
+            for (int column = 0; column < CELLS; column++) {
+                atCentre[row * CELLS + column] =
+                        area.signedDistanceMetres(west + (column + 0.5) * width, south + (row + 0.5) * height);
+            }
+        }
+    }
+
+    /** A number that the signed distance at a point is not below; minus infinity for a point outside the raster. */
+    double atLeast(double east, double north) {
+        double column = (east - west) * perEast;
+        double row = (north - south) * perNorth;
+        if (!(column >= 0 && column < CELLS && row >= 0 && row < CELLS)) {
+            return Double.NEGATIVE_INFINITY;
+        }
+        return atCentre[(int) row * CELLS + (int) column] - halfDiagonal;
+    }
+}
