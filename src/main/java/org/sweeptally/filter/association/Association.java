@@ -16,9 +16,6 @@ package org.sweeptally.filter.association;
  * <p>An instance owns its storage and its answer: one thread, and an answer holds until the next call.
  */
 public final class Association {
-    /** A cluster that costs no more than this by rows is not tried by columns. */
-    private static final long CHEAP_STEPS = 512;
-
     private final Clusters clusters = new Clusters();
     private final Cluster cluster = new Cluster();
     private final Cluster turned = new Cluster();
@@ -30,7 +27,7 @@ public final class Association {
             new PropagatedAssociation(PropagatedAssociation.TOLERANCE);
     private final AssociationMarginals marginals = new AssociationMarginals();
 
-    private double logWeight;
+    private final LogProduct weight = new LogProduct();
     private long closed;
     private long exact;
     private long exactSteps;
@@ -51,9 +48,9 @@ public final class Association {
             cluster.load(problem, clusters, k);
             solveCluster(bounds);
             cluster.store(marginals);
-            logWeight += cluster.logWeight;
+            weight.times(cluster.scale);
         }
-        marginals.finish(logWeight, new AssociationCounts(
+        marginals.finish(weight.log(), new AssociationCounts(
                 closed, exact, exactSteps, propagated, sweeps, sweepCapHits, impossible, underflows,
                 widestFrontier));
         return marginals;
@@ -61,7 +58,6 @@ public final class Association {
 
     /** Columns without a pair are nobody's; pairs of weight zero never happen. */
     private void answerLoneColumns(AssociationProblem problem) {
-        LogProduct weight = new LogProduct();
         for (int j = 0; j < problem.columns(); j++) {
             if (!clusters.hasPair(j)) {
                 marginals.setNobody(j, 1);
@@ -75,7 +71,6 @@ public final class Association {
                 marginals.setPair(p, 0);
             }
         }
-        logWeight = weight.log();
     }
 
     private void solveCluster(AssociationBounds bounds) {
@@ -101,7 +96,7 @@ public final class Association {
 
     private boolean solveExactly(long exactSteps) {
         byRows.find(cluster, exactSteps);
-        if (byRows.cost <= CHEAP_STEPS) {
+        if (byRows.cost <= FrontierPlan.CHEAP) {
             return solveExactly(cluster, byRows);
         }
         turned.turn(cluster);
@@ -139,10 +134,11 @@ public final class Association {
 
     private void answerImpossible(Cluster answered) {
         impossible++;
-        answered.logWeight = Double.NEGATIVE_INFINITY;
+        answered.scale.times(0);
     }
 
     private void begin() {
+        weight.clear();
         closed = 0;
         exact = 0;
         exactSteps = 0;

@@ -7,7 +7,7 @@ import java.util.Arrays;
  *
  * <p>Multiplying a row's weights and its missed weight by one factor, or a column's and its nobody's, leaves the
  * marginals as they are. Here every nobody's weight is 1, or 0 where it was, and the greatest weight of a row is 1;
- * the factors taken out stand in {@link #scale}. Pairs lie row by row; {@link #pairOfColumn} lists them by column.
+ * the factors taken out stand in {@link #scale}, which a solver brings to the weight of all events. Pairs lie row by row; {@link #pairOfColumn} lists them by column.
  */
 final class Cluster {
     /** What takes the place of an impossible event's weight, beside a row's greatest weight of 1. */
@@ -15,6 +15,9 @@ final class Cluster {
 
     /** Weights this far below the greatest of their row or column count as zero: their ratios would overflow. */
     private static final double NEGLIGIBLE = 0x1p-900;
+
+    private static final double SMALL = 0x1p-300;
+    private static final double LARGE = 0x1p300;
 
     final LogProduct scale = new LogProduct();
     int rows;
@@ -31,7 +34,6 @@ final class Cluster {
     double[] missed = new double[16];
     double[] nobody = new double[16];
     double[] pair = new double[32];
-    double logWeight;
 
     private int[] problemRow = new int[16];
     private int[] problemColumn = new int[16];
@@ -86,8 +88,7 @@ final class Cluster {
             column[p] = other.rowOfPair[other.pairOfColumn[p]];
             weight[p] = other.weight[other.pairOfColumn[p]];
         }
-        scale.clear();
-        scale.times(other.scale);
+        scale.set(other.scale);
         indexColumns();
         normalise();
     }
@@ -99,7 +100,7 @@ final class Cluster {
         for (int p = 0; p < pairs(); p++) {
             pair[pairOfColumn[p]] = turned.pair[p];
         }
-        logWeight = turned.logWeight;
+        scale.set(turned.scale);
     }
 
     /** Replaces missed and nobody's weights of zero by {@link #FLOOR}; says whether there were any. */
@@ -169,9 +170,9 @@ final class Cluster {
         columnStart[0] = 0;
     }
 
-    /** Rows first, so that the ratios by column stay in range; then columns; then rows to their greatest weight. */
+    /** Rows out of range first, so that the ratios by column stay in it; columns; then rows to their greatest weight. */
     private void normalise() {
-        scaleRows();
+        scaleRows(SMALL, LARGE);
         for (int j = 0; j < columns; j++) {
             double greatest = 0;
             for (int q = columnStart[j]; q < columnStart[j + 1]; q++) {
@@ -188,16 +189,17 @@ final class Cluster {
             }
             scale.times(factor);
         }
-        scaleRows();
+        scaleRows(1, 1);
     }
 
-    private void scaleRows() {
+    /** Brings the rows whose greatest weight is outside the range to a greatest weight of 1. */
+    private void scaleRows(double least, double most) {
         for (int i = 0; i < rows; i++) {
             double greatest = missedWeight[i];
             for (int p = rowStart[i]; p < rowStart[i + 1]; p++) {
                 greatest = Math.max(greatest, weight[p]);
             }
-            if (greatest == 0) {
+            if (greatest == 0 || greatest >= least && greatest <= most) {
                 continue;
             }
             for (int p = rowStart[i]; p < rowStart[i + 1]; p++) {

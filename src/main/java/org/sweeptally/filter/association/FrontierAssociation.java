@@ -41,7 +41,6 @@ final class FrontierAssociation {
         }
         cluster.scale.times(total);
         cluster.scale.timesPowerOfTwo(-power);
-        cluster.logWeight = cluster.scale.log();
         return true;
     }
 

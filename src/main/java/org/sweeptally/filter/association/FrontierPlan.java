@@ -8,12 +8,15 @@ import java.util.Arrays;
  * <p>The frontier holds the columns that rows already taken share with rows to come; the exact method's tables have an
  * entry for each of its subsets. Finding the order that keeps it narrowest is hard, so it is chosen greedily: the
  * next row is the one that widens the frontier least (columns it opens less columns it closes), of equals the one
- * that opens fewest, then the lowest. Two starts are tried: the row of fewest shared columns, and the row farthest
- * from it. Columns of a single row never enter the frontier.
+ * that opens fewest, then the lowest. It starts from the row of fewest shared columns, and where that is not cheap also
+ * from the row farthest from it. Columns of a single row never enter the frontier.
  */
 final class FrontierPlan {
     /** No solution touches more table entries than this, whatever is configured: 0.5 GiB of tables. */
     static final long LARGEST_COST = 1L << 26;
+
+    /** Table entries that cost no more than looking for a better plan. */
+    static final long CHEAP = 4096;
 
     static final long UNAFFORDABLE = Long.MAX_VALUE;
 
@@ -42,7 +45,7 @@ final class FrontierPlan {
         long least = Math.min(limit, LARGEST_COST);
         int start = narrowestRow(cluster);
         least = attempt(cluster, start, least);
-        if (cluster.rows > 2) {
+        if (cost > CHEAP && cluster.rows > 2) {
             attempt(cluster, farthestRow(cluster, start), least - 1);
         }
     }

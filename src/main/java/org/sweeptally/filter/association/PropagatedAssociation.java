@@ -30,6 +30,7 @@ final class PropagatedAssociation {
     private double[] rowMessage = new double[32];
     private double[] columnMessage = new double[32];
     private double[] before = new double[32];
+    private final LogProduct overlap = new LogProduct();
     private int sweeps;
     private boolean settled;
 
@@ -107,7 +108,7 @@ final class PropagatedAssociation {
      * (never above the true one: Ruozzi 2012, from memory).
      */
     private void believe(Cluster cluster) {
-        LogProduct overlap = new LogProduct();
+        overlap.clear();
         for (int i = 0; i < cluster.rows; i++) {
             double sum = cluster.missedWeight[i];
             for (int p = cluster.rowStart[i]; p < cluster.rowStart[i + 1]; p++) {
@@ -129,7 +130,7 @@ final class PropagatedAssociation {
             cluster.nobody[j] = cluster.nobodyWeight[j] / sum;
             cluster.scale.times(sum);
         }
-        cluster.logWeight = cluster.scale.log() - overlap.log();
+        cluster.scale.over(overlap);
     }
 
     private void begin(Cluster cluster) {

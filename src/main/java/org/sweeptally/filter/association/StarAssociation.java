@@ -35,7 +35,6 @@ final class StarAssociation {
                 cluster.scale.times(cluster.weight[p]);
             }
         }
-        cluster.logWeight = cluster.scale.log();
         return true;
     }
 
@@ -62,7 +61,6 @@ final class StarAssociation {
         }
         cluster.missed[0] = cluster.missedWeight[0] / total;
         cluster.scale.times(total);
-        cluster.logWeight = cluster.scale.log();
         return true;
     }
 }

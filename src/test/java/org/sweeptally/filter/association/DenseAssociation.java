@@ -81,7 +81,7 @@ record DenseAssociation(double[][] w, double[] d, double[] c) {
         AssociationMarginals marginals = new AssociationMarginals();
         marginals.begin(problem);
         cluster.store(marginals);
-        marginals.finish(cluster.logWeight, new AssociationCounts(
+        marginals.finish(cluster.scale.log(), new AssociationCounts(
                 0, 0, 0, 1, propagation.sweeps(), propagation.settled() ? 0 : 1, 0, 0, 0));
         return spread(problem, marginals);
     }
