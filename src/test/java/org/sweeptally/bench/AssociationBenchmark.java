@@ -105,8 +105,8 @@ public class AssociationBenchmark {
             greatestError = Math.max(greatestError, error);
         }
         if (print) {
-            System.out.printf(Locale.ROOT, "| %s | %.0f | %d | %.1f | %.1f | %.0f | %.3f | %.3f | %.2f |%n", shape, entries,
-                    frontier, micros[0], micros[1], sweeps, sumOfErrors, greatestError, greatestRatio);
+            System.out.printf(Locale.ROOT, "| %s | %.0f | %d | %.1f | %.1f | %.0f | %.3f | %.3f | %.2f |%n",
+                    shape, entries, frontier, micros[0], micros[1], sweeps, sumOfErrors, greatestError, greatestRatio);
         }
     }
 

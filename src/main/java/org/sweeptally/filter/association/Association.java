@@ -4,8 +4,8 @@ package org.sweeptally.filter.association;
  * Marginal association probabilities of one scan: for each component, that it was missed and that each gated detection
  * is its own; for each detection, that it is nobody's.
  *
- * <p>The problem falls apart into clusters that share no detection. A cluster of one row or one column has a closed form;
- * one whose {@link FrontierPlan} is affordable, by rows or by columns, whichever is cheaper, is solved exactly
+ * <p>The problem falls apart into clusters that share no detection. A cluster of one row or one column has a closed
+ * form; one whose {@link FrontierPlan} is affordable, by rows or by columns, whichever is cheaper, is solved exactly
  * ({@link FrontierAssociation}); the rest goes to {@link PropagatedAssociation belief propagation}.
  *
  * <p>A cluster whose every event has weight zero (two certain objects, always detected, with one detection

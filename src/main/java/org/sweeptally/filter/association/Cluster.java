@@ -7,7 +7,8 @@ import java.util.Arrays;
  *
  * <p>Multiplying a row's weights and its missed weight by one factor, or a column's and its nobody's, leaves the
  * marginals as they are. Here every nobody's weight is 1, or 0 where it was, and the greatest weight of a row is 1;
- * the factors taken out stand in {@link #scale}, which a solver brings to the weight of all events. Pairs lie row by row; {@link #pairOfColumn} lists them by column.
+ * the factors taken out stand in {@link #scale}, which a solver brings to the weight of all events. Pairs lie row by
+ * row; {@link #pairOfColumn} lists them by column.
  */
 final class Cluster {
     /** What takes the place of an impossible event's weight, beside a row's greatest weight of 1. */
@@ -170,7 +171,7 @@ final class Cluster {
         columnStart[0] = 0;
     }
 
-    /** Rows out of range first, so that the ratios by column stay in it; columns; then rows to their greatest weight. */
+    /** Rows out of range first, so that ratios by column stay in it; then columns; then rows to their greatest. */
     private void normalise() {
         scaleRows(SMALL, LARGE);
         for (int j = 0; j < columns; j++) {

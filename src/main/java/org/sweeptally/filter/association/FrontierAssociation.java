@@ -110,7 +110,8 @@ final class FrontierAssociation {
             return sum;
         }
         for (int p = cluster.rowStart[row]; p < cluster.rowStart[row + 1]; p++) {
-            boolean must = cluster.degreeOfColumn(cluster.column[p]) == 1 && cluster.nobodyWeight[cluster.column[p]] == 0;
+            int j = cluster.column[p];
+            boolean must = cluster.degreeOfColumn(j) == 1 && cluster.nobodyWeight[j] == 0;
             cluster.pair[p] = must && forced == 1 ? cluster.pair[p] : 0;
         }
         return forced == 1 ? forcedWeight : 0;

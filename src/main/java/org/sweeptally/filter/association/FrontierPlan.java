@@ -12,7 +12,7 @@ import java.util.Arrays;
  * from the row farthest from it. Columns of a single row never enter the frontier.
  */
 final class FrontierPlan {
-    /** No solution touches more table entries than this, whatever is configured: 0.5 GiB of tables. */
+    /** No solution touches more table entries than this, whatever is configured: 0.3 GiB of tables. */
     static final long LARGEST_COST = 1L << 26;
 
     /** Table entries that cost no more than looking for a better plan. */

@@ -10,8 +10,9 @@ package org.sweeptally.filter.association;
  *   mu_ij = W_ij / (1 + sum over k != j of W_ik nu_ik)        nu_ij = 1 / (1 + sum over k != i of mu_kj)
  * </pre>
  *
- * <p>from nu = 1 until no message changes by more than {@link #TOLERANCE}, relatively. Here w, d and c enter apart: mu is
- * held divided by c and nu by c, so that nothing is divided by d; a d or c of zero is raised to {@link Cluster#FLOOR}.
+ * <p>from nu = 1 until no message changes by more than {@link #TOLERANCE}, relatively. Here w, d and c enter apart: mu
+ * is held divided by c and nu by c, so that nothing is divided by d; a d or c of zero is raised to
+ * {@link Cluster#FLOOR}.
  *
  * <p><b>Convergence.</b> With M the greatest row sum and C the greatest column sum of W, the greatest change of a
  * logarithm of nu shrinks by at least the factor rho = M / (1 + M) * C / (1 + C) &lt; 1 a sweep (derived from the

@@ -6,14 +6,14 @@ import java.util.Arrays;
  * The distribution of the number of events that happen, of independent events with probabilities of their own
  * (Poisson binomial; Wang 1993, Statistica Sinica 3:295-312, from memory).
  *
- * <p>One event after another: P(k) becomes P(k) (1 - r) + P(k - 1) r. Nothing is subtracted, so no value is ever negative,
- * as it may be by Fourier transform. Only a band is kept: of n events with standard deviation sigma about 18 sigma + a few
- * entries, so the cost is n sigma; probabilities of exactly 0 and 1 cost nothing.
+ * <p>One event after another: P(k) becomes P(k) (1 - r) + P(k - 1) r. Nothing is subtracted, so no value is ever
+ * negative, as it may be by Fourier transform. Only a band is kept: of n events with standard deviation sigma about
+ * 18 sigma + a few entries, so the cost is n sigma; probabilities of exactly 0 and 1 cost nothing.
  *
- * <p><b>Error.</b> While events are added, each side loses at most {@link #WORKING_TAIL} in all (a share of it per event):
- * that much a listed probability may be too low, beside one rounding an event, and the sum of all is brought
+ * <p><b>Error.</b> While events are added, each side loses at most {@link #WORKING_TAIL} in all (a share of it per
+ * event): that much a listed probability may be too low, beside one rounding an event, and the sum of all is brought
  * back to 1. At the end each tail that sums to at most {@link #TAIL} is cut off and carried as {@code below} and
- * {@code above}, with what was lost on its side: below + above is at most 2 (TAIL + WORKING_TAIL).
+ * {@code above}, with what was lost on its side: below + above is at most 2 TAIL.
  */
 public final class PoissonBinomial {
     /** Greatest probability carried, not listed, on each side of the band. */

@@ -21,7 +21,7 @@ class AssociationInvarianceTest {
             double[] columnFactor = factors(random, problem.columns());
             Answer plain = problem.solve(DenseAssociation.EXACT);
             Answer scaled = problem.scaled(rowFactor, columnFactor).solve(DenseAssociation.EXACT);
-            requireSame(plain, scaled, identity(problem.rows()), identity(problem.columns()), "trial " + trial);
+            requireSame(plain, scaled, identity(problem.rows()), identity(problem.columns()), where(trial));
             double logFactors = 0;
             for (double factor : rowFactor) {
                 logFactors += StrictMath.log(factor);
@@ -42,7 +42,7 @@ class AssociationInvarianceTest {
             int[] columnOrder = DenseAssociation.shuffledOrder(random, problem.columns());
             Answer plain = problem.solve(DenseAssociation.EXACT);
             Answer permuted = problem.permuted(rowOrder, columnOrder).solve(DenseAssociation.EXACT);
-            requireSame(plain, permuted, rowOrder, columnOrder, "trial " + trial);
+            requireSame(plain, permuted, rowOrder, columnOrder, where(trial));
             assertThat(permuted.logWeight()).isCloseTo(plain.logWeight(), within(1e-11));
         }
     }
@@ -114,5 +114,9 @@ class AssociationInvarianceTest {
         for (int j = 0; j < columnOrder.length; j++) {
             assertThat(other.nobody()[j]).as(where).isCloseTo(plain.nobody()[columnOrder[j]], within(1e-12));
         }
+    }
+
+    private static String where(int trial) {
+        return "seed from " + SEED + ", trial " + trial;
     }
 }

@@ -103,7 +103,8 @@ class AssociationTest {
         double[][] w = {{2, 1, 0, 0, 0}, {1, 2, 0, 0, 0}, {0, 0, 3, 0, 0}, {0, 0, 0, 4, 0}, {0, 0, 0, 5, 0}};
         double[] ones = {1, 1, 1, 1, 1};
         Answer all = of(w, ones, ones).solve(DenseAssociation.EXACT);
-        Answer first = DenseAssociation.ofRatios(new double[] {2, 1}, new double[] {1, 2}).solve(DenseAssociation.EXACT);
+        DenseAssociation part = DenseAssociation.ofRatios(new double[] {2, 1}, new double[] {1, 2});
+        Answer first = part.solve(DenseAssociation.EXACT);
         assertThat(all.p()[0][1]).isEqualTo(first.p()[0][1]);
         assertThat(all.logWeight()).isCloseTo(StrictMath.log(12 * 4 * 10), within(1e-13));
         assertThat(all.counts().exact()).isEqualTo(1);

@@ -25,7 +25,7 @@ class EnumeratedComparisonTest {
         compareMany(20310503L, 3000, .5, .3);
     }
 
-    /** All 2^6 choices of which pairs exist and all 2^5 of which lone weights are zero, for two rows and three columns. */
+    /** All 2^6 choices of which pairs exist, with all 2^5 of which missed and nobody's weights are zero. */
     @Test
     void everyPatternOfTwoRowsAndThreeColumnsAgrees() {
         int possible = 0;

@@ -43,7 +43,7 @@ class LongClusterTest {
         Random random = new Random(SEED + 1);
         for (int trial = 0; trial < 30; trial++) {
             DenseAssociation problem = band(random, 40 + random.nextInt(40), 1 + random.nextInt(6));
-            EnumeratedComparisonTest.requireDistributions(problem.solve(DenseAssociation.EXACT), "trial " + trial);
+            EnumeratedComparisonTest.requireDistributions(problem.solve(DenseAssociation.EXACT), where(trial));
         }
     }
 
@@ -128,5 +128,9 @@ class LongClusterTest {
         assertThat(wide.counts().exact()).isEqualTo(1);
         assertThat(StrictMath.exp(answer.logWeight()) / z).isCloseTo(1, within(1e-13));
         assertThat(wide.missed()).containsExactly(answer.nobody(), within(1e-14));
+    }
+
+    private static String where(int trial) {
+        return "seed from " + SEED + ", trial " + trial;
     }
 }
