@@ -131,9 +131,9 @@ public final class ObjectFilter {
         return new ScanResult(recycled, gone);
     }
 
+    /** Beyond what the region hears it can only guess; whoever comes back from there comes as inflow. */
     private boolean isGone(Component component) {
-        double reach = apronMetres + settings.gateSigmas() * component.density.largestPositionSigma();
-        return !core.isAtLeast(-reach, component.density.east(), component.density.north());
+        return !core.isAtLeast(-apronMetres, component.density.east(), component.density.north());
     }
 
     /** As many as the bound allows, in their order; the others are recycled. */

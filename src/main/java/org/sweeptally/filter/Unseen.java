@@ -228,11 +228,9 @@ final class Unseen {
     void tidy() {
         List<UnseenTerm> kept = new ArrayList<>(terms.size());
         for (UnseenTerm term : terms) {
-            double sigma = term.density.largestPositionSigma();
-            double reach = apronMetres + settings.gateSigmas() * sigma;
-            if (!core.isAtLeast(-reach, term.density.east(), term.density.north())) {
+            if (!core.isAtLeast(-apronMetres, term.density.east(), term.density.north())) {
                 counters.add(Counters.Name.TERMS_GONE, 1);
-            } else if (sigma > settings.unseenCellMetres()) {
+            } else if (term.density.largestPositionSigma() > settings.unseenCellMetres()) {
                 give(term, Counters.Name.TERMS_RETURNED_WIDE);
             } else if (isFaint(term)) {
                 give(term, Counters.Name.TERMS_RETURNED_FAINT);

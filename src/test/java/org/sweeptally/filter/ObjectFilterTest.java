@@ -1,0 +1,211 @@
+package org.sweeptally.filter;
+
+import static org.assertj.core.api.Assertions.assertThat;
+import static org.assertj.core.api.Assertions.within;
+
+import java.io.ByteArrayInputStream;
+import java.io.ByteArrayOutputStream;
+import java.io.DataInputStream;
+import java.io.DataOutputStream;
+import java.io.IOException;
+import java.util.SplittableRandom;
+import org.junit.jupiter.api.Test;
+import org.sweeptally.model.Look;
+
+class ObjectFilterTest {
+
+    private static final long SECOND = 1_000_000L;
+
+    private final FilterScene scene = new FilterScene(4000, 200, 10_000);
+    private final Look look = scene.look(0.9, 30 / 16e6);
+
+    @Test
+    void anObjectSeenAFewTimesIsConfirmedUnderTheNameOfItsFirstDetection() {
+        ObjectFilter filter = scene.filter(FilterScene.settings());
+        for (int k = 0; k < 5; k++) {
+            step(filter, k, 100 + 10 * k, 200);
+        }
+        assertThat(filter.components()).hasSize(1);
+        Component component = filter.components().get(0);
+        assertThat(component.confirmed()).isTrue();
+        assertThat(component.existence()).isGreaterThan(0.99);
+        assertThat(component.identity()).isEqualTo(new Identity("mast", 0, 0, 0));
+        assertThat(component.firstSeenMicros()).isZero();
+        assertThat(component.lastDetectedMicros()).isEqualTo(10 * SECOND);
+        assertThat(component.density().east()).isCloseTo(140, within(15.0));
+        assertThat(component.used()).singleElement().satisfies(use -> {
+            assertThat(use.id()).isEqualTo("d0");
+            assertThat(use.probability()).isGreaterThan(0.95);
+        });
+    }
+
+    @Test
+    void anEmptyScanLowersExistenceAndAnAbsentOneOnlyLetsItAge() {
+        ObjectFilter filter = seen(5);
+        double before = filter.components().get(0).existenceLogOdds();
+        filter.predict(2.5);
+        double aged = filter.components().get(0).existenceLogOdds();
+        filter.update(FilterScene.scan(15 * SECOND, look), 15 * SECOND);
+        double missed = filter.components().get(0).existenceLogOdds();
+
+        assertThat(aged).isLessThan(before);
+        // A miss multiplies the odds by 1 - P_D: Musicki, Evans and Stankovic 1994 (from memory).
+        assertThat(missed - aged).isCloseTo(StrictMath.log(0.1), within(1e-12));
+    }
+
+    @Test
+    void aLookThatCannotSeeAnObjectLeavesItsExistenceAsItWas() {
+        ObjectFilter filter = seen(5);
+        FilterScene shortSighted = new FilterScene(4000, 200, 50);
+        double before = filter.components().get(0).existenceLogOdds();
+        filter.update(FilterScene.scan(11 * SECOND, shortSighted.look(0.9, 1e-6)), 11 * SECOND);
+        assertThat(filter.components().get(0).existenceLogOdds()).isEqualTo(before);
+    }
+
+    @Test
+    void identityOutlivesADipOfExistence() {
+        ObjectFilter filter = seen(6);
+        Identity identity = filter.components().get(0).identity();
+        filter.components().get(0).markBorn();
+        long time = 6;
+        for (int k = 0; k < 4; k++) {
+            filter.predict(2.5);
+            ScanResult result = filter.update(FilterScene.scan(time * 2500_000, look), time * 2500_000);
+            time++;
+            if (!result.recycled().isEmpty()) {
+                break;
+            }
+        }
+        assertThat(filter.components()).isEmpty();
+        assertThat(filter.counters().get(Counters.Name.COMPONENTS_RECYCLED)).isEqualTo(1);
+        for (int k = 0; k < 4; k++, time++) {
+            filter.predict(2.5);
+            filter.update(FilterScene.scan(time * 2500_000, look, 100 + 10 * time, 200), time * 2500_000);
+        }
+        assertThat(filter.components()).singleElement().satisfies(component -> {
+            assertThat(component.identity()).isEqualTo(identity);
+            assertThat(component.bornBefore()).isTrue();
+            assertThat(component.confirmed()).isTrue();
+        });
+    }
+
+    @Test
+    void twoObjectsNeverShareAnIdentity() {
+        SplittableRandom random = new SplittableRandom(11);
+        ObjectFilter filter = scene.filter(FilterScene.settings());
+        for (int k = 0; k < 40; k++) {
+            double[] places = new double[80];
+            for (int i = 0; i < places.length; i++) {
+                places[i] = 400 * random.nextDouble() - 200;
+            }
+            filter.predict(k == 0 ? 0 : 1);
+            filter.update(FilterScene.scan(k * SECOND, look, places), k * SECOND);
+            assertThat(filter.components()).extracting(Component::identity).doesNotHaveDuplicates();
+        }
+        assertThat(filter.components()).isNotEmpty();
+    }
+
+    @Test
+    void anObjectThatSailsOutOfHearingIsLetGo() {
+        ObjectFilter filter = scene.filter(FilterScene.settings());
+        int gone = 0;
+        for (int k = 0; k < 120; k++) {
+            double east = 1800 + 10 * k;
+            filter.predict(k == 0 ? 0 : 2.5);
+            Scan scan = east < 2200
+                    ? FilterScene.scan(k * 2500_000L, look, east, 0)
+                    : FilterScene.scan(k * 2500_000L, look);
+            gone += filter.update(scan, k * 2500_000L).gone().size();
+        }
+        assertThat(gone).isEqualTo(1);
+        assertThat(filter.components()).isEmpty();
+    }
+
+    @Test
+    void theMeanOfTheCountAndTheUnseenPartIsTheWholeIntensity() {
+        ObjectFilter filter = seen(3);
+        double sum = filter.components().stream().mapToDouble(Component::existence).sum();
+        assertThat(filter.count().mean()).isCloseTo(sum, within(1e-12));
+        assertThat(filter.expectedUnseen()).isBetween(0.0, 20.0);
+    }
+
+    @Test
+    void boundsBiteAndAreCounted() {
+        FilterSettings s = FilterScene.settings();
+        FilterSettings tight = new FilterSettings(
+                s.accelerationNoise(), s.speedSigma(), s.lifetimeSeconds(), s.birthsPerSquareMetrePerSecond(),
+                s.outsidePerSquareMetre(), s.initialPerSquareMetre(), s.confirming(), s.ending(), s.recyclingBelow(),
+                s.gateSigmas(), s.unseenCellMetres(), 3, 5, s.exactAssociationSteps(), s.propagationSweeps());
+        ObjectFilter filter = scene.filter(tight);
+        for (int k = 0; k < 6; k++) {
+            double[] places = new double[40];
+            for (int i = 0; i < 20; i++) {
+                places[2 * i] = -1900 + 190 * i;
+                places[2 * i + 1] = 50;
+            }
+            filter.predict(k == 0 ? 0 : 2.5);
+            filter.update(FilterScene.scan(k * 2500_000L, look, places), k * 2500_000L);
+        }
+        assertThat(filter.components()).hasSize(3);
+        assertThat(filter.counters().get(Counters.Name.COMPONENTS_OVER_BOUND)).isPositive();
+        assertThat(filter.counters().get(Counters.Name.TERMS_OVER_BOUND)).isPositive();
+    }
+
+    @Test
+    void aStateWrittenAndReadGoesOnToTheLastBit() throws IOException {
+        for (long seed = 1; seed <= 5; seed++) {
+            SplittableRandom random = new SplittableRandom(seed);
+            ObjectFilter one = scene.filter(FilterScene.settings());
+            for (int k = 0; k < 12; k++) {
+                ObjectFilter two = read(bytes(one));
+                Scan scan = randomScan(random, k);
+                for (ObjectFilter filter : new ObjectFilter[] {one, two}) {
+                    filter.predict(k == 0 ? 0 : 2.5);
+                    filter.update(scan, k * 2500_000L);
+                }
+                assertThat(bytes(two)).as("seed %s, scan %s", seed, k).isEqualTo(bytes(one));
+            }
+        }
+    }
+
+    @Test
+    void certainAndImpossibleExistenceMakeNoNaN() {
+        assertThat(LogOdds.survive(Double.POSITIVE_INFINITY, 1)).isEqualTo(Double.POSITIVE_INFINITY);
+        assertThat(LogOdds.probability(LogOdds.survive(Double.POSITIVE_INFINITY, 0.9))).isCloseTo(0.9, within(1e-15));
+        assertThat(LogOdds.survive(Double.NEGATIVE_INFINITY, 0.9)).isEqualTo(Double.NEGATIVE_INFINITY);
+        assertThat(LogOdds.ofRatio(0, 0)).isEqualTo(Double.NEGATIVE_INFINITY);
+        assertThat(LogOdds.complement(40)).isCloseTo(StrictMath.exp(-40), within(1e-30));
+    }
+
+    private Scan randomScan(SplittableRandom random, int k) {
+        double[] places = new double[2 * (5 + random.nextInt(20))];
+        for (int i = 0; i < places.length; i++) {
+            places[i] = (k % 2 == 0 ? 600 : 3600) * (random.nextDouble() - 0.5);
+        }
+        return FilterScene.scan(k * 2500_000L, look, places);
+    }
+
+    private ObjectFilter seen(int scans) {
+        ObjectFilter filter = scene.filter(FilterScene.settings());
+        for (int k = 0; k < scans; k++) {
+            step(filter, k, 100 + 10 * k, 200);
+        }
+        return filter;
+    }
+
+    private void step(ObjectFilter filter, int k, double east, double north) {
+        filter.predict(k == 0 ? 0 : 2.5);
+        filter.update(FilterScene.scan(k * 2500_000L, look, east, north), k * 2500_000L);
+    }
+
+    private static byte[] bytes(ObjectFilter filter) throws IOException {
+        ByteArrayOutputStream bytes = new ByteArrayOutputStream();
+        filter.write(new DataOutputStream(bytes));
+        return bytes.toByteArray();
+    }
+
+    private ObjectFilter read(byte[] bytes) throws IOException {
+        DataInputStream in = new DataInputStream(new ByteArrayInputStream(bytes));
+        return ObjectFilter.read(in, FilterScene.settings(), scene.core(), scene.apronMetres());
+    }
+}
