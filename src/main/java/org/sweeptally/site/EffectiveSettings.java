@@ -1,0 +1,153 @@
+package org.sweeptally.site;
+
+import java.time.Instant;
+import java.time.temporal.ChronoUnit;
+import java.util.List;
+import java.util.stream.Collectors;
+import org.sweeptally.geo.GeoPolygon;
+import org.sweeptally.geo.LatLon;
+import org.sweeptally.model.DetectionProfile;
+
+/**
+ * Writes a site's settings as one text with every default in it: the same site gives the same text, byte for byte, and
+ * {@link SiteReader#readText} gives an equal site back. Keys come in a fixed order, sensors and regions by name, numbers
+ * in their shortest form.
+ */
+public final class EffectiveSettings {
+
+    private final StringBuilder out = new StringBuilder();
+
+    private EffectiveSettings() {}
+
+    /** The settings as YAML. */
+    public static String text(Site site) {
+        EffectiveSettings settings = new EffectiveSettings();
+        settings.write(site);
+        return settings.out.toString();
+    }
+
+    private void write(Site site) {
+        // In quotes, or a site called "null" would be none.
+        line(0, "site", "\"" + site.name() + "\"");
+        line(0, "revision", Integer.toString(site.revision()));
+        site.fromMicros().ifPresent(micros -> line(0, "from", Instant.EPOCH.plus(micros, ChronoUnit.MICROS).toString()));
+        line(0, "rejectOutside", Boolean.toString(site.rejectOutside()));
+        open(0, "sensors");
+        site.sensors().forEach(this::sensor);
+        motion(site.motion());
+        line(0, "lifetimeSeconds", site.lifetimeSeconds());
+        open(0, "unseen");
+        line(1, "birthsPerSquareKilometrePerHour", site.unseen().birthsPerSquareKilometrePerHour());
+        line(1, "outsidePerSquareKilometre", site.unseen().outsidePerSquareKilometre());
+        line(1, "initialPerSquareKilometre", site.unseen().initialPerSquareKilometre());
+        open(0, "thresholds");
+        line(1, "confirming", site.thresholds().confirming());
+        line(1, "ending", site.thresholds().ending());
+        bounds(site.bounds());
+        open(0, "regions");
+        site.regions().forEach(this::region);
+    }
+
+    private void sensor(SensorSettings sensor) {
+        open(1, sensor.name());
+        sensor.position().ifPresent(position -> line(
+                2,
+                "position",
+                "{latitude: " + Numbers.shortest(position.latitude()) + ", longitude: "
+                        + Numbers.shortest(position.longitude()) + "}"));
+        sensor.roams().ifPresent(polygon -> polygon(2, "roams", polygon));
+        line(2, "reachMetres", sensor.reachMetres());
+        if (sensor.noise().alongSigmaMetres() == sensor.noise().acrossSigmaMetres()) {
+            line(2, "sigmaMetres", sensor.noise().alongSigmaMetres());
+        } else {
+            line(2, "alongSigmaMetres", sensor.noise().alongSigmaMetres());
+            line(2, "acrossSigmaMetres", sensor.noise().acrossSigmaMetres());
+        }
+        line(2, "detectionProbability", profile(sensor.detectionProbability()));
+        line(2, "clutterPerScan", sensor.clutterPerScan());
+        line(2, "intervalSeconds", sensor.intervalSeconds());
+        line(2, "sweepSeconds", sensor.sweepSeconds());
+        line(2, "leastIntervalSeconds", sensor.leastIntervalSeconds());
+        line(2, "disorderSeconds", sensor.disorderSeconds());
+        line(2, "silentSeconds", sensor.silentSeconds());
+    }
+
+    private static String profile(DetectionProfile profile) {
+        DetectionProfile.Point first = profile.points().get(0);
+        if (profile.points().size() == 1 && first.rangeMetres() == 0) {
+            return Numbers.shortest(first.probability());
+        }
+        return profile.points().stream()
+                .map(point -> "{rangeMetres: " + Numbers.shortest(point.rangeMetres()) + ", probability: "
+                        + Numbers.shortest(point.probability()) + "}")
+                .collect(Collectors.joining(", ", "[", "]"));
+    }
+
+    private void motion(MotionSettings motion) {
+        open(0, "motion");
+        line(1, "accelerationNoise", motion.accelerationNoise());
+        line(1, "speedSigmaMetresPerSecond", motion.speedSigmaMetresPerSecond());
+        line(1, "largestSpeedMetresPerSecond", motion.largestSpeedMetresPerSecond());
+    }
+
+    private void bounds(BoundSettings bounds) {
+        open(0, "bounds");
+        line(1, "gateSigmas", bounds.gateSigmas());
+        line(1, "components", Integer.toString(bounds.components()));
+        line(1, "unseenTerms", Integer.toString(bounds.unseenTerms()));
+        line(1, "exactAssociationSteps", Long.toString(bounds.exactAssociationSteps()));
+        line(1, "propagationSweeps", Integer.toString(bounds.propagationSweeps()));
+        line(1, "detectionsPerPart", Integer.toString(bounds.detectionsPerPart()));
+        line(1, "waitingBytes", Long.toString(bounds.waitingBytes()));
+        line(1, "clockAheadSeconds", bounds.clockAheadSeconds());
+        line(1, "snapshotScans", Integer.toString(bounds.snapshotScans()));
+    }
+
+    private void region(RegionSettings region) {
+        open(1, region.name());
+        line(2, "apronMetres", region.apronMetres());
+        line(2, "cellMetres", region.unseenCellMetres());
+        polygon(2, "polygon", region.core());
+    }
+
+    private void polygon(int depth, String key, GeoPolygon polygon) {
+        open(depth, key);
+        ring(depth + 1, polygon.outer());
+        polygon.holes().forEach(hole -> ring(depth + 1, hole));
+    }
+
+    /** A ring ends where it starts (RFC 7946). */
+    private void ring(int depth, List<LatLon> corners) {
+        indent(depth);
+        out.append("- [");
+        for (LatLon corner : corners) {
+            position(corner);
+            out.append(", ");
+        }
+        position(corners.get(0));
+        out.append("]\n");
+    }
+
+    private void position(LatLon place) {
+        out.append('[').append(Numbers.shortest(place.longitude()));
+        out.append(", ").append(Numbers.shortest(place.latitude())).append(']');
+    }
+
+    private void open(int depth, String key) {
+        indent(depth);
+        out.append(key).append(":\n");
+    }
+
+    private void line(int depth, String key, double value) {
+        line(depth, key, Numbers.shortest(value));
+    }
+
+    private void line(int depth, String key, String value) {
+        indent(depth);
+        out.append(key).append(": ").append(value).append('\n');
+    }
+
+    private void indent(int depth) {
+        out.append("  ".repeat(depth));
+    }
+}

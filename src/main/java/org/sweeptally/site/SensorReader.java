@@ -1,0 +1,127 @@
+package org.sweeptally.site;
+
+import java.util.ArrayList;
+import java.util.List;
+import java.util.Map;
+import java.util.Optional;
+import java.util.TreeMap;
+import org.sweeptally.geo.GeoPolygon;
+import org.sweeptally.geo.LatLon;
+import org.sweeptally.model.DetectionProfile;
+import org.sweeptally.site.SensorSettings.PositionNoise;
+
+/** Reads sensors. One with faults still comes out, its wrong numbers NaN. */
+final class SensorReader {
+
+    static final double DEFAULT_SILENT_SECONDS = 10;
+
+    private static final Allowed METRES = Allowed.moreThanZero(1_000_000);
+    private static final Allowed SIGMA = Allowed.from(0.001, 100_000);
+    private static final Allowed SECONDS = Allowed.moreThanZero(31_536_000);
+    private static final Allowed SECONDS_OR_NONE = Allowed.from(0, 31_536_000);
+    private static final Allowed COUNT = Allowed.moreThanZero(1_000_000);
+    private static final Allowed RANGE = Allowed.from(0, 1_000_000);
+
+    private final SiteFiles files;
+    private final Faults faults;
+
+    private SensorReader(SiteFiles files, Faults faults) {
+        this.files = files;
+        this.faults = faults;
+    }
+
+    /** By name. */
+    static List<SensorSettings> read(Node node, SiteFiles files, Faults faults) {
+        SensorReader reader = new SensorReader(files, faults);
+        Map<String, SensorSettings> sensors = new TreeMap<>();
+        if (node instanceof Node.Mapping mapping && !mapping.entries().isEmpty()) {
+            mapping.entries().forEach((name, settings) -> {
+                Names.check(name, settings.at(), faults);
+                sensors.put(name, reader.sensor(name, Fields.of(settings, "a sensor's settings", faults)));
+            });
+        } else {
+            faults.add(node.at(), node.shown(), "must be a mapping of sensors' names to their settings");
+        }
+        return List.copyOf(sensors.values());
+    }
+
+    private SensorSettings sensor(String name, Fields fields) {
+        Optional<LatLon> position = fields.optional("position").map(this::position);
+        Optional<GeoPolygon> roams = fields.optional("roams").flatMap(node -> RegionsReader.roams(node, files, faults));
+        if (fields.has("position") && fields.has("roams")) {
+            faults.add(fields.at("roams"), "", "must be absent for a sensor with a position, which does not move");
+        }
+        double reach = fields.number("reachMetres", METRES);
+        PositionNoise noise = noise(fields);
+        DetectionProfile profile = fields.required("detectionProbability", "a number " + Allowed.PROBABILITY.words()
+                        + ", or a list of {rangeMetres, probability}")
+                .map(this::profile)
+                .orElseGet(() -> DetectionProfile.constant(Double.NaN));
+        double clutter = fields.number("clutterPerScan", COUNT);
+        double interval = fields.number("intervalSeconds", SECONDS);
+        double sweep = fields.number("sweepSeconds", SECONDS_OR_NONE, 0);
+        double leastInterval = fields.number("leastIntervalSeconds", SECONDS_OR_NONE, 0);
+        double disorder = fields.number("disorderSeconds", SECONDS_OR_NONE, 0);
+        double silent = fields.number("silentSeconds", SECONDS, DEFAULT_SILENT_SECONDS);
+        if (leastInterval > interval) {
+            faults.add(
+                    fields.at("leastIntervalSeconds"),
+                    Numbers.shortest(leastInterval),
+                    "must be at most intervalSeconds, " + Numbers.shortest(interval));
+        }
+        fields.end();
+        return new SensorSettings(
+                name, position, roams, reach, noise, profile, clutter, interval, sweep, leastInterval, disorder, silent);
+    }
+
+    private LatLon position(Node node) {
+        Fields fields = Fields.of(node, "latitude and longitude", faults);
+        LatLon position = new LatLon(
+                fields.number("latitude", Allowed.LATITUDE), fields.number("longitude", Allowed.LONGITUDE));
+        fields.end();
+        return position;
+    }
+
+    private PositionNoise noise(Fields fields) {
+        boolean directed = fields.has("alongSigmaMetres") || fields.has("acrossSigmaMetres");
+        if (directed && fields.has("sigmaMetres")) {
+            faults.add(
+                    fields.at("sigmaMetres"), "", "must be absent where alongSigmaMetres and acrossSigmaMetres are given");
+        }
+        if (!directed) {
+            fields.optional("alongSigmaMetres");
+            fields.optional("acrossSigmaMetres");
+            double sigma = fields.number("sigmaMetres", SIGMA);
+            return new PositionNoise(sigma, sigma);
+        }
+        fields.optional("sigmaMetres");
+        return new PositionNoise(fields.number("alongSigmaMetres", SIGMA), fields.number("acrossSigmaMetres", SIGMA));
+    }
+
+    private DetectionProfile profile(Node node) {
+        if (!(node instanceof Node.Sequence list)) {
+            return DetectionProfile.constant(Fields.number(node, Allowed.PROBABILITY, faults));
+        }
+        List<DetectionProfile.Point> points = new ArrayList<>();
+        double last = Double.NEGATIVE_INFINITY;
+        for (Node item : list.items()) {
+            Fields fields = Fields.of(item, "rangeMetres and probability", faults);
+            double range = fields.number("rangeMetres", RANGE);
+            double probability = fields.number("probability", Allowed.PROBABILITY);
+            fields.end();
+            if (range <= last) {
+                faults.add(
+                        fields.at("rangeMetres"),
+                        Numbers.shortest(range),
+                        "must be more than the range before it, " + Numbers.shortest(last));
+            }
+            last = Double.isNaN(range) ? last : range;
+            points.add(new DetectionProfile.Point(range, probability));
+        }
+        if (points.isEmpty()) {
+            faults.add(node.at(), "an empty list", "must have at least one {rangeMetres, probability}");
+            return DetectionProfile.constant(Double.NaN);
+        }
+        return new DetectionProfile(points);
+    }
+}
