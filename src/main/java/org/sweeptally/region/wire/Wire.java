@@ -12,7 +12,6 @@ import org.apache.avro.Schema;
 import org.apache.avro.io.BinaryEncoder;
 import org.apache.avro.io.DecoderFactory;
 import org.apache.avro.io.EncoderFactory;
-import org.apache.avro.specific.SpecificData;
 import org.apache.avro.specific.SpecificDatumReader;
 import org.apache.avro.specific.SpecificDatumWriter;
 import org.apache.avro.specific.SpecificRecordBase;
@@ -34,7 +33,7 @@ public final class Wire {
     private static final ClassValue<byte[]> HEADER = new ClassValue<>() {
         @Override
         protected byte[] computeValue(Class<?> type) {
-            long fingerprint = KnownSchemas.fingerprint(SpecificData.get().getSchema(type));
+            long fingerprint = KnownSchemas.fingerprint(OurClasses.DATA.getSchema(type));
             return ByteBuffer.allocate(HEADER_BYTES).order(ByteOrder.LITTLE_ENDIAN).put(MARK).putLong(fingerprint).array();
         }
     };
@@ -105,8 +104,8 @@ public final class Wire {
     public static <T extends SpecificRecordBase> T decodeBody(
             Schema writer, byte[] bytes, int from, int length, Class<T> type) {
         try {
-            SpecificDatumReader<T> reader = new SpecificDatumReader<>(type);
-            reader.setSchema(writer);
+            SpecificDatumReader<T> reader =
+                    new SpecificDatumReader<>(writer, OurClasses.DATA.getSchema(type), OurClasses.DATA);
             return type.cast(reader.read(null, DecoderFactory.get().binaryDecoder(bytes, from, length, null)));
         } catch (IOException | AvroRuntimeException e) {
             throw new IllegalStateException("a body that was found sound does not decode: " + e.getMessage(), e);
