@@ -3,14 +3,10 @@ package org.sweeptally.region.intake;
 import static org.assertj.core.api.Assertions.assertThat;
 
 import java.util.Arrays;
-import java.util.BitSet;
 import java.util.Optional;
 import java.util.Random;
 import org.junit.jupiter.api.Test;
-import org.sweeptally.event.Detection;
 import org.sweeptally.event.Part;
-import org.sweeptally.event.PartBody;
-import org.sweeptally.event.ReasonCount;
 import org.sweeptally.event.Reject;
 import org.sweeptally.region.text.RecordJson;
 import org.sweeptally.region.wire.Wire;
@@ -40,7 +36,7 @@ class PartDecoderFuzzTest {
             byte[] bytes = mutated(Wire.encode(IntakeFixture.random(random)), random);
             String name = "seed " + seed + ", case " + i;
             Intake intake = decoder.decode(bytes, Optional.empty());
-            nothingIsLost(intake, name);
+            Accounting.nothingIsLost(intake, name);
             passed += intake.body().isPresent() ? 1 : 0;
             intake.reject().ifPresent(reject -> {
                 assertThat(reject.getOriginal().array()).as(name).isEqualTo(bytes);
@@ -49,38 +45,6 @@ class PartDecoderFuzzTest {
             });
         }
         assertThat(passed).isBetween(1_000, 29_000);
-    }
-
-    /** Every detection that was sent is either used, or named in the reject, or went with its whole part. */
-    public static void nothingIsLost(Intake intake, String name) {
-        if (intake.body().isEmpty()) {
-            assertThat(intake.reject().orElseThrow().getWhole()).as(name).isTrue();
-            return;
-        }
-        PartBody body = intake.body().get();
-        BitSet accounted = new BitSet();
-        for (Detection detection : body.getPart().getDetections()) {
-            assertThat(accounted.get(detection.getIndex())).as(name).isFalse();
-            accounted.set(detection.getIndex());
-        }
-        if (intake.reject().isEmpty()) {
-            assertThat(body.getUnusable()).as(name).isFalse();
-        } else {
-            Reject reject = intake.reject().get();
-            assertThat(body.getUnusable()).as(name).isEqualTo(reject.getWhole());
-            for (ReasonCount reason : reject.getReasons()) {
-                assertThat(reason.getSentence()).as(name).isNotBlank();
-                for (int index : reason.getIndexes()) {
-                    assertThat(body.getPart().getDetections()).as(name).noneMatch(d -> d.getIndex() == index);
-                    accounted.set(index);
-                }
-            }
-            if (reject.getWhole()) {
-                accounted.set(0, body.getDetectionsSent());
-            }
-        }
-        assertThat(accounted.cardinality()).as(name).isEqualTo(body.getDetectionsSent());
-        assertThat(accounted.length()).as(name).isEqualTo(body.getDetectionsSent());
     }
 
     private static byte[] mutated(byte[] bytes, Random random) {
