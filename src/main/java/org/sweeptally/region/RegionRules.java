@@ -1,0 +1,123 @@
+package org.sweeptally.region;
+
+import java.util.Collections;
+import java.util.List;
+import java.util.NavigableMap;
+import java.util.TreeMap;
+import java.util.function.Function;
+import org.sweeptally.event.SettingsBody;
+import org.sweeptally.filter.FilterSettings;
+import org.sweeptally.site.BoundSettings;
+import org.sweeptally.site.RegionSettings;
+import org.sweeptally.site.SensorSettings;
+import org.sweeptally.site.Site;
+
+/** One revision of the settings, as one region needs it. */
+final class RegionRules {
+
+    private static final double SQUARE_METRES_PER_SQUARE_KILOMETRE = 1e6;
+    private static final double SECONDS_PER_HOUR = 3600;
+
+    private final SettingsBody body;
+    private final Site site;
+    private final RegionArea area;
+    private final NavigableMap<String, SensorSettings> sensors = new TreeMap<>();
+    private final long longestSweepMicros;
+
+    private RegionRules(SettingsBody body, Site site, RegionArea area) {
+        this.body = body;
+        this.site = site;
+        this.area = area;
+        long longest = 0;
+        for (SensorSettings sensor : site.sensors()) {
+            if (area.isTouchedBy(sensor)) {
+                sensors.put(sensor.name(), sensor);
+                longest = Math.max(longest, Micros.ofSeconds(sensor.sweepSeconds()));
+            }
+        }
+        this.longestSweepMicros = longest;
+    }
+
+    /**
+     * The rules of a region's first settings.
+     *
+     * @throws IllegalStateException if the settings do not know the region
+     */
+    static RegionRules first(SettingsBody body, String region, Function<String, Site> reader) {
+        Site site = reader.apply(body.getText());
+        return new RegionRules(body, site, new RegionArea(settingsOf(region, site, body)));
+    }
+
+    /**
+     * The rules of later settings of the same region.
+     *
+     * @throws IllegalStateException if the settings do not know the region, or have it elsewhere
+     */
+    RegionRules next(SettingsBody later, Function<String, Site> reader) {
+        Site laterSite = reader.apply(later.getText());
+        if (!area.isWhere(settingsOf(area.name(), laterSite, later))) {
+            throw new IllegalStateException("settings revision " + later.getRevision() + " change the polygon, the apron"
+                    + " or the unseen cells of region " + area.name() + ", which runs with those of revision "
+                    + body.getRevision() + ": a running region stays where it is; give the new one another name");
+        }
+        return new RegionRules(later, laterSite, area);
+    }
+
+    private static RegionSettings settingsOf(String region, Site site, SettingsBody body) {
+        return site.region(region)
+                .orElseThrow(() -> new IllegalStateException("settings revision " + body.getRevision()
+                        + " do not know region " + region + ", and its log holds them; they know "
+                        + site.regions().stream().map(RegionSettings::name).toList()));
+    }
+
+    SettingsBody body() {
+        return body;
+    }
+
+    int revision() {
+        return body.getRevision();
+    }
+
+    RegionArea area() {
+        return area;
+    }
+
+    BoundSettings bounds() {
+        return site.bounds();
+    }
+
+    /** The sensors that the region hears and waits for, by name. */
+    NavigableMap<String, SensorSettings> sensors() {
+        return Collections.unmodifiableNavigableMap(sensors);
+    }
+
+    /** The settings of a sensor that the region hears, or null. */
+    SensorSettings sensor(String name) {
+        return sensors.get(name);
+    }
+
+    /** How long after their scan time the scans that began under these rules may take effect. */
+    long longestSweepMicros() {
+        return longestSweepMicros;
+    }
+
+    FilterSettings filterSettings() {
+        BoundSettings bounds = site.bounds();
+        return new FilterSettings(
+                site.motion().accelerationNoise(),
+                site.motion().speedSigmaMetresPerSecond(),
+                site.lifetimeSeconds(),
+                site.unseen().birthsPerSquareKilometrePerHour() / SQUARE_METRES_PER_SQUARE_KILOMETRE / SECONDS_PER_HOUR,
+                site.unseen().outsidePerSquareKilometre() / SQUARE_METRES_PER_SQUARE_KILOMETRE,
+                site.unseen().initialPerSquareKilometre() / SQUARE_METRES_PER_SQUARE_KILOMETRE,
+                site.thresholds().confirming(),
+                site.thresholds().ending(),
+                FilterSettings.RECYCLING_BELOW,
+                bounds.gateSigmas(),
+                area.settings().unseenCellMetres(),
+                bounds.components(),
+                bounds.unseenTerms(),
+                bounds.exactAssociationSteps(),
+                bounds.propagationSweeps());
+    }
+}

@@ -1,0 +1,107 @@
+package org.sweeptally.region;
+
+import java.util.List;
+import java.util.Map;
+import java.util.TreeMap;
+import java.util.function.Function;
+import org.sweeptally.event.SettingsBody;
+import org.sweeptally.site.Site;
+
+/**
+ * The settings of a region by the time from which they hold: those in force, later ones that wait for their turn, and
+ * those before, as long as a scan that began under them may still come. A scan is ordered by the settings that hold at
+ * its own time, so that it does not matter whether it comes before or after the settings have taken effect.
+ */
+final class SettingsTimeline {
+
+    private final TreeMap<Long, RegionRules> byFrom = new TreeMap<>();
+    private long inForceFromMicros = Micros.BEFORE_ALL;
+
+    /** The first settings hold from the beginning. */
+    SettingsTimeline(RegionRules first) {
+        byFrom.put(Micros.BEFORE_ALL, first);
+    }
+
+    RegionRules inForce() {
+        return byFrom.get(inForceFromMicros);
+    }
+
+    /** The rules that hold at a time, as far as is known. */
+    RegionRules at(long micros) {
+        Map.Entry<Long, RegionRules> entry = byFrom.floorEntry(micros);
+        return entry == null ? byFrom.firstEntry().getValue() : entry.getValue();
+    }
+
+    /** Whether any settings, in force or waiting, know the sensor. */
+    boolean willKnow(String sensor) {
+        return byFrom.tailMap(inForceFromMicros).values().stream().anyMatch(rules -> rules.sensor(sensor) != null);
+    }
+
+    /** Whether the settings are among those held, so that they say nothing new. */
+    boolean holds(SettingsBody body) {
+        return byFrom.values().stream().anyMatch(rules -> rules.revision() == body.getRevision()
+                && rules.body().getText().equals(body.getText()));
+    }
+
+    /** The highest revision known, in force or waiting. */
+    RegionRules latest() {
+        return byFrom.lastEntry().getValue();
+    }
+
+    /**
+     * Adds settings with a revision above all others. They are the last word from their time on: what was to take
+     * effect then or later does not any more.
+     *
+     * @return times of the settings that were waiting and no longer are
+     */
+    List<Long> add(long fromMicros, RegionRules rules) {
+        List<Long> superseded = byFrom.tailMap(fromMicros, true).keySet().stream()
+                .filter(from -> from > inForceFromMicros)
+                .toList();
+        superseded.forEach(byFrom::remove);
+        byFrom.put(fromMicros, rules);
+        return superseded;
+    }
+
+    /** Lets the settings that hold from a time take effect. */
+    void takeEffect(long fromMicros) {
+        if (!byFrom.containsKey(fromMicros)) {
+            throw new IllegalStateException("no settings hold from " + Micros.text(fromMicros));
+        }
+        inForceFromMicros = fromMicros;
+    }
+
+    /** Forgets settings under which no scan can have begun that takes effect at the horizon or later. */
+    void forgetBefore(long horizonMicros) {
+        while (byFrom.firstKey() < inForceFromMicros) {
+            long until = byFrom.higherKey(byFrom.firstKey());
+            long lastEffect = Micros.plus(until, byFrom.firstEntry().getValue().longestSweepMicros());
+            if (lastEffect > horizonMicros) {
+                return;
+            }
+            byFrom.pollFirstEntry();
+        }
+    }
+
+    void write(StateWriter out) {
+        out.number(byFrom.size());
+        byFrom.forEach((from, rules) -> out.time(from).record(rules.body(), SettingsBody.getEncoder()));
+        out.time(inForceFromMicros);
+    }
+
+    static SettingsTimeline read(StateReader in, String region, Function<String, Site> reader) {
+        int size = in.number();
+        long from = in.time();
+        RegionRules rules = RegionRules.first(in.record(SettingsBody.getDecoder()), region, reader);
+        SettingsTimeline timeline = new SettingsTimeline(rules);
+        timeline.byFrom.clear();
+        timeline.byFrom.put(from, rules);
+        for (int i = 1; i < size; i++) {
+            from = in.time();
+            rules = rules.next(in.record(SettingsBody.getDecoder()), reader);
+            timeline.byFrom.put(from, rules);
+        }
+        timeline.takeEffect(in.time());
+        return timeline;
+    }
+}
