@@ -32,13 +32,13 @@ final class RawEntries {
 
     void write(StateWriter out) {
         out.number(entries.size());
-        entries.forEach(entry -> out.record(entry, LogEntry.getEncoder()));
+        entries.forEach(entry -> out.record(entry));
     }
 
     static RawEntries read(StateReader in) {
         RawEntries raw = new RawEntries();
         for (int left = in.number(); left > 0; left--) {
-            raw.add(in.record(LogEntry.getDecoder()));
+            raw.add(in.record(LogEntry.class));
         }
         return raw;
     }

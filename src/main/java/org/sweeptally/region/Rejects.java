@@ -1,18 +1,15 @@
 package org.sweeptally.region;
 
-import java.io.IOException;
-import java.io.UncheckedIOException;
 import java.nio.ByteBuffer;
-import java.security.MessageDigest;
-import java.security.NoSuchAlgorithmException;
 import java.util.List;
 import org.sweeptally.event.Detection;
-import org.sweeptally.event.Digest;
 import org.sweeptally.event.LogEntry;
 import org.sweeptally.event.Part;
 import org.sweeptally.event.ReasonCount;
 import org.sweeptally.event.Reject;
 import org.sweeptally.event.RejectReason;
+import org.sweeptally.region.wire.Digests;
+import org.sweeptally.region.wire.Wire;
 
 /** Makes the records of parts that could not be used. What they say of a part depends on nothing but what struck it. */
 final class Rejects {
@@ -50,8 +47,8 @@ final class Rejects {
             RejectReason reason,
             String words,
             List<Integer> indexes) {
-        byte[] original = encode(part);
-        boolean long_ = original.length > WHOLE_UP_TO_BYTES;
+        byte[] original = Wire.encode(part);
+        boolean cut = original.length > WHOLE_UP_TO_BYTES;
         String sentence = "part " + part.getPart() + " of scan " + Micros.text(part.getScanTimeMicros()) + " of sensor "
                 + part.getSensor() + " " + words;
         ReasonCount count = ReasonCount.newBuilder()
@@ -69,29 +66,10 @@ final class Rejects {
                 .setReasons(List.of(count))
                 .setSentence(sentence)
                 .setLengthBytes(original.length)
-                .setSha256(long_ ? new Digest(sha256(original)) : null)
-                .setSourcePartition(long_ ? entry.getSourcePartition() : null)
-                .setSourceOffset(long_ ? entry.getSourceOffset() : null)
-                .setOriginal(ByteBuffer.wrap(original, 0, long_ ? BEGINNING_BYTES : original.length))
+                .setSha256(cut ? Digests.sha256(original) : null)
+                .setSourcePartition(cut ? entry.getSourcePartition() : null)
+                .setSourceOffset(cut ? entry.getSourceOffset() : null)
+                .setOriginal(ByteBuffer.wrap(original, 0, cut ? BEGINNING_BYTES : original.length))
                 .build();
-    }
-
-    private static byte[] encode(Part part) {
-        try {
-            ByteBuffer encoded = Part.getEncoder().encode(part);
-            byte[] bytes = new byte[encoded.remaining()];
-            encoded.get(bytes);
-            return bytes;
-        } catch (IOException e) {
-            throw new UncheckedIOException(e);
-        }
-    }
-
-    private static byte[] sha256(byte[] bytes) {
-        try {
-            return MessageDigest.getInstance("SHA-256").digest(bytes);
-        } catch (NoSuchAlgorithmException e) {
-            throw new IllegalStateException("every Java platform has SHA-256", e);
-        }
     }
 }

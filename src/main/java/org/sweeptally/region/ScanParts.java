@@ -107,14 +107,14 @@ final class ScanParts {
 
     void write(StateWriter out) {
         out.text(sensor).time(scanTimeMicros).time(logTimeMicros).time(promiseMicros).number(parts.size());
-        parts.values().forEach(entry -> out.record(entry, LogEntry.getEncoder()));
+        parts.values().forEach(entry -> out.record(entry));
     }
 
     static ScanParts read(StateReader in) {
         ScanParts scan = new ScanParts(in.text(), in.time(), in.time(), in.time());
         int size = in.number();
         for (int i = 0; i < size; i++) {
-            LogEntry entry = in.record(LogEntry.getDecoder());
+            LogEntry entry = in.record(LogEntry.class);
             scan.add(entry, EntryBytes.of(entry));
         }
         return scan;

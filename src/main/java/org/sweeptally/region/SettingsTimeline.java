@@ -85,20 +85,20 @@ final class SettingsTimeline {
 
     void write(StateWriter out) {
         out.number(byFrom.size());
-        byFrom.forEach((from, rules) -> out.time(from).record(rules.body(), SettingsBody.getEncoder()));
+        byFrom.forEach((from, rules) -> out.time(from).record(rules.body()));
         out.time(inForceFromMicros);
     }
 
     static SettingsTimeline read(StateReader in, String region, Function<String, Site> reader) {
         int size = in.number();
         long from = in.time();
-        RegionRules rules = RegionRules.first(in.record(SettingsBody.getDecoder()), region, reader);
+        RegionRules rules = RegionRules.first(in.record(SettingsBody.class), region, reader);
         SettingsTimeline timeline = new SettingsTimeline(rules);
         timeline.byFrom.clear();
         timeline.byFrom.put(from, rules);
         for (int i = 1; i < size; i++) {
             from = in.time();
-            rules = rules.next(in.record(SettingsBody.getDecoder()), reader);
+            rules = rules.next(in.record(SettingsBody.class), reader);
             timeline.byFrom.put(from, rules);
         }
         timeline.takeEffect(in.time());

@@ -4,8 +4,8 @@ import java.io.ByteArrayInputStream;
 import java.io.DataInputStream;
 import java.io.IOException;
 import java.nio.charset.StandardCharsets;
-import org.apache.avro.AvroRuntimeException;
-import org.apache.avro.message.BinaryMessageDecoder;
+import org.apache.avro.specific.SpecificRecordBase;
+import org.sweeptally.region.wire.Wire;
 
 /** Reads what {@link StateWriter} wrote; bytes that it did not write are an {@link IllegalArgumentException}. */
 final class StateReader {
@@ -24,7 +24,7 @@ final class StateReader {
     <T> T piece(Piece<T> piece) {
         try {
             return piece.read(in);
-        } catch (IOException | AvroRuntimeException e) {
+        } catch (IOException e) {
             throw new IllegalArgumentException("these bytes are no whole snapshot of a region: " + e, e);
         }
     }
@@ -59,9 +59,8 @@ final class StateReader {
         });
     }
 
-    <T> T record(BinaryMessageDecoder<T> decoder) {
-        byte[] encoded = bytes();
-        return piece(i -> decoder.decode(encoded));
+    <T extends SpecificRecordBase> T record(Class<T> type) {
+        return Wire.decode(bytes(), type);
     }
 
     /** Says that all must have been read. */

@@ -4,9 +4,9 @@ import java.io.ByteArrayOutputStream;
 import java.io.DataOutputStream;
 import java.io.IOException;
 import java.io.UncheckedIOException;
-import java.nio.ByteBuffer;
 import java.nio.charset.StandardCharsets;
-import org.apache.avro.message.BinaryMessageEncoder;
+import org.apache.avro.specific.SpecificRecordBase;
+import org.sweeptally.region.wire.Wire;
 
 /** Writes a region's state to bytes: numbers as their bits, texts and records with their lengths first. */
 final class StateWriter {
@@ -55,15 +55,8 @@ final class StateWriter {
     }
 
     /** A record in Avro's single-object encoding, which names its schema. */
-    <T> StateWriter record(T content, BinaryMessageEncoder<T> encoder) {
-        try {
-            ByteBuffer encoded = encoder.encode(content);
-            byte[] copy = new byte[encoded.remaining()];
-            encoded.get(copy);
-            return bytes(copy);
-        } catch (IOException e) {
-            throw new UncheckedIOException(e);
-        }
+    StateWriter record(SpecificRecordBase content) {
+        return bytes(Wire.encode(content));
     }
 
     byte[] toBytes() {

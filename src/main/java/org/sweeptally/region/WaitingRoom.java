@@ -137,7 +137,7 @@ final class WaitingRoom {
             if (waiting.scan() != null) {
                 waiting.scan().write(out);
             } else {
-                out.record(waiting.entry(), LogEntry.getEncoder());
+                out.record(waiting.entry());
             }
         });
     }
@@ -147,7 +147,7 @@ final class WaitingRoom {
         for (int left = in.number(); left > 0; left--) {
             Place place = new Place(in.time(), Kind.values()[in.number()], in.text(), in.text(), in.time());
             boolean scan = in.flag();
-            room.add(place, scan ? Waiting.of(ScanParts.read(in)) : Waiting.of(in.record(LogEntry.getDecoder())));
+            room.add(place, scan ? Waiting.of(ScanParts.read(in)) : Waiting.of(in.record(LogEntry.class)));
         }
         return room;
     }
