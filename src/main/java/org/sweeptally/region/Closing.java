@@ -7,7 +7,8 @@ enum Closing {
     BY_PROMISE(true, "its sensor promised that no more of it would come"),
     BY_END(true, "the input ended"),
     BY_SILENCE(false, "its sensor was passed over before the scan was closed"),
-    BY_RESTART(false, "its sensor started again before the scan was closed");
+    BY_RESTART(false, "its sensor started again before the scan was closed"),
+    BY_SETTINGS(false, "settings took its sensor away before the scan was closed");
 
     private final boolean whole;
     private final String words;

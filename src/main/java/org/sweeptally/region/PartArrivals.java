@@ -23,12 +23,12 @@ final class PartArrivals {
         Part part = body.getPart();
         SensorSettings settings = state.timeline.at(part.getScanTimeMicros()).sensor(part.getSensor());
         if (settings == null) {
-            unknownSensor(entry, part.getScanTimeMicros(), out);
+            takenAway(entry, part.getScanTimeMicros(), out);
             return;
         }
         long logTime = ScanParts.logTimeMicros(part.getScanTimeMicros(), settings);
         if (state.timeline.at(logTime).sensor(part.getSensor()) == null) {
-            unknownSensor(entry, logTime, out);
+            takenAway(entry, logTime, out);
             return;
         }
         SensorOrder order = state.sensors.computeIfAbsent(
@@ -74,6 +74,18 @@ final class PartArrivals {
         };
     }
 
+    /** A part of a sensor that the settings of its time do not know; if earlier ones did, the sensor has gone on. */
+    private void takenAway(LogEntry entry, long whenMicros, MachineOutputs out) {
+        unknownSensor(entry, whenMicros, out);
+        Part part = ScanParts.partOf(entry);
+        SensorSettings before = state.timeline.lastBefore(part.getScanTimeMicros(), part.getSensor());
+        SensorOrder order = state.sensors.get(part.getSensor());
+        if (before != null && order != null) {
+            order.watch().heard();
+            closed(order.goneOn(part.getScanTimeMicros(), before), out);
+        }
+    }
+
     /** A part of a sensor that the region does not hear at a time, by the settings that hold then. */
     void unknownSensor(LogEntry entry, long whenMicros, MachineOutputs out) {
         state.counters.add(RegionCounters.Name.UNKNOWN_SENSOR);
@@ -116,20 +128,20 @@ final class PartArrivals {
         }
     }
 
-    /** The settings in force have changed: what is open of sensors that they no longer know cannot take effect. */
-    void forgetUnknownSensors(MachineOutputs out) {
+    /**
+     * The settings in force have changed: what is open of sensors that they no longer know cannot take effect. Their order
+     * stays, since what it says of parts that come too late must not depend on when they come.
+     */
+    void dropUnknownSensors(MachineOutputs out) {
         for (SensorOrder order : List.copyOf(state.sensors.values())) {
             if (state.rules().sensor(order.sensor()) != null) {
                 continue;
             }
             for (ScanParts scan : List.copyOf(order.open().values())) {
                 if (state.timeline.at(scan.logTimeMicros()).sensor(order.sensor()) == null) {
-                    order.open().remove(scan.scanTimeMicros());
+                    order.drop(scan);
                     scan.entries().forEach(entry -> unknownSensor(entry, scan.logTimeMicros(), out));
                 }
-            }
-            if (!state.timeline.willKnow(order.sensor())) {
-                state.sensors.remove(order.sensor());
             }
         }
     }

@@ -165,7 +165,7 @@ public final class RegionMachine {
         state.counters.add(RegionCounters.Name.SETTINGS);
         state.timeline.takeEffect(fromMicros);
         state.effect.settings(state.rules());
-        arrivals.forgetUnknownSensors(out);
+        arrivals.dropUnknownSensors(out);
         state.meetSensors();
     }
 

@@ -50,10 +50,12 @@ final class RegionState {
 
     /** From now on the region waits for the sensors that the settings in force know. */
     void meetSensors() {
+        List<SensorOrder> before = heard;
         for (String sensor : rules().sensors().keySet()) {
             sensors.computeIfAbsent(sensor, name -> new SensorOrder(name, horizonMicros));
         }
         listHeard();
+        heard.stream().filter(sensor -> !before.contains(sensor)).forEach(sensor -> sensor.join(horizonMicros));
     }
 
     private void listHeard() {

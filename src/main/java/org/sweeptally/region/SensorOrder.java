@@ -133,7 +133,7 @@ final class SensorOrder {
     }
 
     private String passedSentence(long logTimeMicros) {
-        return "comes after the picture had gone on without its sensor, which had been silent: it takes effect at "
+        return "comes after the picture had gone on without its sensor, which was passed over or not known: it takes effect at "
                 + Micros.text(logTimeMicros) + ", and the picture had come to " + Micros.text(passedUntilMicros);
     }
 
@@ -189,6 +189,19 @@ final class SensorOrder {
         }
     }
 
+    /**
+     * Takes note of a part that cannot be used, since the settings of its time no longer know the sensor: the sensor has
+     * gone on to it all the same, or the region would wait for ever for what it sent before.
+     */
+    List<Closed> goneOn(long scanTimeMicros, SensorSettings settings) {
+        List<Closed> closed = new ArrayList<>();
+        long disorderMicros = Micros.ofSeconds(settings.disorderSeconds());
+        closeEarlier(scanTimeMicros, disorderMicros, closed);
+        promiseAtLeast(Micros.plus(ScanParts.logTimeMicros(scanTimeMicros, settings), -disorderMicros));
+        closePromised(closed);
+        return closed;
+    }
+
     private void closePromised(List<Closed> closed) {
         for (ScanParts scan : List.copyOf(open.values())) {
             if (scan.logTimeMicros() < promiseMicros) {
@@ -237,6 +250,17 @@ final class SensorOrder {
         List<Closed> closed = new ArrayList<>();
         closeAll(Closing.BY_SILENCE, closed);
         return closed;
+    }
+
+    /** An open scan that can never take effect, by the settings. */
+    void drop(ScanParts scan) {
+        close(scan, Closing.BY_SETTINGS, new ArrayList<>());
+    }
+
+    /** From now on the region waits for the sensor; what the picture has passed before stays passed. */
+    void join(long horizonMicros) {
+        passedUntilMicros = Math.max(passedUntilMicros, horizonMicros);
+        watch.heard();
     }
 
     /** The input has ended: what is open is whole, and nothing more will come. */

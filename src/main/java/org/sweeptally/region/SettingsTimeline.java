@@ -5,6 +5,7 @@ import java.util.Map;
 import java.util.TreeMap;
 import java.util.function.Function;
 import org.sweeptally.event.SettingsBody;
+import org.sweeptally.site.SensorSettings;
 import org.sweeptally.site.Site;
 
 /**
@@ -13,6 +14,8 @@ import org.sweeptally.site.Site;
  * its own time, so that it does not matter whether it comes before or after the settings have taken effect.
  */
 final class SettingsTimeline {
+
+    private static final int PAST_REVISIONS = 8;
 
     private final TreeMap<Long, RegionRules> byFrom = new TreeMap<>();
     private long inForceFromMicros = Micros.BEFORE_ALL;
@@ -32,9 +35,14 @@ final class SettingsTimeline {
         return entry == null ? byFrom.firstEntry().getValue() : entry.getValue();
     }
 
-    /** Whether any settings, in force or waiting, know the sensor. */
-    boolean willKnow(String sensor) {
-        return byFrom.tailMap(inForceFromMicros).values().stream().anyMatch(rules -> rules.sensor(sensor) != null);
+    /** The last settings of a sensor that hold at a time or held before, as far as is known; null if none do. */
+    SensorSettings lastBefore(long micros, String sensor) {
+        for (RegionRules rules : byFrom.headMap(micros, true).descendingMap().values()) {
+            if (rules.sensor(sensor) != null) {
+                return rules.sensor(sensor);
+            }
+        }
+        return null;
     }
 
     /** Whether the settings are among those held, so that they say nothing new. */
@@ -71,9 +79,12 @@ final class SettingsTimeline {
         inForceFromMicros = fromMicros;
     }
 
-    /** Forgets settings under which no scan can have begun that takes effect at the horizon or later. */
+    /**
+     * Forgets settings under which no scan can have begun that takes effect at the horizon or later. The last few stay in
+     * any case, so that what is said of a part that comes much too late does not depend on when it comes.
+     */
     void forgetBefore(long horizonMicros) {
-        while (byFrom.firstKey() < inForceFromMicros) {
+        while (byFrom.headMap(inForceFromMicros).size() > PAST_REVISIONS) {
             long until = byFrom.higherKey(byFrom.firstKey());
             long lastEffect = Micros.plus(until, byFrom.firstEntry().getValue().longestSweepMicros());
             if (lastEffect > horizonMicros) {

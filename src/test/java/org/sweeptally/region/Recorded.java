@@ -3,7 +3,6 @@ package org.sweeptally.region;
 import java.io.ByteArrayOutputStream;
 import java.nio.ByteBuffer;
 import java.util.ArrayList;
-import java.util.HexFormat;
 import java.util.List;
 import java.util.TreeMap;
 import java.util.TreeSet;
@@ -96,7 +95,7 @@ final class Recorded implements MachineOutputs {
     /** Rejects as a set. */
     TreeSet<String> rejectSet() {
         TreeSet<String> set = new TreeSet<>();
-        rejects.forEach(reject -> set.add(HexFormat.of().formatHex(bytes(reject))));
+        rejects.forEach(reject -> set.add(reject.toString()));
         return set;
     }
 
