@@ -2,7 +2,6 @@ package org.sweeptally.geo;
 
 import java.util.ArrayList;
 import java.util.Collections;
-import java.util.Collections;
 import java.util.List;
 
 /**
