@@ -110,6 +110,7 @@ public final class Faults {
         if (others < 1) {
             return group.sentence();
         }
-        return group.sentence() + " (and " + others + (others == 1 ? " more detection" : " more detections") + " likewise)";
+        return group.sentence() + " (and " + others + (others == 1 ? " more detection" : " more detections")
+                + " likewise)";
     }
 }

@@ -66,7 +66,7 @@ final class FieldCheck {
     static boolean wellFormed(String value) {
         for (int i = 0; i < value.length(); i++) {
             char c = value.charAt(i);
-            if (Character.isHighSurrogate(c) && i + 1 < value.length() && Character.isLowSurrogate(value.charAt(i + 1))) {
+            if (i + 1 < value.length() && Character.isSurrogatePair(c, value.charAt(i + 1))) {
                 i++;
             } else if (Character.isSurrogate(c) || c == REPLACEMENT) {
                 return false;

@@ -16,10 +16,10 @@ import org.sweeptally.site.Site;
 /**
  * Judges the values of parts that could be read, whatever they were read from.
  *
- * <p>A fault of a detection costs that detection. A fault of the part itself costs the whole part; as long as its sensor
- * is known and its scan time can be, the part is passed on nevertheless, without detections and without the fields at
- * fault, and marked unusable: it still closes its scan, and the scan, of which something is missing, counts no miss.
- * The same holds for a part of whose detections none could be used.
+ * <p>A fault of a detection costs that detection. A fault of the part itself costs the whole part; as long as its
+ * sensor is known and its scan time can be, the part is passed on nevertheless, without detections and without the
+ * fields at fault, and marked unusable: it still closes its scan, and the scan, of which something is missing, counts
+ * no miss. The same holds for a part of whose detections none could be used.
  */
 public final class PartCheck {
 
@@ -109,7 +109,8 @@ public final class PartCheck {
         GeoPoint position = part.getSensorPosition();
         if (position == null) {
             if (sensor.position().isEmpty() && (part.getClosesScan() || detectionsSent > 0)) {
-                faults.part(RejectReason.NO_SENSOR_POSITION, "sensorPosition", () -> "sensorPosition is missing: sensor "
+                faults.part(RejectReason.NO_SENSOR_POSITION, "sensorPosition",
+                        () -> "sensorPosition is missing: sensor "
                         + sensor.name() + " has no fixed position in the site file, so every part says where it is");
             }
             return;
@@ -125,8 +126,9 @@ public final class PartCheck {
 
     private void amount(int detectionsSent, Faults faults) {
         if (detectionsSent > mostDetections) {
-            faults.part(RejectReason.TOO_LARGE, "detections", () -> "detections has " + detectionsSent + " entries: at most "
-                    + mostDetections + " are allowed in one part (detectionsPerPart of the site file)");
+            faults.part(RejectReason.TOO_LARGE, "detections", () -> "detections has " + detectionsSent
+                    + " entries: at most " + mostDetections
+                    + " are allowed in one part (detectionsPerPart of the site file)");
         }
     }
 

@@ -16,8 +16,8 @@ import org.sweeptally.region.wire.Wire;
 import org.sweeptally.site.Site;
 
 /**
- * From the bytes of a message to a part that can be used, a reject, or both; no bytes make it fail. Memory is bounded by
- * the length of the message, whatever counts and lengths it claims, and a part with more detections than the
+ * From the bytes of a message to a part that can be used, a reject, or both; no bytes make it fail. Memory is bounded
+ * by the length of the message, whatever counts and lengths it claims, and a part with more detections than the
  * site allows is counted but not built.
  *
  * <p>The index of a detection is its place in the part as it was sent, whatever the sender put there. The whole part's

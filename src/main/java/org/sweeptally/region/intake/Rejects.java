@@ -17,7 +17,12 @@ public final class Rejects {
 
     /** Something that broke off after these could be read; see {@link PartReading} for what stands for unread ones. */
     public static Reject unreadable(
-            RejectReason reason, String sentence, Original original, String sensorOrNull, long scanTimeMicros, int part) {
+            RejectReason reason,
+            String sentence,
+            Original original,
+            String sensorOrNull,
+            long scanTimeMicros,
+            int part) {
         Reject.Builder reject = Reject.newBuilder();
         named(reject, sensorOrNull, scanTimeMicros, part);
         original.into(reject);
@@ -52,7 +57,9 @@ public final class Rejects {
 
     private static String who(Reject.Builder reject) {
         return (reject.getPart() == null ? "A part" : "Part " + reject.getPart())
-                + (reject.getScanTimeMicros() == null ? "" : " of the scan of " + Times.text(reject.getScanTimeMicros()))
+                + (reject.getScanTimeMicros() == null
+                        ? ""
+                        : " of the scan of " + Times.text(reject.getScanTimeMicros()))
                 + (reject.getSensor() == null ? "" : " from sensor " + Shown.text(reject.getSensor()));
     }
 }

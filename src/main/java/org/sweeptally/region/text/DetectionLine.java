@@ -21,7 +21,8 @@ final class DetectionLine {
     private static final List<String> NOISE = List.of("first", "cross", "second");
 
     private static final String WAYS =
-            "a detection gives latitude and longitude, or eastMetres and northMetres, or rangeMetres and azimuthDegrees";
+            "a detection gives latitude and longitude, or eastMetres and northMetres, or rangeMetres and"
+                    + " azimuthDegrees";
 
     private final LineFields fields;
     private final Faults faults;
@@ -103,7 +104,8 @@ final class DetectionLine {
     private Noise isotropic(double sigmaMetres, Object measurement) {
         if (measurement instanceof PolarFix) {
             faults.detection(index, RejectReason.BAD_FIELD, "sigmaMetres",
-                    () -> "sigmaMetres is given with a range and an azimuth: noise with first, cross and second is expected");
+                    () -> "sigmaMetres is given with a range and an azimuth: noise with first, cross and second"
+                            + " is expected");
         } else if (!(sigmaMetres >= 0.001 && sigmaMetres <= 1_000_000)) {
             faults.detection(index, RejectReason.BAD_FIELD, "sigmaMetres", () -> "sigmaMetres is "
                     + Shown.number(sigmaMetres)

@@ -42,7 +42,10 @@ final class JsonTree {
 
     record Items(List<Object> values) {}
 
-    /** @param text as it was written; @param value nearest double, or NaN and the infinities by their names */
+    /**
+     * @param text  as it was written
+     * @param value the nearest double; not finite where the text is NaN, an infinity, or too large
+     */
     record Number(String text, double value) {}
 
     /** Stands for a value with more than {@link #MOST_VALUES} values inside, which nobody's part has. */

@@ -70,7 +70,9 @@ final class LineFields {
         if (value == null) {
             return null;
         }
-        return value instanceof JsonTree.Number number ? (Double) number.value() : wrong(name, value, "a number is expected");
+        return value instanceof JsonTree.Number number
+                ? (Double) number.value()
+                : wrong(name, value, "a number is expected");
     }
 
     /** A whole number; 17.0 is one. */

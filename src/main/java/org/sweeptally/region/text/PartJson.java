@@ -47,7 +47,6 @@ public final class PartJson {
     private static final JsonFactory FACTORY = JsonFactory.builder()
             .enable(JsonReadFeature.ALLOW_NON_NUMERIC_NUMBERS) // so that NaN is a bad value and not a broken line
             .disable(JsonFactory.Feature.INTERN_FIELD_NAMES) // names come from strangers
-            .disable(JsonFactory.Feature.CANONICALIZE_FIELD_NAMES)
             .disable(JsonFactory.Feature.FAIL_ON_SYMBOL_HASH_OVERFLOW)
             .disable(JsonFactory.Feature.CHARSET_DETECTION) // always UTF-8
             .streamReadConstraints(StreamReadConstraints.builder()

@@ -15,8 +15,8 @@ import org.sweeptally.site.Site;
 
 /**
  * Parts from newline-delimited JSON, one line after the other. A line longer than {@link #LONGEST_LINE_BYTES} is
- * rejected without being held: its first bytes, its length and its digest are kept. Lines of nothing but white space are
- * passed over. Not for several threads.
+ * rejected without being held: its first bytes, its length and its digest are kept. Lines of nothing but white space
+ * are passed over. Not for several threads.
  */
 public final class PartLines {
 
@@ -71,7 +71,10 @@ public final class PartLines {
         return Optional.empty();
     }
 
-    /** @param bytes the line, or the beginning of one that is too long; @param digest of one that is too long, else null */
+    /**
+     * @param bytes  the line, or the beginning of one that is too long
+     * @param digest of one that is too long, else null
+     */
     private record Line(byte[] bytes, long lengthBytes, Digest digest) {
         boolean tooLong() {
             return digest != null;

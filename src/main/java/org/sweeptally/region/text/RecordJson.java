@@ -15,10 +15,10 @@ import org.apache.avro.specific.SpecificRecordBase;
 import org.sweeptally.region.intake.Times;
 
 /**
- * Our records (tracks, births, ends, counts, rejects and any other) as lines of JSON for people and scripts. Fields have
- * the names and the order of the schema, and null where there is nothing, with these exceptions: {@code xMicros} becomes
- * {@code x} with the time as text; a digest is hexadecimal; bytes {@code x} become {@code xText} where they are UTF-8,
- * else {@code xBase64}.
+ * Our records (tracks, births, ends, counts, rejects and any other) as lines of JSON for people and scripts. Fields
+ * have the names and the order of the schema, and null where there is nothing, with these exceptions: {@code xMicros}
+ * becomes {@code x} with the time as text; a digest is hexadecimal; bytes {@code x} become {@code xText} where they
+ * are UTF-8, else {@code xBase64}.
  */
 public final class RecordJson {
 

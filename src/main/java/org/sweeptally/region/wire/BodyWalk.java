@@ -6,8 +6,8 @@ import org.apache.avro.Schema;
 /**
  * Walks over the Avro binary body of a record without building anything, and finds every way in which the bytes are
  * not what the schema says: lengths beyond the end, array counts that the bytes left cannot hold, branches and symbols
- * that do not exist, booleans that are neither 0 nor 1, numbers that do not end, bytes left over. A body that passed can
- * be decoded by Avro's own decoder in memory proportional to its length; one that did not was never decoded.
+ * that do not exist, booleans that are neither 0 nor 1, numbers that do not end, bytes left over. A body that passed
+ * can be decoded by Avro's own decoder in memory proportional to its length; one that did not was never decoded.
  *
  * <p>Layout: Apache Avro 1.12 specification, "Binary Encoding". Cost: one pass, no allocation but the result.
  */
@@ -61,7 +61,8 @@ public final class BodyWalk {
                 items[read] = value(fields.get(read).schema());
             }
             if (at < bytes.length) {
-                return new Found(start, items, read, (bytes.length - at) + " bytes are left over after the record's end at byte "
+                return new Found(start, items, read,
+                        (bytes.length - at) + " bytes are left over after the record's end at byte "
                         + (at - from) + " of its body");
             }
             return new Found(start, items, read, null);

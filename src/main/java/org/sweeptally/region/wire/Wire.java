@@ -34,7 +34,8 @@ public final class Wire {
         @Override
         protected byte[] computeValue(Class<?> type) {
             long fingerprint = KnownSchemas.fingerprint(OurClasses.DATA.getSchema(type));
-            return ByteBuffer.allocate(HEADER_BYTES).order(ByteOrder.LITTLE_ENDIAN).put(MARK).putLong(fingerprint).array();
+            ByteBuffer header = ByteBuffer.allocate(HEADER_BYTES).order(ByteOrder.LITTLE_ENDIAN);
+            return header.put(MARK).putLong(fingerprint).array();
         }
     };
 

@@ -44,7 +44,8 @@ public final class IntakeFixture {
                 List.of(sensor("north-shore", Optional.of(new LatLon(53.9, 8.1)), SWEEP_SECONDS),
                         sensor("ferry", Optional.empty(), 0)),
                 List.of(new RegionSettings("outer", new GeoPolygon(
-                        List.of(new LatLon(53.8, 8.0), new LatLon(53.8, 8.3), new LatLon(54.0, 8.3), new LatLon(54.0, 8.0)),
+                        List.of(new LatLon(53.8, 8.0), new LatLon(53.8, 8.3), new LatLon(54.0, 8.3),
+                                new LatLon(54.0, 8.0)),
                         List.of()), 500, 200)),
                 new MotionSettings(0.05, 6, 30), 600, new UnseenSettings(1, 1, 1), new ThresholdSettings(0.9, 0.1),
                 new BoundSettings(4, 1000, 1000, 100_000, 200, MOST_DETECTIONS, 64 << 20, 60, 100), false);
@@ -111,7 +112,8 @@ public final class IntakeFixture {
     private static Coverage coverage(Random random) {
         boolean sector = random.nextBoolean();
         return new Coverage(maybe(random, random.nextDouble() * 100), maybe(random, 100 + random.nextDouble() * 100),
-                sector ? (Double) (random.nextDouble() * 360) : null, sector ? (Double) (random.nextDouble() * 360) : null,
+                sector ? (Double) (random.nextDouble() * 360) : null,
+                        sector ? (Double) (random.nextDouble() * 360) : null,
                 random.nextBoolean() ? null : List.of(
                         new GeoPoint(53.9, 8.1, null), new GeoPoint(53.9, 8.2, 3.0), new GeoPoint(54.0, 8.2, null)));
     }

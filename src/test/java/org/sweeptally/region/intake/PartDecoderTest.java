@@ -100,7 +100,8 @@ class PartDecoderTest {
         Part part = IntakeFixture.part(0);
         byte[] bytes = Wire.encode(part);
         byte[] hostile = Arrays.copyOf(bytes, bytes.length + 4);
-        System.arraycopy(new byte[] {(byte) 0xFE, (byte) 0xFF, (byte) 0xFF, (byte) 0xFF, 0x0F}, 0, hostile, bytes.length - 1, 5);
+        System.arraycopy(new byte[] {(byte) 0xFE, (byte) 0xFF, (byte) 0xFF, (byte) 0xFF, 0x0F}, 0, hostile,
+                bytes.length - 1, 5);
         assertWholly(decode(hostile), RejectReason.NOT_A_PART,
                 "an array says that 2147483647 items follow, but only 0 bytes do");
     }
@@ -152,7 +153,8 @@ class PartDecoderTest {
         assertThat(reject.getRegion()).isNull();
         assertThat(reject.getReasons()).hasSize(1);
         assertThat(reason(intake)).isEqualTo(new ReasonCount(RejectReason.BAD_FIELD, "latitude", 2, List.of(1, 3),
-                "detection 1: latitude is 91.0: degrees north from -90 to 90 are allowed (and 1 more detection likewise)"));
+                "detection 1: latitude is 91.0: degrees north from -90 to 90 are allowed (and 1 more detection"
+                        + " likewise)"));
         assertThat(reject.getSentence()).isEqualTo("Part 3 of the scan of 2031-05-01T04:00:42.500000Z from sensor"
                 + " \"north-shore\": 2 of 5 detections were not used: " + reason(intake).getSentence());
     }
@@ -203,7 +205,8 @@ class PartDecoderTest {
         part.setSensor("ferry");
         Intake intake = decode(part);
         assertThat(reason(intake).getReason()).isEqualTo(RejectReason.NO_SENSOR_POSITION);
-        assertThat(reason(intake).getSentence()).isEqualTo("sensorPosition is missing: sensor ferry has no fixed position"
+        assertThat(reason(intake).getSentence()).isEqualTo("sensorPosition is missing: sensor ferry has no fixed"
+                + " position"
                 + " in the site file, so every part says where it is");
         assertThat(intake.body().orElseThrow().getUnusable()).isTrue();
         part.setSensorPosition(new GeoPoint(53.9, 8.1, null));
@@ -223,7 +226,8 @@ class PartDecoderTest {
     void whateverIsNotANumberIsABadField() {
         double[] bad = {Double.NaN, Double.POSITIVE_INFINITY, Double.NEGATIVE_INFINITY};
         for (double x : bad) {
-            assertDetection(d -> d.setMeasurement(new GeodeticFix(x, 8.0)), "latitude", "latitude is " + Shown.number(x));
+            assertDetection(d -> d.setMeasurement(new GeodeticFix(x, 8.0)), "latitude",
+                    "latitude is " + Shown.number(x));
             assertDetection(d -> d.setMeasurement(new GeodeticFix(8.0, x)), "longitude", "longitude is ");
             assertDetection(d -> d.setMeasurement(new OffsetFix(x, 8.0)), "eastMetres", "eastMetres is ");
             assertDetection(d -> d.setMeasurement(new OffsetFix(8.0, x)), "northMetres", "northMetres is ");
@@ -235,14 +239,18 @@ class PartDecoderTest {
             assertPart(p -> p.setSensorHeadingDegrees(x), "sensorHeadingDegrees", "sensorHeadingDegrees is ");
             assertPart(p -> p.setSensorEastMetresPerSecond(x), "sensorEastMetresPerSecond", "a finite number");
             assertPart(p -> p.setSensorNorthMetresPerSecond(x), "sensorNorthMetresPerSecond", "a finite number");
-            assertPart(p -> p.setSensorPosition(new GeoPoint(x, 8.0, null)), "sensorPosition.latitude", "from -90 to 90");
+            assertPart(p -> p.setSensorPosition(new GeoPoint(x, 8.0, null)), "sensorPosition.latitude",
+                    "from -90 to 90");
             assertPart(p -> p.setSensorPosition(new GeoPoint(8.0, x, null)), "sensorPosition.longitude", "from -180");
-            assertPart(p -> p.setSensorPosition(new GeoPoint(8.0, 8.0, x)), "sensorPosition.heightMetres", "a finite number");
+            assertPart(p -> p.setSensorPosition(new GeoPoint(8.0, 8.0, x)), "sensorPosition.heightMetres",
+                    "a finite number");
             assertPart(p -> p.setCoverage(new Coverage(x, null, null, null, null)), "coverage.fromMetres", " is ");
             assertPart(p -> p.setCoverage(new Coverage(null, x, null, null, null)), "coverage.toMetres", " is ");
-            assertPart(p -> p.setCoverage(new Coverage(null, null, x, 1.0, null)), "coverage.fromAzimuthDegrees", " is ");
+            assertPart(p -> p.setCoverage(new Coverage(null, null, x, 1.0, null)), "coverage.fromAzimuthDegrees",
+                    " is ");
             assertPart(p -> p.setCoverage(new Coverage(null, null, 1.0, x, null)), "coverage.toAzimuthDegrees", " is ");
-            assertPart(p -> p.setCoverage(area(new GeoPoint(1.0, 1.0, null), new GeoPoint(x, 2.0, null), new GeoPoint(2.0, 1.0, null))),
+            assertPart(p -> p.setCoverage(area(new GeoPoint(1.0, 1.0, null), new GeoPoint(x, 2.0, null),
+                    new GeoPoint(2.0, 1.0, null))),
                     "coverage.area[1].latitude", "coverage.area[1].latitude is ");
         }
     }
@@ -272,7 +280,8 @@ class PartDecoderTest {
         assertThat(decode(with(d -> d.setTimeMicros(SCAN_TIME))).reject()).isEmpty();
         assertThat(decode(with(d -> d.setTimeMicros(end))).reject()).isEmpty();
         assertDetection(d -> d.setTimeMicros(SCAN_TIME - 1), "timeMicros", "timeMicros is 2031-05-01T04:00:42.499999Z");
-        assertDetection(d -> d.setTimeMicros(end + 1), "timeMicros", "timeMicros is 2031-05-01T04:00:45.000001Z: the look"
+        assertDetection(d -> d.setTimeMicros(end + 1), "timeMicros",
+                "timeMicros is 2031-05-01T04:00:45.000001Z: the look"
                 + " lasts from 2031-05-01T04:00:42.500000Z to 2031-05-01T04:00:45.000000Z (sweepSeconds of sensor"
                 + " north-shore is 2.5)");
         assertDetection(d -> d.setTimeMicros(Long.MIN_VALUE), "timeMicros", Times.ALLOWED);
@@ -281,7 +290,8 @@ class PartDecoderTest {
     @Test
     void rangeAndBearingFromAPositionSensorIsTheWrongMeasurement() {
         Intake intake = decode(with(d -> d.setMeasurement(new PolarFix(100.0, 20.0, null))));
-        assertThat(reason(intake)).isEqualTo(new ReasonCount(RejectReason.WRONG_MEASUREMENT, "measurement", 1, List.of(0),
+        assertThat(reason(intake)).isEqualTo(new ReasonCount(RejectReason.WRONG_MEASUREMENT, "measurement", 1,
+                List.of(0),
                 "detection 0: sensor north-shore measures positions: a detection gives latitude and longitude,"
                         + " or eastMetres and northMetres"));
         assertThat(intake.body().orElseThrow().getPart().getDetections()).hasSize(1);
@@ -296,7 +306,8 @@ class PartDecoderTest {
         bytes[id] = (byte) 0xFF;
         Intake intake = decode(bytes);
         assertThat(reason(intake).getField()).isEqualTo("id");
-        assertThat(intake.body().orElseThrow().getPart().getDetections()).extracting(Detection::getIndex).containsExactly(0);
+        assertThat(intake.body().orElseThrow().getPart().getDetections())
+                .extracting(Detection::getIndex).containsExactly(0);
     }
 
     @Test
@@ -309,10 +320,14 @@ class PartDecoderTest {
         assertPart(p -> p.setCoverage(new Coverage(-1.0, null, null, null, null)), "coverage.fromMetres", "is -1.0");
         assertPart(p -> p.setCoverage(new Coverage(null, null, 5.0, null, null)), "coverage.toAzimuthDegrees",
                 "coverage.toAzimuthDegrees is missing: a sector is given by its start and its end");
-        assertPart(p -> p.setCoverage(new Coverage(null, null, null, 5.0, null)), "coverage.fromAzimuthDegrees", "missing");
-        assertPart(p -> p.setCoverage(new Coverage(null, null, 5.0, 5.0, null)), "coverage.toAzimuthDegrees", "a width");
-        assertPart(p -> p.setCoverage(new Coverage(null, null, 5.0, 361.0, null)), "coverage.toAzimuthDegrees", "0 to 360");
-        assertPart(p -> p.setCoverage(area(new GeoPoint(1.0, 1.0, null), new GeoPoint(2.0, 2.0, null))), "coverage.area",
+        assertPart(p -> p.setCoverage(new Coverage(null, null, null, 5.0, null)), "coverage.fromAzimuthDegrees",
+                "missing");
+        assertPart(p -> p.setCoverage(new Coverage(null, null, 5.0, 5.0, null)), "coverage.toAzimuthDegrees",
+                "a width");
+        assertPart(p -> p.setCoverage(new Coverage(null, null, 5.0, 361.0, null)), "coverage.toAzimuthDegrees",
+                "0 to 360");
+        assertPart(p -> p.setCoverage(area(new GeoPoint(1.0, 1.0, null), new GeoPoint(2.0, 2.0, null))),
+                "coverage.area",
                 "coverage.area has 2 corners: 3 to 1000 are allowed");
         GeoPoint corner = new GeoPoint(1.0, 1.0, null);
         assertPart(p -> p.setCoverage(area(corner, new GeoPoint(1.0, 2.0, null), new GeoPoint(2.0, 2.0, null), corner)),

@@ -29,7 +29,8 @@ class PartJsonFuzzTest {
         Random random = new Random(seed);
         int passed = 0;
         for (int i = 0; i < 30_000; i++) {
-            byte[] line = mutated(PartJson.write(IntakeFixture.random(random)).getBytes(StandardCharsets.UTF_8), random);
+            byte[] line = mutated(PartJson.write(IntakeFixture.random(random)).getBytes(StandardCharsets.UTF_8),
+                    random);
             String name = "seed " + seed + ", case " + i;
             Intake intake = json.read(line, Optional.empty());
             Accounting.nothingIsLost(intake, name);

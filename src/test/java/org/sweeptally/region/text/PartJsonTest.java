@@ -40,9 +40,12 @@ class PartJsonTest {
                 + "\"closesScan\":true,\"sensorPosition\":{\"latitude\":53.9,\"longitude\":8.1,\"heightMetres\":30},"
                 + "\"sensorHeadingDegrees\":90,\"sensorEastMetresPerSecond\":1.5,\"sensorNorthMetresPerSecond\":-2,"
                 + "\"promises\":{\"nothingBefore\":\"2031-05-01T04:00:44Z\"},"
-                + "\"coverage\":{\"fromMetres\":10,\"toMetres\":4000,\"fromAzimuthDegrees\":350,\"toAzimuthDegrees\":20,"
-                + "\"area\":[{\"latitude\":1,\"longitude\":1},{\"latitude\":1,\"longitude\":2},{\"latitude\":2,\"longitude\":2}]},"
-                + "\"detections\":[{\"id\":\"a1\",\"time\":\"2031-05-01T04:00:43Z\",\"latitude\":53.91,\"longitude\":8.12,"
+                + "\"coverage\":{\"fromMetres\":10,\"toMetres\":4000,\"fromAzimuthDegrees\":350,"
+                + "\"toAzimuthDegrees\":20,"
+                + "\"area\":[{\"latitude\":1,\"longitude\":1},{\"latitude\":1,\"longitude\":2},"
+                + "{\"latitude\":2,\"longitude\":2}]},"
+                + "\"detections\":[{\"id\":\"a1\",\"time\":\"2031-05-01T04:00:43Z\","
+                + "\"latitude\":53.91,\"longitude\":8.12,"
                 + "\"sigmaMetres\":3,\"heightMetres\":2.5,\"strength\":-40,\"declaredIdentity\":\"gull\"},"
                 + "{\"eastMetres\":100,\"northMetres\":-200.5,\"noise\":{\"first\":4,\"cross\":1,\"second\":9}}]}");
         assertThat(part).isEqualTo(Part.newBuilder()
@@ -66,7 +69,8 @@ class PartJsonTest {
         assertThat(part.getPart()).isZero();
         assertThat(part.getClosesScan()).isFalse();
         assertThat(part.getDetections()).isEmpty();
-        assertThat(good("{" + HEAD + ",\"scan\":null,\"part\":null,\"closesScan\":null,\"promises\":null,\"coverage\":null,"
+        assertThat(good("{" + HEAD + ",\"scan\":null,\"part\":null,\"closesScan\":null,"
+                + "\"promises\":null,\"coverage\":null,"
                 + "\"sensorPosition\":null,\"sensorHeadingDegrees\":null,\"detections\":null}")).isEqualTo(part);
         assertThat(good("{" + HEAD + ",\"promises\":{\"nothingEver\":true}}").getPromise())
                 .isEqualTo(new SensorPromise(null));
@@ -80,7 +84,8 @@ class PartJsonTest {
         for (int i = 0; i < 2_000; i++) {
             Part part = IntakeFixture.random(random);
             Intake line = read(PartJson.write(part));
-            assertThat(line).as("seed %d, case %d", seed, i).isEqualTo(decoder.decode(Wire.encode(part), Optional.empty()));
+            assertThat(line).as("seed %d, case %d", seed, i).isEqualTo(decoder.decode(Wire.encode(part),
+                    Optional.empty()));
             assertThat(line.body().orElseThrow().getPart()).isEqualTo(part);
         }
     }
@@ -90,8 +95,10 @@ class PartJsonTest {
         Part part = IntakeFixture.part(1);
         part.setPromise(new SensorPromise(null));
         part.getDetections().get(0).setMeasurement(new PolarFix(5.0, 6.0, 7.0));
-        assertThat(PartJson.write(part)).isEqualTo("{\"sensor\":\"north-shore\",\"scanTime\":\"2031-05-01T04:00:42.500000Z\","
-                + "\"scan\":17,\"part\":3,\"closesScan\":true,\"promises\":{\"nothingEver\":true},\"detections\":[{\"id\":\"a0\","
+        assertThat(PartJson.write(part)).isEqualTo("{\"sensor\":\"north-shore\","
+                + "\"scanTime\":\"2031-05-01T04:00:42.500000Z\","
+                + "\"scan\":17,\"part\":3,\"closesScan\":true,\"promises\":{\"nothingEver\":true},"
+                + "\"detections\":[{\"id\":\"a0\","
                 + "\"rangeMetres\":5.0,\"azimuthDegrees\":6.0,\"rangeRateMetresPerSecond\":7.0}]}");
     }
 
@@ -104,7 +111,8 @@ class PartJsonTest {
         Part nan = IntakeFixture.part(1);
         nan.getDetections().get(0).setStrength(Double.NaN);
         assertThatThrownBy(() -> PartJson.write(nan))
-                .isInstanceOf(IllegalArgumentException.class).hasMessage("strength is NaN: only finite numbers are written");
+                .isInstanceOf(IllegalArgumentException.class).hasMessage("strength is NaN: only finite numbers"
+                        + " are written");
         Part left = IntakeFixture.part(2);
         left.getDetections().get(1).setIndex(0);
         assertThat(PartJson.write(left)).isEqualTo(PartJson.write(IntakeFixture.part(2)));
@@ -112,10 +120,11 @@ class PartJsonTest {
 
     @Test
     void aBrokenLineIsNotAPartAndTheColumnIsNamed() {
-        notAPart("{" + HEAD + ",}", "the line is not JSON, at column 64: ");
+        notAPart("{" + HEAD + ",}", "the line is not JSON, at column " + (HEAD.length() + 3) + ": ");
         notAPart("{" + HEAD, "at column");
         notAPart("{\"sensor\":'x'}", "at column 11");
-        notAPart("{" + HEAD + "} {}", "at column 66: something follows the part: a line is one part");
+        notAPart("{" + HEAD + "} {}", "at column " + (HEAD.length() + 4)
+                + ": something follows the part: a line is one part");
         notAPart("", "the line is empty: a part is an object, in braces");
         notAPart("[1]", "the line is not a JSON object");
         notAPart("17", "the line is not a JSON object");
@@ -168,7 +177,8 @@ class PartJsonTest {
                 .isEqualTo("sensor is missing: the name of a sensor of the site file is expected");
         Intake noTime = read("{\"sensor\":\"north-shore\"}");
         assertThat(noTime.body()).isEmpty();
-        assertThat(reason(noTime).getSentence()).isEqualTo("scanTime is missing: the time at which the look began is expected");
+        assertThat(reason(noTime).getSentence()).isEqualTo("scanTime is missing: the time at which the look"
+                + " began is expected");
         assertThat(noTime.reject().orElseThrow().getReasons()).hasSize(1);
         assertThat(noTime.reject().orElseThrow().getSentence())
                 .startsWith("Part 0 from sensor \"north-shore\": nothing was used: ");
@@ -191,18 +201,25 @@ class PartJsonTest {
         badPart("{" + HEAD + ",\"scan\":1.5}", "scan", "scan is 1.5: a whole number");
         badPart("{" + HEAD + ",\"scan\":1e400}", "scan", "scan is 1e400: a whole number");
         badPart("{" + HEAD + ",\"scan\":99999999999999999999}", "scan", "a whole number");
-        badPart("{" + HEAD + ",\"part\":2147483648}", "part", "part is 2147483648: a whole number from 0 to 2147483647");
-        badPart("{" + HEAD + ",\"closesScan\":\"yes\"}", "closesScan", "closesScan is \"yes\": true or false is expected");
-        badPart("{" + HEAD + ",\"detections\":{}}", "detections", "detections is an object: a list of objects is expected");
-        badPart("{" + HEAD + ",\"sensorPosition\":[1,2]}", "sensorPosition", "sensorPosition is a list: an object with latitude");
+        badPart("{" + HEAD + ",\"part\":2147483648}", "part", "part is 2147483648: a whole number from 0 to"
+                + " 2147483647");
+        badPart("{" + HEAD + ",\"closesScan\":\"yes\"}", "closesScan",
+                "closesScan is \"yes\": true or false is expected");
+        badPart("{" + HEAD + ",\"detections\":{}}", "detections",
+                "detections is an object: a list of objects is expected");
+        badPart("{" + HEAD + ",\"sensorPosition\":[1,2]}", "sensorPosition",
+                "sensorPosition is a list: an object with latitude");
         badPart("{" + HEAD + ",\"sensorPosition\":{\"latitude\":1}}", "sensorPosition.longitude", "is missing");
         badPart("{" + HEAD + ",\"sensorPosition\":{\"latitude\":NaN,\"longitude\":1}}", "sensorPosition.latitude",
                 "sensorPosition.latitude is NaN: degrees north from -90 to 90 are allowed");
         badPart("{" + HEAD + ",\"promises\":{}}", "promises", "promises gives nothing: either");
-        badPart("{" + HEAD + ",\"promises\":{\"nothingEver\":true,\"nothingBefore\":\"2031-05-01T04:00:44Z\"}}", "promises",
+        badPart("{" + HEAD + ",\"promises\":{\"nothingEver\":true,\"nothingBefore\":\"2031-05-01T04:00:44Z\"}}",
+                "promises",
                 "promises gives both");
-        badPart("{" + HEAD + ",\"coverage\":{\"area\":[5]}}", "coverage.area[0]", "coverage.area[0] is 5: an object with");
-        badPart("{" + HEAD + ",\"coverage\":{\"toMetres\":-Infinity}}", "coverage.toMetres", "coverage.toMetres is -Infinity");
+        badPart("{" + HEAD + ",\"coverage\":{\"area\":[5]}}", "coverage.area[0]",
+                "coverage.area[0] is 5: an object with");
+        badPart("{" + HEAD + ",\"coverage\":{\"toMetres\":-Infinity}}", "coverage.toMetres",
+                "coverage.toMetres is -Infinity");
         Intake closing = read("{" + HEAD + ",\"closesScan\":true,\"part\":\"x\"}");
         assertThat(closing.body().orElseThrow().getPart().getClosesScan()).isTrue();
         assertThat(closing.reject().orElseThrow().getPart()).isNull();
@@ -216,7 +233,8 @@ class PartJsonTest {
         badDetection("\"latitude\":1,\"longitude\":Infinity", "longitude", "longitude is Infinity: degrees east");
         badDetection("\"latitude\":1,\"longitude\":1e999", "longitude", "longitude is Infinity");
         badDetection("\"latitude\":\"1\",\"longitude\":1", "latitude", "latitude is \"1\": a number is expected");
-        badDetection("\"latitude\":1", "longitude", "longitude is missing: a detection gives latitude and longitude, or");
+        badDetection("\"latitude\":1", "longitude", "longitude is missing: a detection gives latitude and"
+                + " longitude, or");
         badDetection("\"northMetres\":1", "eastMetres", "eastMetres is missing");
         badDetection("\"id\":\"a\"", "measurement", "it gives no place: a detection gives");
         badDetection("\"latitude\":1,\"longitude\":1,\"eastMetres\":1,\"northMetres\":1", "measurement",
@@ -224,9 +242,12 @@ class PartJsonTest {
         badDetection("\"latitude\":1,\"longitude\":1,\"sigmaMetres\":0", "sigmaMetres",
                 "sigmaMetres is 0.0: metres from 0.001 to 1000000 are allowed");
         badDetection("\"latitude\":1,\"longitude\":1,\"sigmaMetres\":NaN", "sigmaMetres", "sigmaMetres is NaN");
-        badDetection("\"latitude\":1,\"longitude\":1,\"sigmaMetres\":1,\"noise\":{\"first\":1,\"second\":1}", "noise", "both");
-        badDetection("\"latitude\":1,\"longitude\":1,\"noise\":{\"first\":1}", "noise.second", "noise.second is missing");
-        badDetection("\"latitude\":1,\"longitude\":1,\"noise\":{\"first\":1,\"cross\":2,\"second\":1}", "noise", "the square");
+        badDetection("\"latitude\":1,\"longitude\":1,\"sigmaMetres\":1,\"noise\":{\"first\":1,\"second\":1}", "noise",
+                "both");
+        badDetection("\"latitude\":1,\"longitude\":1,\"noise\":{\"first\":1}", "noise.second",
+                "noise.second is missing");
+        badDetection("\"latitude\":1,\"longitude\":1,\"noise\":{\"first\":1,\"cross\":2,\"second\":1}", "noise",
+                "the square");
         badDetection("\"latitude\":1,\"longitude\":1,\"time\":\"2031-05-01T04:01:00Z\"", "time",
                 "time is 2031-05-01T04:01:00.000000Z: the look lasts from");
         badDetection("\"latitude\":1,\"longitude\":1,\"time\":5", "time", "time is 5: a time with its offset");
@@ -247,7 +268,8 @@ class PartJsonTest {
 
     @Test
     void rangeAndBearingAreReadAndAreThenTheWrongMeasurement() {
-        Intake intake = read("{" + HEAD + ",\"closesScan\":true,\"detections\":[{\"rangeMetres\":100,\"azimuthDegrees\":20,"
+        Intake intake = read("{" + HEAD + ",\"closesScan\":true,\"detections\":[{\"rangeMetres\":100,"
+                + "\"azimuthDegrees\":20,"
                 + "\"rangeRateMetresPerSecond\":-3},{\"rangeMetres\":100,\"azimuthDegrees\":20}]}");
         assertThat(intake.reject().orElseThrow().getReasons()).hasSize(1);
         assertThat(reason(intake).getReason()).isEqualTo(RejectReason.WRONG_MEASUREMENT);

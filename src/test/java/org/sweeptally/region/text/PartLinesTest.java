@@ -77,7 +77,8 @@ class PartLinesTest {
 
     @Test
     void aLineBeyondTheBoundIsRejectedByLengthDigestAndBeginning() throws IOException {
-        byte[] head = bytes("{\"sensor\":\"north-shore\",\"scanTime\":\"2031-05-01T04:00:42.5Z\",\"part\":5,\"detections\":[");
+        byte[] head = bytes("{\"sensor\":\"north-shore\","
+                + "\"scanTime\":\"2031-05-01T04:00:42.5Z\",\"part\":5,\"detections\":[");
         byte[] longLine = Arrays.copyOf(head, PartLines.LONGEST_LINE_BYTES + 1);
         Arrays.fill(longLine, head.length, longLine.length, (byte) ' ');
         PartLines lines = lines(new SequenceInputStream(Collections.enumeration(List.of(

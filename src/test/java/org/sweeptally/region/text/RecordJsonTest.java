@@ -41,8 +41,10 @@ class RecordJsonTest {
         assertThat(line).doesNotContain("\n").doesNotContain("Micros");
         JsonNode json = new ObjectMapper().readTree(line);
         assertThat(json.fieldNames()).toIterable().containsExactly(
-                "object", "region", "sequence", "sensor", "scanTime", "scan", "time", "latitude", "longitude", "eastMetres",
-                "northMetres", "eastMetresPerSecond", "northMetresPerSecond", "covariance", "existence", "moving", "firstSeen",
+                "object", "region", "sequence", "sensor", "scanTime", "scan", "time", "latitude", "longitude",
+                        "eastMetres",
+                "northMetres", "eastMetresPerSecond", "northMetresPerSecond", "covariance", "existence", "moving",
+                        "firstSeen",
                 "lastDetected", "used", "declaredIdentity");
         assertThat(json.get("object").asText()).isEqualTo(OBJECT);
         assertThat(json.get("scanTime").asText()).isEqualTo("2031-05-01T04:00:42.500000Z");
@@ -69,17 +71,20 @@ class RecordJsonTest {
         assertThat(RecordJson.line(new End(OBJECT, "outer", 5L, "north-shore", SCAN_TIME, 1L, SCAN_TIME, EndWhy.FADED,
                 53.9, 8.0, 0.05, SCAN_TIME, SCAN_TIME))).contains("\"why\":\"FADED\"", "\"lastDetected\":\"2031-");
         assertThat(RecordJson.line(new Count("outer", 5L, "north-shore", SCAN_TIME, 1L, SCAN_TIME,
-                new NumberDistribution(1.0, 0.46, 0, List.of(0.216, 0.582, 0.188, 0.014), 0.0, 1e-13, 0, 2, 0.986), null,
+                new NumberDistribution(1.0, 0.46, 0, List.of(0.216, 0.582, 0.188, 0.014), 0.0, 1e-13, 0, 2, 0.986),
+                        null,
                 0.25, 1, 0, 0, 3, 1))).contains(
                         "\"all\":{\"mean\":1.0,\"variance\":0.46,\"bandOffset\":0,\"band\":[0.216,0.582,0.188,0.014],"
-                                + "\"below\":0.0,\"above\":1.0E-13,\"least\":0,\"most\":2,\"held\":0.986},\"moving\":null,"
+                                + "\"below\":0.0,\"above\":1.0E-13,\"least\":0,\"most\":2,"
+                                + "\"held\":0.986},\"moving\":null,"
                                 + "\"expectedUnseen\":0.25,\"tracks\":1,");
     }
 
     @Test
     void anOriginalIsTextWhereItIsUtf8AndBase64WhereNot() throws IOException {
         Reject text = new PartJson(IntakeFixture.site())
-                .read("{\"sensor\":\"H\u00f6he\"}".getBytes(StandardCharsets.UTF_8), Optional.empty()).reject().orElseThrow();
+                .read("{\"sensor\":\"H\u00f6he\"}".getBytes(StandardCharsets.UTF_8),
+                        Optional.empty()).reject().orElseThrow();
         JsonNode textJson = new ObjectMapper().readTree(RecordJson.line(text));
         assertThat(textJson.get("originalText").asText()).isEqualTo("{\"sensor\":\"H\u00f6he\"}");
         assertThat(textJson.has("originalBase64")).isFalse();
@@ -130,7 +135,7 @@ class RecordJsonTest {
         }
     }
 
-    /** 2E23 is the known case in which Java before 19 wrote more digits than it needs, 2.0000000000000003E23 not being it. */
+    /** Java before 19 writes 2E23 as 1.9999999999999998E23 (JDK-4511638, from memory; seen in Java 17). */
     @Test
     void numbersAreWrittenWithTheFewestDigitsThatNameThem() {
         Track track = track();
@@ -151,7 +156,8 @@ class RecordJsonTest {
 
     private static Track track() {
         List<Double> covariance = IntStream.range(0, 16).mapToObj(i -> i % 5 == 0 ? 4.0 : 0.0).toList();
-        return new Track(OBJECT, "outer", 5L, "north-shore", SCAN_TIME, 17L, SCAN_TIME + 2_500_000, 53.91, 8.12, 100.5, -20.0,
+        return new Track(OBJECT, "outer", 5L, "north-shore", SCAN_TIME, 17L, SCAN_TIME + 2_500_000, 53.91, 8.12,
+                100.5, -20.0,
                 3.0, -4.0, covariance, 0.999, null, SCAN_TIME, SCAN_TIME,
                 List.of(new UsedDetection(new DetectionRef("north-shore", SCAN_TIME, 0, 3), "a3", 0.75)),
                 new DeclaredIdentity("gull", 0.9));

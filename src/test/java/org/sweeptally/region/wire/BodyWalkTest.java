@@ -94,7 +94,8 @@ class BodyWalkTest {
         assertThat(BodyWalk.over(PART, text, 0).fault())
                 .isEqualTo("in field sensor, at byte 5 of the body: a text has 2147483647 bytes, but only 0 follow");
         Count count = new Count("outer", 1L, "north-shore", 1L, null, 1L,
-                new NumberDistribution(1.0, 1.0, 0, java.util.List.of(), 0.0, 0.0, 0, 1, 1.0), null, 0.0, 0, 0, 0, 1, 1);
+                new NumberDistribution(1.0, 1.0, 0, java.util.List.of(), 0.0, 0.0, 0, 1, 1.0), null, 0.0, 0, 0, 0, 1,
+                        1);
         byte[] body = Wire.body(count);
         assertThat(BodyWalk.over(Count.getClassSchema(), body, 0).fault()).isNull();
         int band = 1 + "outer".length() + 1 + 1 + "north-shore".length() + 1 + 1 + 1 + 16 + 1;
