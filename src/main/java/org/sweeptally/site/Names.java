@@ -17,7 +17,7 @@ final class Names {
         if (ALLOWED.matcher(name).matches()) {
             return true;
         }
-        faults.add(at, name.isBlank() ? "empty" : "'" + name + "'", "must be " + RULE);
+        faults.add(at, name.isBlank() ? "empty" : "'" + Node.plain(name) + "'", "must be " + RULE);
         return false;
     }
 

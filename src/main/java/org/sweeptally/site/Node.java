@@ -11,6 +11,12 @@ sealed interface Node {
 
     Position at();
 
+    /** A text on one line of bounded length, without control characters. */
+    static String plain(String text) {
+        String line = text.replaceAll("[\\s\\p{Cntrl}]+", " ");
+        return line.length() <= SHOWN_CHARACTERS ? line : line.substring(0, SHOWN_CHARACTERS) + "...";
+    }
+
     /** The value as a sentence names it. */
     String shown();
 
@@ -20,7 +26,7 @@ sealed interface Node {
     record Position(String file, int line, String place) {
 
         Position key(String key, int keyLine) {
-            return new Position(file, keyLine, place.isEmpty() ? key : place + "." + key);
+            return new Position(file, keyLine, place.isEmpty() ? plain(key) : place + "." + plain(key));
         }
 
         Position index(int index, int itemLine) {
@@ -47,13 +53,7 @@ sealed interface Node {
     record Scalar(Position at, String text) implements Node {
         @Override
         public String shown() {
-            if (text == null) {
-                return "empty";
-            }
-            String line = text.replaceAll("\\s+", " ");
-            return line.isBlank()
-                    ? "empty"
-                    : line.length() <= SHOWN_CHARACTERS ? line : line.substring(0, SHOWN_CHARACTERS) + "...";
+            return text == null || text.isBlank() ? "empty" : plain(text);
         }
     }
 }

@@ -40,9 +40,12 @@ final class Numbers {
         }
         BigDecimal exact = new BigDecimal(value);
         for (int digits = 1; digits < MOST_DIGITS; digits++) {
-            BigDecimal rounded = exact.round(new MathContext(digits, RoundingMode.HALF_EVEN));
-            if (rounded.doubleValue() == value) {
-                return written(rounded);
+            // Above a power of two doubles are farther apart than below, so that only the farther rounding may read back.
+            for (RoundingMode mode : new RoundingMode[] {RoundingMode.HALF_EVEN, RoundingMode.UP}) {
+                BigDecimal rounded = exact.round(new MathContext(digits, mode));
+                if (rounded.doubleValue() == value) {
+                    return written(rounded);
+                }
             }
         }
         return written(exact.round(new MathContext(MOST_DIGITS, RoundingMode.HALF_EVEN)));

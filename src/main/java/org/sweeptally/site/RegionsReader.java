@@ -84,7 +84,7 @@ final class RegionsReader {
         RegionDraft draft = new RegionDraft(name, node.at(), core.get(), OptionalDouble.empty(), OptionalDouble.empty());
         RegionDraft first = regions.putIfAbsent(name, draft);
         if (first != null) {
-            faults.add(node.at(), "'" + name + "'", "which is taken by the region of line " + first.at().line());
+            faults.add(node.at(), "'" + name + "'", "must differ from the name of the region on line " + first.at().line());
         }
     }
 

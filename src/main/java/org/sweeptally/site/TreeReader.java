@@ -102,10 +102,15 @@ final class TreeReader {
         return parser.currentTokenLocation().getLineNr();
     }
 
-    /** Parsers explain over several lines, with extracts indented: what is not indented says it. */
+    /**
+     * Parsers explain over several lines, with extracts indented: what is not indented says it. What follows about their
+     * own insides helps nobody.
+     */
     private static String oneLine(String message) {
         return message.lines()
                 .filter(line -> !line.isBlank() && !Character.isWhitespace(line.charAt(0)))
-                .collect(Collectors.joining(", "));
+                .collect(Collectors.joining(", "))
+                .replaceFirst("( \\(for |, got this instead| at \\[Source).*", "")
+                .replaceFirst(", from `[^`]*`", "");
     }
 }

@@ -1,0 +1,192 @@
+package org.sweeptally.site;
+
+import static org.assertj.core.api.Assertions.assertThat;
+import static org.assertj.core.api.Assertions.within;
+
+import java.io.IOException;
+import java.nio.file.Files;
+import java.nio.file.Path;
+import java.util.ArrayList;
+import java.util.List;
+import java.util.Optional;
+import java.util.OptionalLong;
+import java.util.SplittableRandom;
+import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.io.TempDir;
+import org.sweeptally.geo.GeoPolygon;
+import org.sweeptally.geo.LatLon;
+import org.sweeptally.model.DetectionProfile;
+import org.sweeptally.site.SensorSettings.PositionNoise;
+
+class EffectiveSettingsTest {
+
+    private static final Path ESTUARY = Path.of("src", "main", "resources", "estuary", "site.yaml");
+
+    @TempDir
+    Path folder;
+
+    @Test
+    void theEstuaryIsWrittenOutWithEveryDefault() throws IOException {
+        String golden = Files.readString(Path.of("src", "test", "resources", "site", "estuary-effective.yaml"));
+        assertThat(EffectiveSettings.text(valid(SiteReader.read(ESTUARY)))).isEqualTo(golden);
+    }
+
+    @Test
+    void whatIsWrittenReadsBackEqualAndIsWrittenTheSame() {
+        Site estuary = valid(SiteReader.read(ESTUARY));
+        String text = EffectiveSettings.text(estuary);
+        assertThat(valid(SiteReader.readText(text))).isEqualTo(estuary);
+        assertThat(EffectiveSettings.text(valid(SiteReader.readText(text)))).isEqualTo(text);
+    }
+
+    @Test
+    void anySiteReadsBackEqual() {
+        for (long seed = 1; seed <= 200; seed++) {
+            Site site = randomSite(new SplittableRandom(seed));
+            String text = EffectiveSettings.text(site);
+            SiteResult result = SiteReader.readText(text);
+            assertThat(result).as("seed %d: %s", seed, text).isEqualTo(new SiteResult.Valid(site));
+        }
+    }
+
+    /** 5 sigmas of 15 m and twice 10 s at four times 5 m/s; 4 births an hour that stay a quarter of it. */
+    @Test
+    void defaultsAreWhatTheyAreSaidToBe() {
+        Site site = valid(SiteReader.read(ESTUARY));
+        assertThat(site.region("skell-mouth")).hasValueSatisfying(region -> {
+            assertThat(region.apronMetres()).isEqualTo(5 * 15 + 2 * 20 * 10);
+            assertThat(region.unseenCellMetres()).isCloseTo(4012 / 48.0, within(0.1));
+        });
+        assertThat(site.motion().largestSpeedMetresPerSecond()).isEqualTo(20);
+        assertThat(site.unseen().outsidePerSquareKilometre()).isEqualTo(1);
+        assertThat(site.unseen().initialPerSquareKilometre()).isEqualTo(1);
+        assertThat(site.rejectOutside()).isFalse();
+        assertThat(site.fromMicros()).isEmpty();
+        assertThat(site.bounds())
+                .isEqualTo(new BoundSettings(5, 20_000, 50_000, 200_000, 1000, 20_000, 64L << 20, 60, 200));
+        assertThat(site.sensors()).extracting(SensorSettings::name).containsExactly("north-shore", "pilot-house", "south-shore");
+        assertThat(site.sensor("north-shore").orElseThrow().silentSeconds()).isEqualTo(10);
+        assertThat(valid(SiteReader.readText(EffectiveSettings.text(site).replaceAll("(?m)^thresholds:\n.*\n.*\n", "")))
+                        .thresholds())
+                .isEqualTo(new ThresholdSettings(0.7, 0.3));
+    }
+
+    @Test
+    void aSmallRegionHasCellsOfNoLessThan25Metres() {
+        String text = EffectiveSettings.text(valid(SiteReader.read(ESTUARY)))
+                .replaceAll("(?m)^    cellMetres.*\n", "")
+                .replace("-33.475", "-33.524")
+                .replace("44.018", "43.983");
+        assertThat(valid(SiteReader.readText(text)).regions().get(0).unseenCellMetres()).isEqualTo(25);
+    }
+
+    @Test
+    void aMovingSensorsRoamsMayBeInAFile() throws IOException {
+        Site estuary = valid(SiteReader.read(ESTUARY));
+        String text = EffectiveSettings.text(estuary)
+                .replaceFirst("position: .*", "roams: roams.geojson");
+        Files.writeString(folder.resolve("site.yaml"), text);
+        String polygon = "{\"type\": \"Polygon\", \"coordinates\": [[[-33.5, 44], [-33.4, 44], [-33.4, 44.1], [-33.5, 44]]]}";
+        GeoPolygon expected = new GeoPolygon(
+                List.of(new LatLon(44, -33.5), new LatLon(44, -33.4), new LatLon(44.1, -33.4)), List.of());
+        String feature = "{\"type\": \"Feature\", \"properties\": null, \"geometry\": " + polygon + "}";
+        String collection = "{\"type\": \"FeatureCollection\", \"features\": [" + feature + "]}";
+        for (String json : List.of(polygon, feature, collection)) {
+            Files.writeString(folder.resolve("roams.geojson"), json);
+            Site site = valid(SiteReader.read(folder.resolve("site.yaml")));
+            assertThat(site.sensors().get(0).position()).isEmpty();
+            assertThat(site.sensors().get(0).roams()).hasValue(expected);
+            assertThat(valid(SiteReader.readText(EffectiveSettings.text(site)))).isEqualTo(site);
+        }
+    }
+
+    /** Up to three regions beside each other, sensors that all reach one of them. */
+    private static Site randomSite(SplittableRandom random) {
+        double south = random.nextDouble(-80, 80);
+        double west = random.nextDouble(-180, 180);
+        List<RegionSettings> regions = new ArrayList<>();
+        for (int i = 0; i <= random.nextInt(3); i++) {
+            regions.add(new RegionSettings(
+                    "region-" + i,
+                    cell(random, south, west + .05 * i, i == 0),
+                    random.nextDouble(0, 2000),
+                    random.nextDouble(30, 300)));
+        }
+        List<SensorSettings> sensors = new ArrayList<>();
+        for (int i = 0; i <= random.nextInt(3); i++) {
+            sensors.add(randomSensor(random, "sensor-" + i, south, west));
+        }
+        double ending = random.nextDouble(.1, .5);
+        return new Site(
+                random.nextBoolean() ? "null" : "0777",
+                random.nextInt(1, Integer.MAX_VALUE),
+                random.nextBoolean() ? OptionalLong.empty() : OptionalLong.of(random.nextLong(-1L << 50, 1L << 52)),
+                sensors,
+                regions,
+                new MotionSettings(random.nextDouble(1e-9, 1), random.nextDouble(.1, 20), random.nextDouble(1, 80)),
+                random.nextDouble(1, 1e6),
+                new UnseenSettings(random.nextDouble(0, 9), random.nextDouble(0, 9), random.nextDouble(0, 9)),
+                new ThresholdSettings(random.nextDouble(ending + .01, 1), ending),
+                new BoundSettings(
+                        random.nextDouble(1, 9),
+                        random.nextInt(1, 99_999),
+                        random.nextInt(1, 99_999),
+                        random.nextLong(1, 1L << 39),
+                        random.nextInt(1, 9999),
+                        random.nextInt(1, 99_999),
+                        random.nextLong(1 << 20, 1L << 39),
+                        random.nextDouble(1, 99),
+                        random.nextInt(1, 999)),
+                random.nextBoolean());
+    }
+
+    private static GeoPolygon cell(SplittableRandom random, double south, double west, boolean mayHaveHole) {
+        List<LatLon> outer = rectangle(south, west, .05);
+        boolean hole = mayHaveHole && random.nextBoolean();
+        return new GeoPolygon(outer, hole ? List.of(rectangle(south + .01, west + .01, .01)) : List.of());
+    }
+
+    private static List<LatLon> rectangle(double south, double west, double side) {
+        double left = Math.IEEEremainder(west, 360);
+        double right = Math.IEEEremainder(west + side, 360);
+        return List.of(
+                new LatLon(south, left),
+                new LatLon(south, right),
+                new LatLon(south + side, right),
+                new LatLon(south + side, left));
+    }
+
+    private static SensorSettings randomSensor(SplittableRandom random, String name, double south, double west) {
+        Optional<LatLon> position = random.nextBoolean()
+                ? Optional.of(new LatLon(south + random.nextDouble(.05), Math.IEEEremainder(west, 360)))
+                : Optional.empty();
+        Optional<GeoPolygon> roams = position.isEmpty() && random.nextBoolean()
+                ? Optional.of(new GeoPolygon(rectangle(south, west, random.nextDouble(.01, 1)), List.of()))
+                : Optional.empty();
+        double along = random.nextDouble(1, 10);
+        double interval = random.nextDouble(.1, 20);
+        DetectionProfile profile = random.nextBoolean()
+                ? DetectionProfile.constant(random.nextDouble(.01, .99))
+                : new DetectionProfile(List.of(
+                        new DetectionProfile.Point(random.nextDouble(1, 100), random.nextDouble(.01, .99)),
+                        new DetectionProfile.Point(random.nextDouble(200, 999), random.nextDouble(.01, .99))));
+        return new SensorSettings(
+                name,
+                position,
+                roams,
+                random.nextDouble(100, 9999),
+                new PositionNoise(along, random.nextBoolean() ? along : random.nextDouble(1, 10)),
+                profile,
+                random.nextDouble(.1, 99),
+                interval,
+                random.nextDouble(0, 3),
+                random.nextDouble(0, interval),
+                random.nextDouble(0, 3),
+                random.nextDouble(1, 60));
+    }
+
+    private static Site valid(SiteResult result) {
+        assertThat(result).isInstanceOf(SiteResult.Valid.class);
+        return ((SiteResult.Valid) result).site();
+    }
+}

@@ -1,0 +1,168 @@
+package org.sweeptally.site;
+
+import static org.assertj.core.api.Assertions.assertThat;
+
+import java.io.IOException;
+import java.nio.charset.StandardCharsets;
+import java.nio.file.Files;
+import java.nio.file.Path;
+import java.util.List;
+import java.util.stream.Collectors;
+import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.io.TempDir;
+import org.junit.jupiter.params.ParameterizedTest;
+import org.junit.jupiter.params.provider.CsvSource;
+import org.junit.jupiter.params.provider.ValueSource;
+
+class SiteFaultsTest {
+
+    private static final Path RESOURCES = Path.of("src", "test", "resources", "site");
+
+    /** A sound site on one page, for one change at a time. */
+    private static final String SOUND = """
+            site: basin
+            revision: 2
+            from: 2031-05-01T05:00:00.123456Z
+            sensors:
+              radar:
+                position: {latitude: 44.05, longitude: -33.45}
+                reachMetres: 9000
+                sigmaMetres: 15
+                detectionProbability: 0.9
+                clutterPerScan: 20
+                intervalSeconds: 2.5
+            motion: {accelerationNoise: 0.05, speedSigmaMetresPerSecond: 5}
+            lifetimeSeconds: 900
+            unseen: {birthsPerSquareKilometrePerHour: 4}
+            regions:
+              east: {polygon: [[[-33.45, 44.0], [-33.4, 44.0], [-33.4, 44.1], [-33.45, 44.1], [-33.45, 44.0]]]}
+              west: {polygon: [[[-33.5, 44.0], [-33.45, 44.0], [-33.45, 44.1], [-33.5, 44.1], [-33.5, 44.0]]]}
+            """;
+
+    @TempDir
+    Path folder;
+
+    @Test
+    void theSoundSiteIsSound() {
+        assertThat(SiteReader.readText(SOUND)).isInstanceOf(SiteResult.Valid.class);
+    }
+
+    @ParameterizedTest
+    @ValueSource(strings = {"faulty", "sliver", "unreached"})
+    void allFaultsOfAFileAreToldAtOnce(String name) throws IOException {
+        String golden = Files.readString(RESOURCES.resolve(name + ".txt"));
+        String told = lines(SiteReader.read(RESOURCES.resolve(name + ".yaml")));
+        assertThat(told.replace('\\', '/')).isEqualTo(golden);
+    }
+
+    @ParameterizedTest
+    @CsvSource(delimiter = '|', value = {
+        "revision: 2 | revision: two | settings:2: revision: is two, must be a whole number",
+        "revision: 2 | revision: 99999999999 | settings:2: revision: is 99999999999, must be a whole number",
+        "site: basin | site: | settings:1: site: is empty, must be a name",
+        "site: basin | site: null | settings:1: site: is empty, must be a name",
+        "00.123456Z | 00.1234567Z | settings:3: from: is 2031-05-01T05:00:00.1234567Z, must be a time",
+        "reachMetres: 9000 | reachMetres: -3 | settings:7: sensors.radar.reachMetres: is -3, must be more than 0",
+        "reachMetres: 9000 | reachMetres: .inf | reachMetres: is .inf, must be a number more than 0",
+        "reachMetres: 9000 | ReachMetre: 9000 | settings:7: sensors.radar.ReachMetre: is not known here, the nearest known key is reachMetres",
+        "reachMetres: 9000 | reachMetres: 9000, | reachMetres: is 9000,, must be a number",
+        "reachMetres: 9000 | reachMetres: {a: 1} | reachMetres: is a mapping, must be a number",
+        "sigmaMetres: 15 | sigmaMetres: 0 | sigmaMetres: is 0, must be from 0.001",
+        "sigmaMetres: 15 | alongSigmaMetres: 15 | settings:5: sensors.radar.acrossSigmaMetres: is missing",
+        "detectionProbability: 0.9 | detectionProbability: 0 | detectionProbability: is 0, must be more than 0 and less than 1",
+        "detectionProbability: 0.9 | detectionProbability: [0.9] | detectionProbability[0]: is 0.9, must be a mapping",
+        "detectionProbability: 0.9 | detectionProbability: [{rangeMetres: 5, probability: .5}, {rangeMetres: 4, probability: .5}] | detectionProbability[1].rangeMetres: is 4, must be more than the range before it, 5",
+        "intervalSeconds: 2.5 | leastIntervalSeconds: 9 | settings:5: sensors.radar.intervalSeconds: is missing",
+        "clutterPerScan: 20 | leastIntervalSeconds: 9 | leastIntervalSeconds: is 9, must be at most intervalSeconds, 2.5",
+        "latitude: 44.05, | latitude: 91, | settings:6: sensors.radar.position.latitude: is 91, must be from -90 to 90",
+        "latitude: 44.05, | latitude: -44.05, | reachMetres: is 9000, must reach the apron of at least one region",
+        "position: {latitude: 44.05, longitude: -33.45} | roams: basin.geojson | roams: is basin.geojson, must be written out here",
+        "position: {latitude: 44.05, longitude: -33.45} | roams: [[[0, 44], [0.1, 44], [0.1, 44.1], [0, 44]]] | must reach the apron",
+        "{accelerationNoise: 0.05, speed | {speed | settings:12: motion.accelerationNoise: is missing",
+        "lifetimeSeconds: 900 | lifetimeSeconds: 0 | lifetimeSeconds: is 0, must be more than 0",
+        "lifetimeSeconds: 900 | thresholds: {ending: 0.05} | thresholds.ending: is 0.05, must be 0.1 or more and less than 1",
+        "lifetimeSeconds: 900 | thresholds: {ending: 0.8} | thresholds.confirming: is 0.7, must be more than ending, 0.8",
+        "lifetimeSeconds: 900 | thresholds: {confirming: 1} | thresholds.confirming: is 1, must be more than 0 and less than 1",
+        "PerHour: 4} | PerHour: 0} | must be more than 0 where none are outside and none at the beginning",
+        "PerHour: 4} | PerHour: 4, cellMetres: 2} | the region and its apron of 475 m are more than 1000000",
+        "lifetimeSeconds: 900 | bounds: 3 | bounds: is 3, must be a mapping",
+        "[[-33.45, 44.0], [-33.4, | [[-33.46, 44.0], [-33.4, | not closed",
+        "west: {polygon | east: {polygon | settings:17: regions.east: is given twice, first on line 16",
+        "west: {polygon | West: {polygon | regions.West: is 'West', must be a name",
+        "west: {polygon | west: {poligon | the nearest known key is polygon",
+        "[[[-33.5, 44.0], [-33.45, | [[[-33.5, 44.0], [-33.44, | settings:17: regions.west.polygon: the region west overlaps east by",
+    })
+    void aFaultSaysWhereWhatAndWhatIsAllowed(String sound, String changed, String told) {
+        assertThat(SOUND).contains(sound);
+        assertThat(lines(SiteReader.readText(SOUND.replace(sound, changed)))).contains(told);
+    }
+
+    @Test
+    void oneFaultTellsNoOther() {
+        String changed = SOUND.replace("reachMetres: 9000", "reachMetres: -3");
+        assertThat(((SiteResult.Faulty) SiteReader.readText(changed)).faults()).hasSize(1);
+    }
+
+    /** The same corners along the edge they share: no overlap, whatever the numbers. */
+    @Test
+    void neighboursThatShareCornersDoNotOverlap() {
+        String changed = SOUND.replace("-33.45, 44.1]", "-33.451234567890123, 44.123456789012345]");
+        assertThat(SiteReader.readText(changed)).isInstanceOf(SiteResult.Valid.class);
+    }
+
+    @ParameterizedTest
+    @CsvSource(delimiter = '|', value = {
+        "site: [a, b | :1: is not YAML: while parsing a flow sequence, expected ',' or ']'",
+        "a: b: c | :1: is not YAML: mapping values are not allowed here",
+        "'' | : is empty",
+        "[1, 2] | :1: is a list, must be a mapping of settings",
+        "7 | :1: is 7, must be a mapping of settings",
+        "'{a: &x 1, b: *x}' | :1: b: is an alias, must be written out",
+    })
+    void whatIsNoSettingsFileIsSaidInOneLine(String text, String told) {
+        List<String> lines = lines(SiteReader.readText(text)).lines().toList();
+        assertThat(lines).anySatisfy(line -> assertThat(line).startsWith("settings" + told));
+        assertThat(lines).noneMatch(line -> line.contains("Exception") || line.contains("snakeyaml"));
+    }
+
+    @Test
+    void aSecondDocumentIsAFault() {
+        assertThat(lines(SiteReader.readText(SOUND + "---\nsite: other\n"))).contains("settings:19: goes on after its end");
+    }
+
+    @Test
+    void deepNestingIsAFaultAndNoOverflow() {
+        assertThat(lines(SiteReader.readText("[".repeat(100_000)))).contains("nesting depth");
+    }
+
+    @Test
+    void filesThatAreMissingOrNoTextAreFaults() throws IOException {
+        Path missing = folder.resolve("site.yaml");
+        assertThat(lines(SiteReader.read(missing))).isEqualTo(missing + ": does not exist\n");
+        Files.write(missing, new byte[] {(byte) 0xff, (byte) 0xfe, 0});
+        assertThat(lines(SiteReader.read(missing))).isEqualTo(missing + ": must be text in UTF-8\n");
+        assertThat(lines(SiteReader.read(folder))).startsWith(folder + ": cannot be read");
+    }
+
+    @Test
+    void aRegionsFileThatIsNoGeoJsonIsAFaultOfItsOwn() throws IOException {
+        String site = SOUND.substring(0, SOUND.indexOf("regions:")) + "regions: here.geojson\n";
+        Path file = folder.resolve("site.yaml");
+        Files.writeString(file, site);
+        assertThat(lines(SiteReader.read(file)))
+                .isEqualTo(file + ":15: regions: the file " + folder.resolve("here.geojson") + " does not exist\n");
+        Path regions = folder.resolve("here.geojson");
+        Files.writeString(regions, "{\"type\": \"FeatureCollection\",\n \"features\": [}", StandardCharsets.UTF_8);
+        assertThat(lines(SiteReader.read(file))).startsWith(regions + ":2: is not JSON: ").hasLineCount(1);
+        Files.writeString(regions, "{\"type\": \"Polygon\"}");
+        assertThat(lines(SiteReader.read(file))).contains(":1: must be a GeoJSON FeatureCollection with a list of features");
+        Files.writeString(regions, "{\"type\": \"FeatureCollection\", \"features\": []}");
+        assertThat(lines(SiteReader.read(file))).contains("features: must have at least one feature");
+    }
+
+    private static String lines(SiteResult result) {
+        assertThat(result).isInstanceOf(SiteResult.Faulty.class);
+        return ((SiteResult.Faulty) result)
+                .faults().stream().map(fault -> fault + "\n").collect(Collectors.joining());
+    }
+}
