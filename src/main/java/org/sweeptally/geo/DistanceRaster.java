@@ -1,10 +1,10 @@
 package org.sweeptally.geo;
 
 /**
- * Bounds on the distance from a polygon's nearest edge without looking at its edges: the signed distance at the centres of
- * a raster over the polygon. Distance changes by at most a metre a metre, so that a point's differs from its cell's centre's
- * by at most half the cell's diagonal. Most questions of "far enough inside?" end here, at the cost of one look-up, however
- * many edges the polygon has.
+ * Bounds on the distance from a polygon's nearest edge without looking at its edges: the signed distance at the
+ * centres of a raster over the polygon. Distance changes by at most a metre a metre, so that a point's differs from
+ * its cell's centre's by at most half the cell's diagonal. Most questions of "far enough inside?" end here, at the
+ * cost of one look-up, however many edges the polygon has.
  */
 final class DistanceRaster {
 

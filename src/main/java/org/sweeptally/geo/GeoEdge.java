@@ -3,8 +3,8 @@ package org.sweeptally.geo;
 import java.math.BigDecimal;
 
 /**
- * An edge from its southern to its northern end, straight in longitude and latitude. Each longitude comes with whole turns
- * of 360 degrees, so that an edge across the antimeridian is one piece.
+ * An edge from its southern to its northern end, straight in longitude and latitude. Each longitude comes with whole
+ * turns of 360 degrees, so that an edge across the antimeridian is one piece.
  */
 record GeoEdge(
         double southLatitude,

@@ -4,12 +4,12 @@ import java.util.ArrayList;
 import java.util.List;
 
 /**
- * A polygon whose edges are straight in longitude and latitude (RFC 7946), with holes. A step of more than 180 degrees of
- * longitude from one corner to the next is a step across the antimeridian; no pole is inside.
+ * A polygon whose edges are straight in longitude and latitude (RFC 7946), with holes. A step of more than 180 degrees
+ * of longitude from one corner to the next is a step across the antimeridian; no pole is inside.
  *
- * <p>Of polygons that share edges, corner for corner, every place belongs to exactly one: an edge holds the places from its
- * southern end up to, not including, its northern end, a place on it belongs to the polygon to the east, and the side of
- * an edge on which a place lies is decided exactly ({@link GeoEdge}), the same for both of its polygons.
+ * <p>Of polygons that share edges, corner for corner, every place belongs to exactly one: an edge holds the places
+ * from its southern end up to, not including, its northern end, a place on it belongs to the polygon to the east, and
+ * the side of an edge on which a place lies is decided exactly ({@link GeoEdge}), the same for both of its polygons.
  */
 public final class GeoPolygon {
 
@@ -115,7 +115,7 @@ public final class GeoPolygon {
         }
         for (LatLon corner : ring) {
             if (!(Math.abs(corner.latitude()) <= 90 && Math.abs(corner.longitude()) <= 180)) {
-                throw new IllegalArgumentException("a corner at " + corner + " is outside the ranges of +-90 and +-180");
+                throw new IllegalArgumentException("a corner at " + corner + " is outside +-90 and +-180 degrees");
             }
         }
         return ring;

@@ -7,9 +7,9 @@ package org.sweeptally.geo;
  * <p>Horizontal lengths differ from geodesics by about d^3 / (6 R^2), d the distance from the origin, R the earth's
  * radius: 0.5 mm at 5 km, 0.5 m at 50 km.
  *
- * <p>Only the hemisphere that faces the plane is in it: a place beyond would fold back into the plane next to places that
- * are half the earth away. Such a place's coordinates are NaN, and so is the place of a point that lies over no place, both
- * of which every polygon says are outside.
+ * <p>Only the hemisphere that faces the plane is in it: a place beyond would fold back into the plane next to places
+ * that are half the earth away. Such a place's coordinates are NaN, and so is the place of a point that lies over no
+ * place, both of which every polygon says are outside.
  */
 public final class LocalPlane {
 
@@ -84,7 +84,8 @@ public final class LocalPlane {
         double turn = StrictMath.toRadians(at.longitude() - origin.longitude());
         double sin = StrictMath.sin(latitude);
         double westwards = sin * StrictMath.sin(turn);
-        double northwards = StrictMath.cos(latitude) * frame.cosLatitude + sin * frame.sinLatitude * StrictMath.cos(turn);
+        double northwards =
+                StrictMath.cos(latitude) * frame.cosLatitude + sin * frame.sinLatitude * StrictMath.cos(turn);
         return StrictMath.atan2(westwards, northwards);
     }
 }

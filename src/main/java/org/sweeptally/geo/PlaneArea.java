@@ -5,9 +5,9 @@ import java.util.Collections;
 import java.util.List;
 
 /**
- * A polygon in a {@link LocalPlane}, in metres. Its edges are straight pieces that follow the edges of the polygon it was
- * made from, which are straight in longitude and latitude, within {@link #EDGE_TOLERANCE_METRES}; two polygons that share
- * an edge share its pieces.
+ * A polygon in a {@link LocalPlane}, in metres. Its edges are straight pieces that follow the edges of the polygon it
+ * was made from, which are straight in longitude and latitude, within {@link #EDGE_TOLERANCE_METRES}; two polygons
+ * that share an edge share its pieces.
  */
 public final class PlaneArea {
 
@@ -29,7 +29,9 @@ public final class PlaneArea {
     private final double minNorth;
     private final double maxNorth;
     private final double areaSquareMetres;
-    private final DistanceRaster raster;
+
+    /** Made when first asked for: the area of one look, told in its part, has no use for it. */
+    private DistanceRaster raster;
 
     /**
      * The polygon in the plane.
@@ -73,7 +75,6 @@ public final class PlaneArea {
         minNorth = box[2];
         maxNorth = box[3];
         this.areaSquareMetres = areaSquareMetres;
-        raster = new DistanceRaster(this);
     }
 
     private void setPiece(int k, PlanePoint from, PlanePoint to) {
@@ -122,12 +123,15 @@ public final class PlaneArea {
      * {@link #signedDistanceMetres}, but for points well inside without a pass over the pieces.
      */
     public boolean isAtLeast(double metres, double east, double north) {
+        if (raster == null) {
+            raster = new DistanceRaster(this);
+        }
         return raster.atLeast(east, north) >= metres || signedDistanceMetres(east, north) >= metres;
     }
 
     /**
-     * Whether a line from a point eastwards crosses a piece. Ends are compared as they are, since differences round, and
-     * a point level with the end of two pieces must cross exactly one of them.
+     * Whether a line from a point eastwards crosses a piece. Ends are compared as they are, since differences round,
+     * and a point level with the end of two pieces must cross exactly one of them.
      */
     private boolean isCrossed(int k, double east, double north) {
         return north >= fromNorth[k]
@@ -189,7 +193,13 @@ public final class PlaneArea {
     }
 
     private static void follow(
-            LatLon from, PlanePoint start, LatLon to, PlanePoint end, LocalPlane plane, int halvings, List<PlanePoint> points) {
+            LatLon from,
+            PlanePoint start,
+            LatLon to,
+            PlanePoint end,
+            LocalPlane plane,
+            int halvings,
+            List<PlanePoint> points) {
         LatLon middle = between(from, to);
         PlanePoint half = onPlane(middle, plane);
         double offEast = half.eastMetres() - (start.eastMetres() + end.eastMetres()) / 2;

@@ -1,8 +1,8 @@
 package org.sweeptally.geo;
 
 /**
- * Axes east, north and up at an origin (IOGP Guidance Note 373-7-2, EPSG methods 9836 and 9837): up is the normal of the
- * ellipsoid there.
+ * Axes east, north and up at an origin (IOGP Guidance Note 373-7-2, EPSG methods 9836 and 9837): up is the normal of
+ * the ellipsoid there.
  */
 final class TopocentricFrame {
 

@@ -17,7 +17,9 @@ public final class Wgs84 {
     /** Second eccentricity squared. */
     public static final double SECOND_ECCENTRICITY_SQUARED = ECCENTRICITY_SQUARED / (1 - ECCENTRICITY_SQUARED);
 
-    /** Rounds of Bowring's correction; from 10 km below the surface to 10,000 km above it the second changes nothing. */
+    /**
+     * Rounds of Bowring's correction; from 10 km below the surface to 10,000 km above it the second changes nothing.
+     */
     private static final int BOWRING_ROUNDS = 2;
 
     private Wgs84() {}
@@ -42,8 +44,8 @@ public final class Wgs84 {
 
     /**
      * The place on the ellipsoid below or above a point, by Bowring (1976, "Transformation from spatial to geographical
-     * coordinates", Survey Review 23: 323-327), repeated. Good to 1e-11 degrees at heights from -10 km to 10,000 km; not
-     * meant for points near the earth's centre.
+     * coordinates", Survey Review 23: 323-327), repeated. Good to 1e-11 degrees at heights from -10 km to 10,000 km;
+     * not meant for points near the earth's centre.
      */
     public static LatLon toPlace(GeocentricPoint point) {
         double fromAxis = fromAxis(point);

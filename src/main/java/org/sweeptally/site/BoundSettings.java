@@ -6,7 +6,8 @@ package org.sweeptally.site;
  * @param gateSigmas           half-width of the association gate
  * @param components           live components of a region
  * @param unseenTerms          Gaussian terms of the unseen part of a region
- * @param exactAssociationSteps table entries that the exact association of one cluster may touch; beyond it belief propagation takes over
+ * @param exactAssociationSteps table entries that the exact association of one cluster may touch; beyond it belief
+ *                              propagation takes over
  * @param propagationSweeps    sweeps of belief propagation over one cluster
  * @param detectionsPerPart    detections in one part
  * @param waitingBytes         what may wait in a region for its horizon

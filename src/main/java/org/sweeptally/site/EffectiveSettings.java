@@ -10,8 +10,8 @@ import org.sweeptally.model.DetectionProfile;
 
 /**
  * Writes a site's settings as one text with every default in it: the same site gives the same text, byte for byte, and
- * {@link SiteReader#readText} gives an equal site back. Keys come in a fixed order, sensors and regions by name, numbers
- * in their shortest form.
+ * {@link SiteReader#readText} gives an equal site back. Keys come in a fixed order, sensors and regions by name,
+ * numbers in their shortest form.
  */
 public final class EffectiveSettings {
 
@@ -30,7 +30,8 @@ public final class EffectiveSettings {
         // In quotes, or a site called "null" would be none.
         line(0, "site", "\"" + site.name() + "\"");
         line(0, "revision", Integer.toString(site.revision()));
-        site.fromMicros().ifPresent(micros -> line(0, "from", Instant.EPOCH.plus(micros, ChronoUnit.MICROS).toString()));
+        site.fromMicros()
+                .ifPresent(micros -> line(0, "from", Instant.EPOCH.plus(micros, ChronoUnit.MICROS).toString()));
         line(0, "rejectOutside", Boolean.toString(site.rejectOutside()));
         open(0, "sensors");
         site.sensors().forEach(this::sensor);

@@ -9,8 +9,8 @@ import java.util.OptionalDouble;
 import org.sweeptally.site.Node.Position;
 
 /**
- * The keys of one mapping, taken out one by one; what nobody took is unknown. A number that is missing or wrong comes out
- * as NaN or 0 and leaves a fault, so that reading goes on and finds the others.
+ * The keys of one mapping, taken out one by one; what nobody took is unknown. A number that is missing or wrong comes
+ * out as NaN or 0 and leaves a fault, so that reading goes on and finds the others.
  */
 final class Fields {
 
@@ -138,7 +138,7 @@ final class Fields {
         if (node.isEmpty()) {
             return whenAbsent;
         }
-        if (node.get() instanceof Node.Scalar scalar && ("true".equals(scalar.text()) || "false".equals(scalar.text()))) {
+        if (node.get() instanceof Node.Scalar scalar && List.of("true", "false").contains(scalar.text() + "")) {
             return "true".equals(scalar.text());
         }
         faults.add(node.get().at(), node.get().shown(), "must be true or false");

@@ -8,7 +8,8 @@ final class Names {
 
     private static final Pattern ALLOWED = Pattern.compile("[a-z0-9][a-z0-9-]{0,63}");
 
-    private static final String RULE = "a name of small letters, digits and hyphens, not beginning with a hyphen, at most 64";
+    private static final String RULE =
+            "a name of small letters, digits and hyphens, not beginning with a hyphen, at most 64";
 
     private Names() {}
 

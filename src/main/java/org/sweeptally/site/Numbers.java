@@ -31,8 +31,8 @@ final class Numbers {
     }
 
     /**
-     * The shortest decimal text that reads back as the same double. Double.toString is not it: its digits differ between
-     * Java releases, and the text of settings must not.
+     * The shortest decimal text that reads back as the same double. Double.toString is not it: its digits differ
+     * between Java releases, and the text of settings must not.
      */
     static String shortest(double value) {
         if (Double.isNaN(value) || Double.isInfinite(value)) {
@@ -40,7 +40,7 @@ final class Numbers {
         }
         BigDecimal exact = new BigDecimal(value);
         for (int digits = 1; digits < MOST_DIGITS; digits++) {
-            // Above a power of two doubles are farther apart than below, so that only the farther rounding may read back.
+            // Above a power of two doubles are farther apart than below: only the farther rounding may read back.
             for (RoundingMode mode : new RoundingMode[] {RoundingMode.HALF_EVEN, RoundingMode.UP}) {
                 BigDecimal rounded = exact.round(new MathContext(digits, mode));
                 if (rounded.doubleValue() == value) {

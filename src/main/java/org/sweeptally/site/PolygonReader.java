@@ -7,8 +7,8 @@ import org.sweeptally.geo.GeoPolygon;
 import org.sweeptally.geo.LatLon;
 
 /**
- * Reads the coordinates of an RFC 7946 Polygon: rings of [longitude, latitude] positions, the outer one first, each ending
- * where it starts.
+ * Reads the coordinates of an RFC 7946 Polygon: rings of [longitude, latitude] positions, the outer one first, each
+ * ending where it starts.
  */
 final class PolygonReader {
 

@@ -16,9 +16,9 @@ import org.sweeptally.geo.LatLon;
 import org.sweeptally.geo.Wgs84;
 
 /**
- * A polygon for questions of shape: longitude and latitude scaled to metres at a middle, so that edges that are straight
- * there stay straight, and corners that are shared stay shared. Lengths are good to a few per cent over 100 km. Nothing
- * that the picture is computed from comes from here.
+ * A polygon for questions of shape: longitude and latitude scaled to metres at a middle, so that edges that are
+ * straight there stay straight, and corners that are shared stay shared. Lengths are good to a few per cent over 100
+ * km. Nothing that the picture is computed from comes from here.
  */
 final class PolygonShape {
 
@@ -45,7 +45,8 @@ final class PolygonShape {
                             "the outline crosses or touches itself" + where + ", must not";
                     case TopologyValidationError.TOO_FEW_POINTS ->
                             "the ring has too few different corners" + where + ", must have at least 3";
-                    case TopologyValidationError.HOLE_OUTSIDE_SHELL -> "a hole is outside the outline" + where + ", must be inside";
+                    case TopologyValidationError.HOLE_OUTSIDE_SHELL ->
+                            "a hole is outside the outline" + where + ", must be inside";
                     case TopologyValidationError.NESTED_HOLES -> "a hole is inside another" + where + ", must not be";
                     case TopologyValidationError.DISCONNECTED_INTERIOR ->
                             "holes cut it into pieces" + where + ", must be one piece";

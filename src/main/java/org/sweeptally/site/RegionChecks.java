@@ -80,7 +80,8 @@ final class RegionChecks {
 
     private void overlap(RegionDraft first, RegionDraft second) {
         LatLon middle = first.core().outer().get(0);
-        double overlap = new PolygonShape(first.core(), middle).overlapSquareMetres(new PolygonShape(second.core(), middle));
+        PolygonShape shape = new PolygonShape(first.core(), middle);
+        double overlap = shape.overlapSquareMetres(new PolygonShape(second.core(), middle));
         if (overlap > OVERLAP_TOLERANCE_SQUARE_METRES) {
             faults.add(
                     second.at(),

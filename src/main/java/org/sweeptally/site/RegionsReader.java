@@ -33,7 +33,10 @@ final class RegionsReader {
         } else if (node instanceof Node.Mapping mapping && !mapping.entries().isEmpty()) {
             mapping.entries().forEach(reader::inline);
         } else {
-            faults.add(node.at(), node.shown(), "must be the name of a GeoJSON file, or a mapping of regions' names to polygons");
+            faults.add(
+                    node.at(),
+                    node.shown(),
+                    "must be the name of a GeoJSON file, or a mapping of regions' names to polygons");
         }
         return List.copyOf(reader.regions.values());
     }
@@ -50,8 +53,8 @@ final class RegionsReader {
     private void inline(String name, Node node) {
         Fields fields = Fields.of(node, "polygon, apronMetres, cellMetres", faults);
         boolean named = Names.check(name, node.at(), faults);
-        Optional<GeoPolygon> core =
-                fields.required("polygon", "a list of rings, each a list of [longitude, latitude]").flatMap(polygons::read);
+        Optional<GeoPolygon> core = fields.required("polygon", "a list of rings, each a list of [longitude, latitude]")
+                .flatMap(polygons::read);
         OptionalDouble apron = fields.optionalNumber("apronMetres", APRON);
         OptionalDouble cell = fields.optionalNumber("cellMetres", CELL);
         fields.end();
@@ -81,10 +84,14 @@ final class RegionsReader {
         if (name.isEmpty() || core.isEmpty()) {
             return;
         }
-        RegionDraft draft = new RegionDraft(name, node.at(), core.get(), OptionalDouble.empty(), OptionalDouble.empty());
+        RegionDraft draft =
+                new RegionDraft(name, node.at(), core.get(), OptionalDouble.empty(), OptionalDouble.empty());
         RegionDraft first = regions.putIfAbsent(name, draft);
         if (first != null) {
-            faults.add(node.at(), "'" + name + "'", "must differ from the name of the region on line " + first.at().line());
+            faults.add(
+                    node.at(),
+                    "'" + name + "'",
+                    "must differ from the name of the region on line " + first.at().line());
         }
     }
 

@@ -71,7 +71,18 @@ final class SensorReader {
         }
         fields.end();
         return new SensorSettings(
-                name, position, roams, reach, noise, profile, clutter, interval, sweep, leastInterval, disorder, silent);
+                name,
+                position,
+                roams,
+                reach,
+                noise,
+                profile,
+                clutter,
+                interval,
+                sweep,
+                leastInterval,
+                disorder,
+                silent);
     }
 
     private LatLon position(Node node) {
@@ -86,7 +97,9 @@ final class SensorReader {
         boolean directed = fields.has("alongSigmaMetres") || fields.has("acrossSigmaMetres");
         if (directed && fields.has("sigmaMetres")) {
             faults.add(
-                    fields.at("sigmaMetres"), "", "must be absent where alongSigmaMetres and acrossSigmaMetres are given");
+                    fields.at("sigmaMetres"),
+                    "",
+                    "must be absent where alongSigmaMetres and acrossSigmaMetres are given");
         }
         if (!directed) {
             fields.optional("alongSigmaMetres");

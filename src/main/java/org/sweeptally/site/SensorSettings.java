@@ -15,7 +15,8 @@ import org.sweeptally.model.SensorModel;
  * @param noise                of a measurement that brings none of its own
  * @param detectionProbability by distance
  * @param clutterPerScan       expected number of false detections in a scan of the whole reach
- * @param intervalSeconds      usual time between scans; only for forecasts and advice, the filter takes times as they come
+ * @param intervalSeconds      usual time between scans; only for forecasts and advice, the filter takes times as they
+ *                             come
  * @param sweepSeconds         how long a look lasts; the scan takes effect that long after its scan time
  * @param leastIntervalSeconds no scan comes sooner than this after the one before
  * @param disorderSeconds      how far the sensor's parts may be out of their own order

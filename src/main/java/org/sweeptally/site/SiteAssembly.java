@@ -26,7 +26,10 @@ final class SiteAssembly {
     /** The default apron lets neighbours run this far apart, at the largest speed, twice over. */
     private static final double APRON_SECONDS = 10;
 
-    /** The default grid of unseen objects has so many cells along the longer side of a region, but none below a side of 25 m. */
+    /**
+     * The default grid of unseen objects has so many cells along the longer side of a region, but none below a side of
+     * 25 m.
+     */
     private static final double CELLS_ALONG = 48;
 
     private static final double LEAST_DEFAULT_CELL_METRES = 25;
@@ -74,7 +77,8 @@ final class SiteAssembly {
             double apron,
             OptionalDouble cell) {
         int faultsBefore = faults.size();
-        List<RegionDraft> drafts = fields.required("regions", "a GeoJSON file or a mapping of regions' names to polygons")
+        List<RegionDraft> drafts = fields.required(
+                        "regions", "a GeoJSON file or a mapping of regions' names to polygons")
                 .map(node -> RegionsReader.read(node, files, faults))
                 .orElse(List.of());
         RegionChecks checks = new RegionChecks(faults);
@@ -103,7 +107,10 @@ final class SiteAssembly {
         } catch (DateTimeException | ArithmeticException e) {
             // Told below, like everything else that is no time.
         }
-        faults.add(node.get().at(), node.get().shown(), "must be a time such as 2031-05-01T05:00:00Z, at most six decimals");
+        faults.add(
+                node.get().at(),
+                node.get().shown(),
+                "must be a time such as 2031-05-01T05:00:00Z, at most six decimals");
         return OptionalLong.empty();
     }
 
@@ -118,21 +125,22 @@ final class SiteAssembly {
 
     private UnseenSettings unseen(Fields fields, double lifetimeSeconds) {
         double births = fields.number("birthsPerSquareKilometrePerHour", DENSITY);
-        double outside = fields.number("outsidePerSquareKilometre", DENSITY, births * lifetimeSeconds / SECONDS_PER_HOUR);
+        double steady = births * lifetimeSeconds / SECONDS_PER_HOUR;
+        double outside = fields.number("outsidePerSquareKilometre", DENSITY, steady);
         double initial = fields.number("initialPerSquareKilometre", DENSITY, outside);
         if (births == 0 && outside == 0 && initial == 0) {
             faults.add(
                     fields.at("birthsPerSquareKilometrePerHour"),
                     "0",
-                    "must be more than 0 where none are outside and none at the beginning: no object could ever be found");
+                    "must be more than 0 where none are outside and none at the beginning: nothing could be found");
         }
         return new UnseenSettings(births, outside, initial);
     }
 
     private ThresholdSettings thresholds(Fields fields) {
         double least = FilterSettings.RECYCLING_BELOW;
-        double ending = fields.number(
-                "ending", new Allowed(Numbers.shortest(least) + " or more and less than 1", x -> x >= least && x < 1), DEFAULT_ENDING);
+        Allowed allowed = new Allowed(Numbers.shortest(least) + " or more and less than 1", x -> x >= least && x < 1);
+        double ending = fields.number("ending", allowed, DEFAULT_ENDING);
         double confirming = fields.number("confirming", Allowed.PROBABILITY, DEFAULT_CONFIRMING);
         if (confirming <= ending) {
             faults.add(

@@ -6,8 +6,8 @@ import org.sweeptally.site.Node.Position;
 
 /**
  * Reads a site's settings: a YAML file, with its regions in a GeoJSON file (RFC 7946) beside it or written out in it.
- * Everything that is wrong is found at once. A number must be finite; a key that is not known is a fault, since a slip in
- * a key would leave a default standing without a word.
+ * Everything that is wrong is found at once. A number must be finite; a key that is not known is a fault, since a slip
+ * in a key would leave a default standing without a word.
  */
 public final class SiteReader {
 
@@ -24,8 +24,8 @@ public final class SiteReader {
     }
 
     /**
-     * Reads settings that stand alone, their polygons written out in them, such as {@link EffectiveSettings#text} makes.
-     * Their faults name the file "settings".
+     * Reads settings that stand alone, their polygons written out in them, such as {@link EffectiveSettings#text}
+     * makes. Their faults name the file "settings".
      */
     public static SiteResult readText(String text) {
         Faults faults = new Faults();

@@ -53,7 +53,8 @@ final class TreeReader {
             return Optional.of(node);
         } catch (JsonProcessingException e) {
             int line = e.getLocation() == null ? 0 : Math.max(0, e.getLocation().getLineNr());
-            faults.add(new Position(file, line, ""), "", "is not " + formatName + ": " + oneLine(e.getOriginalMessage()));
+            String wrong = oneLine(e.getOriginalMessage());
+            faults.add(new Position(file, line, ""), "", "is not " + formatName + ": " + wrong);
             return Optional.empty();
         } catch (IOException e) {
             throw new IllegalStateException("reading a text in memory failed", e);
@@ -103,8 +104,8 @@ final class TreeReader {
     }
 
     /**
-     * Parsers explain over several lines, with extracts indented: what is not indented says it. What follows about their
-     * own insides helps nobody.
+     * Parsers explain over several lines, with extracts indented: what is not indented says it. What follows about
+     * their own insides helps nobody.
      */
     private static String oneLine(String message) {
         return message.lines()

@@ -174,8 +174,8 @@ class GeoPolygonTest {
                     int toColumn = column + step[1];
                     if (toRow <= SIDE && toColumn >= 0 && toColumn <= SIDE) {
                         for (int i = 0; i < 8; i++) {
-                            addWithNeighbours(
-                                    between(corners[row][column], corners[toRow][toColumn], random.nextDouble()), places);
+                            LatLon to = corners[toRow][toColumn];
+                            addWithNeighbours(between(corners[row][column], to, random.nextDouble()), places);
                         }
                     }
                 }

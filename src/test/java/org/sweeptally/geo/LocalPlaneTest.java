@@ -72,7 +72,9 @@ class LocalPlaneTest {
         }
     }
 
-    /** How far the ellipsoid falls away from the plane along the parallel of 52 N, and how far the parallel bends north. */
+    /**
+     * How far the ellipsoid falls away from the plane along the parallel of 52 N, and how far the parallel bends north.
+     */
     @ParameterizedTest
     @CsvSource({
         "1000, -.07823, 5e-6, .100, 5e-4",
@@ -92,7 +94,11 @@ class LocalPlaneTest {
 
     /** Lengths of a degree by the radii of curvature, computed independently. */
     @ParameterizedTest
-    @CsvSource({"52, 111267.353293, 68678.0160793", "55, 111323.530176, 63994.1292977", "0, 110574.275822, 111319.490793"})
+    @CsvSource({
+        "52, 111267.353293, 68678.0160793",
+        "55, 111323.530176, 63994.1292977",
+        "0, 110574.275822, 111319.490793"
+    })
     void aDegreeIsAsLongAsItShouldBe(double latitude, double north, double east) {
         LocalPlane plane = new LocalPlane(new LatLon(latitude, 4));
         double step = 1e-3;
@@ -103,7 +109,10 @@ class LocalPlaneTest {
         assertThat(de / step).isCloseTo(east, within(1e-4));
     }
 
-    /** Karney 2013, "Algorithms for geodesics", Journal of Geodesy 87: 43-55, from memory: the oracle is the one we think. */
+    /**
+     * Karney 2013, "Algorithms for geodesics", Journal of Geodesy 87: 43-55, from memory: the oracle is the one we
+     * think.
+     */
     @Test
     void theOracleGivesThePublishedGeodesics() {
         GeodesicData direct = Geodesic.WGS84.Direct(40, 0, 30, 10_000_000);

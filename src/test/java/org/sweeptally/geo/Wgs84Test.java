@@ -21,7 +21,9 @@ class Wgs84Test {
         assertThat((2 * a + Wgs84.SEMI_MINOR_AXIS_METRES) / 3).isCloseTo(6371008.7714, within(1e-4));
     }
 
-    /** IOGP Guidance Note 373-7-2, method 9602: the geographic coordinates from memory, the geocentric ones as printed. */
+    /**
+     * IOGP Guidance Note 373-7-2, method 9602: the geographic coordinates from memory, the geocentric ones as printed.
+     */
     @Test
     void theExampleOfEpsg9602ComesOut() {
         LatLon place = new LatLon(53 + 48 / 60.0 + 33.820 / 3600, 2 + 7 / 60.0 + 46.380 / 3600);

@@ -64,7 +64,9 @@ class EffectiveSettingsTest {
         assertThat(site.fromMicros()).isEmpty();
         assertThat(site.bounds())
                 .isEqualTo(new BoundSettings(5, 20_000, 50_000, 200_000, 1000, 20_000, 64L << 20, 60, 200));
-        assertThat(site.sensors()).extracting(SensorSettings::name).containsExactly("north-shore", "pilot-house", "south-shore");
+        assertThat(site.sensors())
+                .extracting(SensorSettings::name)
+                .containsExactly("north-shore", "pilot-house", "south-shore");
         assertThat(site.sensor("north-shore").orElseThrow().silentSeconds()).isEqualTo(10);
         assertThat(valid(SiteReader.readText(EffectiveSettings.text(site).replaceAll("(?m)^thresholds:\n.*\n.*\n", "")))
                         .thresholds())
@@ -86,7 +88,8 @@ class EffectiveSettingsTest {
         String text = EffectiveSettings.text(estuary)
                 .replaceFirst("position: .*", "roams: roams.geojson");
         Files.writeString(folder.resolve("site.yaml"), text);
-        String polygon = "{\"type\": \"Polygon\", \"coordinates\": [[[-33.5, 44], [-33.4, 44], [-33.4, 44.1], [-33.5, 44]]]}";
+        String polygon =
+                "{\"type\": \"Polygon\", \"coordinates\": [[[-33.5, 44], [-33.4, 44], [-33.4, 44.1], [-33.5, 44]]]}";
         GeoPolygon expected = new GeoPolygon(
                 List.of(new LatLon(44, -33.5), new LatLon(44, -33.4), new LatLon(44.1, -33.4)), List.of());
         String feature = "{\"type\": \"Feature\", \"properties\": null, \"geometry\": " + polygon + "}";

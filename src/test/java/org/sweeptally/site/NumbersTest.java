@@ -15,7 +15,8 @@ class NumbersTest {
 
     @ParameterizedTest
     @CsvSource({
-        "3, 3", "0.1, 0.1", "-33.525, -33.525", "1e6, 1000000", "1e15, 1000000000000000", "1e16, 1E+16", "1e-9, 0.000000001",
+        "3, 3", "0.1, 0.1", "-33.525, -33.525", "1e6, 1000000", "1e15, 1000000000000000", "1e16, 1E+16",
+        "1e-9, 0.000000001",
         "1e-300, 1E-300", "0, 0", "4.9e-324, 4.9E-324", "1.7976931348623157e308, 1.7976931348623157E+308"
     })
     void aNumberIsWrittenAsOneWould(double value, String text) {
@@ -63,7 +64,9 @@ class NumbersTest {
     }
 
     @ParameterizedTest
-    @ValueSource(strings = {"", "NaN", ".nan", ".inf", "-.inf", "Infinity", "1e999", "0x10", "1_000", "1:30", "1,5", "3 m", "1e", "."})
+    @ValueSource(
+            strings = {"", "NaN", ".nan", ".inf", "-.inf", "Infinity", "1e999", "0x10", "1_000",
+                "1:30", "1,5", "3 m", "1e", "."})
     void whatIsNoDecimalNumberIsNone(String text) {
         assertThat(Numbers.parse(text)).isEmpty();
     }
