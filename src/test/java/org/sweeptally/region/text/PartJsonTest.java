@@ -170,6 +170,14 @@ class PartJsonTest {
     }
 
     @Test
+    void ofDetectionsGivenTwiceTheFirstAreCounted() {
+        String one = "{\"latitude\":1,\"longitude\":1}";
+        Intake intake = read("{" + HEAD + ",\"detections\":[" + one + "],\"detections\":[" + one + "," + one + "]}");
+        assertThat(intake.body().orElseThrow().getDetectionsSent()).isEqualTo(1);
+        assertThat(intake.reject().orElseThrow().getWhole()).isTrue();
+    }
+
+    @Test
     void aPartNeedsItsSensorAndItsTime() {
         Intake noSensor = read("{\"scanTime\":\"2031-05-01T04:00:42.5Z\"}");
         assertThat(noSensor.body()).isEmpty();
