@@ -1,5 +1,6 @@
 package org.sweeptally.region;
 
+import java.math.BigDecimal;
 import java.time.Instant;
 
 /** Times in microseconds since 1970-01-01T00:00:00Z, with one before all others and one after all others. */
@@ -51,6 +52,6 @@ final class Micros {
 
     /** Seconds as a sentence names them: no more than 6 decimals, and no zeros at their end. */
     static String secondsText(long micros) {
-        return java.math.BigDecimal.valueOf(micros, 6).stripTrailingZeros().toPlainString() + " s";
+        return BigDecimal.valueOf(micros, 6).stripTrailingZeros().toPlainString() + " s";
     }
 }

@@ -51,6 +51,7 @@ final class PartArrivals {
         SensorOrder.Verdict verdict = order.judge(body, logTimeMicros);
         if (verdict instanceof SensorOrder.Repeat) {
             state.counters.add(RegionCounters.Name.REPEATS);
+            state.counters.add(RegionCounters.Name.DETECTIONS_REPEATED, body.getPart().getDetections().size());
         } else if (verdict instanceof SensorOrder.Refused refused) {
             state.counters.add(counterOf(refused.reason()));
             out.reject(Rejects.whole(state.region, entry, refused.reason(), refused.sentence()));

@@ -159,10 +159,11 @@ public final class PartRouter {
             return null;
         }
         Collections.sort(indexes);
-        String sentence = "has " + sorted.beyondReach.size() + " detections beyond the sensor's reach of "
-                + sensor.reachMetres() + " m and " + sorted.outside.size()
-                + " outside every region and its apron; rejectOutside asks to say so";
-        boolean all = indexes.size() == ScanParts.partOf(entry).getDetections().size();
+        int sent = ScanParts.partOf(entry).getDetections().size();
+        String sentence = "has " + sorted.beyondReach.size() + " of " + sent + " detections beyond the sensor's reach of "
+                + sensor.reachMetres() + " m, and " + sorted.outside.size()
+                + " more outside every region and its apron; rejectOutside asks to say so";
+        boolean all = indexes.size() == sent;
         return Rejects.some(null, entry, all, RejectReason.OUTSIDE, sentence, indexes);
     }
 }

@@ -14,6 +14,7 @@ public final class RegionCounters {
         ENTRIES,
         PARTS,
         REPEATS,
+        DETECTIONS_REPEATED,
         CONFLICTS,
         LATE,
         SCAN_CLOSED,

@@ -1,6 +1,7 @@
 package org.sweeptally.region;
 
 import java.util.ArrayList;
+import java.util.Comparator;
 import java.util.List;
 import java.util.Optional;
 import java.util.function.Function;
@@ -117,7 +118,7 @@ final class ScanConversion {
 
     private static List<Detection> ordered(List<Detection> detections) {
         return detections.stream()
-                .sorted(java.util.Comparator.comparingInt(Detection::getIndex))
+                .sorted(Comparator.comparingInt(Detection::getIndex))
                 .toList();
     }
 

@@ -100,7 +100,7 @@ class PartRouterTest {
         assertThat(told.reject().getReasons().get(0).getIndexes()).containsExactly(1, 2);
         assertThat(told.reject().getWhole()).isFalse();
         assertThat(told.reject().getSentence())
-                .contains("1 detections beyond the sensor's reach of 6000.0 m and 1 outside every region");
+                .contains("has 1 of 3 detections beyond the sensor's reach of 6000.0 m, and 1 more outside every region");
         assertThat(new PartRouter(TestSites.rejectingOutside(site(NORTH))).route(part("north-shore", 1).sees(0, 0).entry())
                 .reject()).isNull();
     }

@@ -11,10 +11,12 @@ import org.sweeptally.event.Count;
 import org.sweeptally.event.Detection;
 import org.sweeptally.event.End;
 import org.sweeptally.event.EndWhy;
+import org.sweeptally.event.FindingKind;
 import org.sweeptally.event.GeodeticFix;
 import org.sweeptally.event.Picture;
 import org.sweeptally.event.Track;
 import org.sweeptally.geo.LatLon;
+import org.sweeptally.site.BoundSettings;
 import org.sweeptally.site.SensorSettings;
 
 /** What is published of a filter's state, and when. */
@@ -147,6 +149,20 @@ class PublishingTest {
         seenNothing(rig, 7, 40);
         List<Picture> last = rig.out.pictures.get(key);
         assertThat(last.get(last.size() - 1)).isNull();
+    }
+
+    @Test
+    void whoIsPushedOutByTheBoundOnComponentsIsEndedForThatAndTheBoundIsAFinding() {
+        Rig rig = Rig.with(TestSites.withBounds(TestSites.site(1, NORTH), b -> new BoundSettings(
+                b.gateSigmas(), 1, b.unseenTerms(), b.exactAssociationSteps(), b.propagationSweeps(),
+                b.detectionsPerPart(), b.waitingBytes(), b.clockAheadSeconds(), b.snapshotScans())));
+        seen(rig, 1, 6, 300, -400);
+        seen(rig, 7, 20, -900, 800);
+        assertThat(rig.out.ends).hasSize(1);
+        assertThat(rig.out.ends.get(0).getWhy()).isEqualTo(EndWhy.BOUND);
+        assertThat(rig.out.births).hasSize(2);
+        assertThat(rig.out.findingKinds()).contains(FindingKind.BOUND_REACHED);
+        assertThat(rig.out.findings.get(0).getSubject()).isEqualTo("components");
     }
 
     @Test
