@@ -1,0 +1,79 @@
+package org.sweeptally.cli;
+
+import java.io.BufferedWriter;
+import java.io.Closeable;
+import java.io.IOException;
+import java.io.UncheckedIOException;
+import java.nio.file.FileAlreadyExistsException;
+import java.nio.file.Files;
+import java.nio.file.Path;
+import java.util.ArrayList;
+import java.util.List;
+import org.apache.avro.specific.SpecificRecordBase;
+import org.sweeptally.region.text.RecordJson;
+
+/** The files that a dry run writes, one record a line. */
+final class RecordFiles implements Closeable {
+
+    private final List<BufferedWriter> all = new ArrayList<>();
+    private final BufferedWriter tracks;
+    private final BufferedWriter births;
+    private final BufferedWriter ends;
+    private final BufferedWriter counts;
+    private final BufferedWriter rejects;
+
+    RecordFiles(Path folder) throws IOException {
+        try {
+            Files.createDirectories(folder);
+        } catch (FileAlreadyExistsException e) {
+            throw new CommandFailedException(folder + ": is a file, and a folder is needed for the records");
+        }
+        tracks = open(folder, "tracks.ndjson");
+        births = open(folder, "births.ndjson");
+        ends = open(folder, "ends.ndjson");
+        counts = open(folder, "counts.ndjson");
+        rejects = open(folder, "rejects.ndjson");
+    }
+
+    private BufferedWriter open(Path folder, String name) throws IOException {
+        BufferedWriter writer = Files.newBufferedWriter(folder.resolve(name));
+        all.add(writer);
+        return writer;
+    }
+
+    void track(SpecificRecordBase track) {
+        line(tracks, track);
+    }
+
+    void birth(SpecificRecordBase birth) {
+        line(births, birth);
+    }
+
+    void end(SpecificRecordBase end) {
+        line(ends, end);
+    }
+
+    void count(SpecificRecordBase count) {
+        line(counts, count);
+    }
+
+    void reject(SpecificRecordBase reject) {
+        line(rejects, reject);
+    }
+
+    private static void line(BufferedWriter writer, SpecificRecordBase record) {
+        try {
+            writer.write(RecordJson.line(record));
+            writer.write('\n');
+        } catch (IOException e) {
+            throw new UncheckedIOException(e);
+        }
+    }
+
+    @Override
+    public void close() throws IOException {
+        for (BufferedWriter writer : all) {
+            writer.close();
+        }
+    }
+}

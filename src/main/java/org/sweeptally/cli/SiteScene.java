@@ -1,0 +1,96 @@
+package org.sweeptally.cli;
+
+import java.util.List;
+import java.util.Optional;
+import org.sweeptally.geo.LocalPlane;
+import org.sweeptally.geo.PlaneArea;
+import org.sweeptally.geo.PlanePoint;
+import org.sweeptally.model.Look;
+import org.sweeptally.site.RegionSettings;
+import org.sweeptally.site.SensorSettings;
+import org.sweeptally.site.Site;
+
+/** A region with its sensors in its plane, as a forecast needs it. A sensor that moves is taken to be in the middle. */
+final class SiteScene {
+
+    /** Points along a side of the raster on which shares of the region and a typical place are sought. */
+    private static final int RASTER = 41;
+
+    private final Site site;
+    private final RegionSettings region;
+    private final LocalPlane plane;
+    private final PlaneArea core;
+
+    SiteScene(Site site, RegionSettings region) {
+        this.site = site;
+        this.region = region;
+        this.plane = new LocalPlane(region.core().middle());
+        this.core = PlaneArea.of(region.core(), plane);
+    }
+
+    Site site() {
+        return site;
+    }
+
+    RegionSettings region() {
+        return region;
+    }
+
+    PlaneArea core() {
+        return core;
+    }
+
+    /** Sensors that can see any of the region's core, by name. */
+    List<SensorSettings> sensors() {
+        return site.sensors().stream().filter(sensor -> shareWithinReach(sensor) > 0).toList();
+    }
+
+    PlanePoint positionOf(SensorSettings sensor) {
+        return sensor.position().map(plane::toPlane).orElse(new PlanePoint(0, 0));
+    }
+
+    Look look(SensorSettings sensor) {
+        return new Look(sensor.model(), positionOf(sensor), Optional.empty(), core, region.apronMetres());
+    }
+
+    /** Share of the core's area that a sensor reaches, 0 to 1. */
+    double shareWithinReach(SensorSettings sensor) {
+        Look look = look(sensor);
+        int inside = 0;
+        int reached = 0;
+        for (int i = 0; i < RASTER * RASTER; i++) {
+            PlanePoint point = rasterPoint(i);
+            if (core.contains(point.eastMetres(), point.northMetres())) {
+                inside++;
+                reached += look.probabilityOfDetection(point.eastMetres(), point.northMetres()) > 0 ? 1 : 0;
+            }
+        }
+        return inside == 0 ? 0 : (double) reached / inside;
+    }
+
+    /** The place nearest to the middle that some sensor sees; empty if none sees any of the core. */
+    Optional<PlanePoint> typicalPlace() {
+        Optional<PlanePoint> best = Optional.empty();
+        double least = Double.POSITIVE_INFINITY;
+        List<Look> looks = sensors().stream().map(this::look).toList();
+        for (int i = 0; i < RASTER * RASTER; i++) {
+            PlanePoint point = rasterPoint(i);
+            double square = point.eastMetres() * point.eastMetres() + point.northMetres() * point.northMetres();
+            boolean seen = core.contains(point.eastMetres(), point.northMetres()) && looks.stream()
+                    .anyMatch(look -> look.probabilityOfDetection(point.eastMetres(), point.northMetres()) > 0);
+            if (seen && square < least) {
+                least = square;
+                best = Optional.of(point);
+            }
+        }
+        return best;
+    }
+
+    private PlanePoint rasterPoint(int i) {
+        double u = (i % RASTER + 0.5) / RASTER;
+        double v = (i / RASTER + 0.5) / RASTER;
+        return new PlanePoint(
+                core.minEast() + u * (core.maxEast() - core.minEast()),
+                core.minNorth() + v * (core.maxNorth() - core.minNorth()));
+    }
+}
