@@ -15,9 +15,6 @@ import org.sweeptally.site.Site;
 /** One revision of the settings, as one region needs it. */
 final class RegionRules {
 
-    private static final double SQUARE_METRES_PER_SQUARE_KILOMETRE = 1e6;
-    private static final double SECONDS_PER_HOUR = 3600;
-
     private final SettingsBody body;
     private final Site site;
     private final RegionArea area;
@@ -102,22 +99,6 @@ final class RegionRules {
     }
 
     FilterSettings filterSettings() {
-        BoundSettings bounds = site.bounds();
-        return new FilterSettings(
-                site.motion().accelerationNoise(),
-                site.motion().speedSigmaMetresPerSecond(),
-                site.lifetimeSeconds(),
-                site.unseen().birthsPerSquareKilometrePerHour() / SQUARE_METRES_PER_SQUARE_KILOMETRE / SECONDS_PER_HOUR,
-                site.unseen().outsidePerSquareKilometre() / SQUARE_METRES_PER_SQUARE_KILOMETRE,
-                site.unseen().initialPerSquareKilometre() / SQUARE_METRES_PER_SQUARE_KILOMETRE,
-                site.thresholds().confirming(),
-                site.thresholds().ending(),
-                FilterSettings.RECYCLING_BELOW,
-                bounds.gateSigmas(),
-                area.settings().unseenCellMetres(),
-                bounds.components(),
-                bounds.unseenTerms(),
-                bounds.exactAssociationSteps(),
-                bounds.propagationSweeps());
+        return site.filterSettings(area.settings());
     }
 }

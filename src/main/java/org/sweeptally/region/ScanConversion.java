@@ -18,7 +18,6 @@ import org.sweeptally.geo.LocalPlane;
 import org.sweeptally.geo.PlaneArea;
 import org.sweeptally.model.Look;
 import org.sweeptally.model.LookCoverage;
-import org.sweeptally.model.SensorModel;
 import org.sweeptally.site.SensorSettings;
 
 /**
@@ -46,10 +45,8 @@ final class ScanConversion {
     }
 
     private Look look(ScanParts scan, SensorSettings sensor, LatLon position) {
-        SensorModel model = new SensorModel(
-                sensor.name(), sensor.reachMetres(), sensor.detectionProbability(), sensor.clutterPerScan());
         Optional<LookCoverage> coverage = spoken(scan, Part::getCoverage).map(c -> coverage(c, position));
-        return new Look(model, area.plane().toPlane(position), coverage, area.core(), area.apronMetres());
+        return new Look(sensor.model(), area.plane().toPlane(position), coverage, area.core(), area.apronMetres());
     }
 
     /**

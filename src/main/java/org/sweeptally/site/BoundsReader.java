@@ -10,7 +10,7 @@ final class BoundsReader {
                 fields.number("gateSigmas", Allowed.from(1, 20), 5),
                 (int) fields.whole("components", 1, 10_000_000, 20_000),
                 (int) fields.whole("unseenTerms", 1, 10_000_000, 50_000),
-                fields.whole("exactAssociationSteps", 1, 1_000_000_000_000L, 200_000),
+                fields.whole("exactAssociationSteps", 1, 1_000_000_000_000L, 1_000_000),
                 (int) fields.whole("propagationSweeps", 1, 1_000_000, 1000),
                 (int) fields.whole("detectionsPerPart", 1, 10_000_000, 20_000),
                 fields.whole("waitingBytes", 1 << 20, 1L << 40, 64L << 20),

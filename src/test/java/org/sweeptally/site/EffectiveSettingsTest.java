@@ -63,7 +63,7 @@ class EffectiveSettingsTest {
         assertThat(site.rejectOutside()).isFalse();
         assertThat(site.fromMicros()).isEmpty();
         assertThat(site.bounds())
-                .isEqualTo(new BoundSettings(5, 20_000, 50_000, 200_000, 1000, 20_000, 64L << 20, 60, 200));
+                .isEqualTo(new BoundSettings(5, 20_000, 50_000, 1_000_000, 1000, 20_000, 64L << 20, 60, 200));
         assertThat(site.sensors())
                 .extracting(SensorSettings::name)
                 .containsExactly("north-shore", "pilot-house", "south-shore");
