@@ -143,10 +143,11 @@ class SilenceTest {
                 b.gateSigmas(), b.components(), b.unseenTerms(), b.exactAssociationSteps(), b.propagationSweeps(),
                 b.detectionsPerPart(), 2000, b.clockAheadSeconds(), b.snapshotScans())));
         int sent = 0;
-        while (rig.out.appended.isEmpty()) {
+        while (rig.out.appended.isEmpty() && sent < 100) {
             assertThat(rig.heartbeat(0).getWaitingBytes()).isLessThanOrEqualTo(2000);
             rig.apply(part("north-shore", ++sent).sees(0, 0));
         }
+        assertThat(rig.out.appended).hasSize(1);
         LogEntry asked = rig.out.appended.get(0);
         assertThat(asked.getBody()).isEqualTo(new SilentBody("south-shore", PassedOverWhy.WAITING_BOUND));
         rig.apply(part("north-shore", ++sent).sees(0, 0));
