@@ -36,25 +36,28 @@ final class Findings {
     }
 
     Finding missing(String sensor, long logTimeMicros, long number, long missing) {
-        return finding(FindingKind.SCANS_MISSING, sensor, logTimeMicros, missing, missing + (missing == 1 ? " scan" : " scans")
-                + " of sensor " + sensor + " before number " + number + " never came whole, or could not be used");
+        String scans = missing == 1 ? "1 scan" : missing + " scans";
+        return finding(FindingKind.SCANS_MISSING, sensor, logTimeMicros, missing, scans + " of sensor " + sensor
+                + " before number " + number + " never came whole, or could not be used");
     }
 
     Finding clockAhead(String sensor, long latestScanMicros, long horizonMicros, String waitsFor) {
         double seconds = Micros.toSeconds(latestScanMicros) - Micros.toSeconds(horizonMicros);
         return finding(FindingKind.CLOCK_AHEAD, sensor, latestScanMicros, seconds, "the clock of sensor " + sensor
-                + " seems to run ahead: its latest scan is " + seconds + " s ahead of the picture, which waits for sensor "
-                + waitsFor);
+                + " seems to run ahead: its latest scan is " + seconds
+                + " s ahead of the picture, which waits for sensor " + waitsFor);
     }
 
     Finding waitingBound(String sensor, long horizonMicros, long bytes, long bound) {
-        return finding(FindingKind.WAITING_BOUND, sensor, horizonMicros, bytes, bytes + " bytes wait for sensor " + sensor
+        return finding(FindingKind.WAITING_BOUND, sensor, horizonMicros, bytes, bytes
+                + " bytes wait for sensor " + sensor
                 + ", more than waitingBytes allows (" + bound + "): it is to be passed over");
     }
 
     Finding boundReached(String bound, long logTimeMicros, long times) {
-        return finding(FindingKind.BOUND_REACHED, bound, logTimeMicros, times, "the bound on " + bound + " was reached, "
-                + times + (times == 1 ? " time" : " times") + " so far");
+        String often = times == 1 ? "1 time" : times + " times";
+        return finding(FindingKind.BOUND_REACHED, bound, logTimeMicros, times, "the bound on " + bound
+                + " was reached, " + often + " so far");
     }
 
     private Finding finding(FindingKind kind, String subject, long timeMicros, double amount, String sentence) {

@@ -12,8 +12,8 @@ record Horizon(long micros, String waitsFor) {
 
     /**
      * The least promise of the sensors that hold the region. Sensors that are finished or passed over hold nothing. If
-     * all are finished nothing more will come. If none holds, and some are only passed over, the picture goes to the end
-     * of what has come and no further: any of them may come back.
+     * all are finished nothing more will come. If none holds, and some are only passed over, the picture goes to the
+     * end of what has come and no further: any of them may come back.
      *
      * @param heard             sensors that the settings in force know and the region hears, by name
      * @param latestWholeMicros greatest log time of all scans that were closed whole

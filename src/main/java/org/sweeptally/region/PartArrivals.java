@@ -130,8 +130,8 @@ final class PartArrivals {
     }
 
     /**
-     * The settings in force have changed: what is open of sensors that they no longer know cannot take effect. Their order
-     * stays, since what it says of parts that come too late must not depend on when they come.
+     * The settings in force have changed: what is open of sensors that they no longer know cannot take effect. Their
+     * order stays, since what it says of parts that come too late must not depend on when they come.
      */
     void dropUnknownSensors(MachineOutputs out) {
         for (SensorOrder order : List.copyOf(state.sensors.values())) {

@@ -19,9 +19,9 @@ import org.sweeptally.site.Site;
 
 /**
  * Finds the regions that a part concerns, and what each of them gets of it: the detections of its core and apron, with
- * their original indexes. A part that closes its scan, makes a promise or could not be used goes to every region that the
- * sensor can see any of, emptied of what does not concern it and whatever its coverage: it moves their horizons. Other
- * parts that concern nobody go nowhere. A pure function of the site and the part.
+ * their original indexes. A part that closes its scan, makes a promise or could not be used goes to every region that
+ * the sensor can see any of, emptied of what does not concern it and whatever its coverage: it moves their horizons.
+ * Other parts that concern nobody go nowhere. A pure function of the site and the part.
  */
 public final class PartRouter {
 
@@ -160,7 +160,8 @@ public final class PartRouter {
         }
         Collections.sort(indexes);
         int sent = ScanParts.partOf(entry).getDetections().size();
-        String sentence = "has " + sorted.beyondReach.size() + " of " + sent + " detections beyond the sensor's reach of "
+        String sentence = "has " + sorted.beyondReach.size() + " of " + sent
+                + " detections beyond the sensor's reach of "
                 + sensor.reachMetres() + " m, and " + sorted.outside.size()
                 + " more outside every region and its apron; rejectOutside asks to say so";
         boolean all = indexes.size() == sent;

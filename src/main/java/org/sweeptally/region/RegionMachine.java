@@ -23,14 +23,14 @@ import org.sweeptally.site.SensorSettings;
 import org.sweeptally.site.Site;
 
 /**
- * The machine of one region: a pure function from a state and an entry of the region's log to the next state and what is
- * to be published. Timed entries (scans, settings, what neighbours send) wait until the {@linkplain Horizon horizon} has
- * passed their log time and take effect in order of it; all others act on arrival and only move the horizon. So two logs
- * with the same events give the same published records, however the log interleaves its writers.
+ * The machine of one region: a pure function from a state and an entry of the region's log to the next state and what
+ * is to be published. Timed entries (scans, settings, what neighbours send) wait until the {@linkplain Horizon horizon}
+ * has passed their log time and take effect in order of it; all others act on arrival and only move the horizon. So two
+ * logs with the same events give the same published records, however the log interleaves its writers.
  *
  * <p>It is confined to one thread, and reads no clock, random source or hash order. An entry that the operator or the
- * program should never have written is an exception, after which the machine must not be used; whatever a sensor sends is
- * used, counted or rejected.
+ * program should never have written is an exception, after which the machine must not be used; whatever a sensor sends
+ * is used, counted or rejected.
  *
  * <p>This version of the machine has no neighbours: what they send waits its turn, is counted, and changes nothing.
  */
@@ -212,7 +212,8 @@ public final class RegionMachine {
         } else if (body instanceof EndedBody ending) {
             place = place(entry, WaitingRoom.Kind.ENDED, ending.getComponent().getObject());
         } else {
-            throw new IllegalArgumentException("the log of region " + state.region + " holds an entry that is none: " + body);
+            throw new IllegalArgumentException("the log of region " + state.region + " holds an entry that is none: "
+                    + body);
         }
         if (!state.waiting.add(place, WaitingRoom.Waiting.of(entry))) {
             state.counters.add(RegionCounters.Name.NEIGHBOUR_ENTRIES_REPEATED);
@@ -221,7 +222,8 @@ public final class RegionMachine {
 
     private WaitingRoom.Place place(LogEntry entry, WaitingRoom.Kind kind, String object) {
         if (entry.getLogTimeMicros() == null) {
-            throw new IllegalArgumentException("the log of region " + state.region + " holds a neighbour's entry, " + kind
+            throw new IllegalArgumentException("the log of region " + state.region + " holds a neighbour's entry, "
+                    + kind
                     + ", about " + object + " without a log time");
         }
         long when = Math.max(entry.getLogTimeMicros(), state.horizonMicros);
@@ -229,8 +231,8 @@ public final class RegionMachine {
     }
 
     /**
-     * Lets all that the horizon has passed take effect. The horizon goes step by step, since settings may bring a sensor
-     * that holds the region from there on; it never goes back.
+     * Lets all that the horizon has passed take effect. The horizon goes step by step, since settings may bring a
+     * sensor that holds the region from there on; it never goes back.
      */
     private void advance(MachineOutputs out) {
         long limit = limit();

@@ -53,7 +53,8 @@ final class RegionRules {
     RegionRules next(SettingsBody later, Function<String, Site> reader) {
         Site laterSite = reader.apply(later.getText());
         if (!area.isWhere(settingsOf(area.name(), laterSite, later))) {
-            throw new IllegalStateException("settings revision " + later.getRevision() + " change the polygon, the apron"
+            throw new IllegalStateException("settings revision " + later.getRevision()
+                    + " change the polygon, the apron"
                     + " or the unseen cells of region " + area.name() + ", which runs with those of revision "
                     + body.getRevision() + ": a running region stays where it is; give the new one another name");
         }

@@ -88,10 +88,12 @@ final class RegionState {
         return entries;
     }
 
-    /** @throws IllegalStateException where the state contradicts itself, or the horizon went back since the last check */
+    /**
+     * @throws IllegalStateException where the state contradicts itself, or the horizon went back since the last check
+     */
     void check() {
-        Invariant.holds(horizonMicros >= checkedHorizonMicros, "the horizon went back from %s to %s", checkedHorizonMicros,
-                horizonMicros);
+        Invariant.holds(horizonMicros >= checkedHorizonMicros, "the horizon went back from %s to %s",
+                checkedHorizonMicros, horizonMicros);
         checkedHorizonMicros = horizonMicros;
         waiting.check(horizonMicros);
         sensors.values().forEach(SensorOrder::check);

@@ -41,7 +41,10 @@ final class ScanConversion {
         return sensor.position()
                 .or(() -> spoken(scan, Part::getSensorPosition).map(ScanConversion::place))
                 .map(position -> new Scan(
-                        scan.sensor(), scan.scanTimeMicros(), look(scan, sensor, position), observations(scan, sensor, position)));
+                        scan.sensor(),
+                        scan.scanTimeMicros(),
+                        look(scan, sensor, position),
+                        observations(scan, sensor, position)));
     }
 
     private Look look(ScanParts scan, SensorSettings sensor, LatLon position) {

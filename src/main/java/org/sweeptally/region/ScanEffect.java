@@ -94,7 +94,8 @@ final class ScanEffect {
         Invariant.holds(Double.isFinite(mean.a1 + mean.a2 + mean.a3 + mean.a4), "the mean of %s is %s",
                 component.identity(), mean);
         DMatrix4x4 p = component.density().covariance;
-        Invariant.holds(Covariances.isSymmetric(p), "the covariance of %s is not symmetric: %s", component.identity(), p);
+        Invariant.holds(Covariances.isSymmetric(p), "the covariance of %s is not symmetric: %s", component.identity(),
+                p);
         Invariant.holds(Covariances.isPositive(p), "the covariance of %s is not positive semi-definite: %s",
                 component.identity(), p);
     }

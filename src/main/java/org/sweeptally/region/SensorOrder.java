@@ -15,8 +15,8 @@ import org.sweeptally.site.SensorSettings;
 
 /**
  * One sensor's own order: what it has sent, what it has promised, and whether its next part fits. Nothing here depends
- * on other sensors, so that it does not matter how the log interleaves them; the one exception, {@link #comeBack}, needs
- * an entry in the log that passed the sensor over.
+ * on other sensors, so that it does not matter how the log interleaves them; the one exception, {@link #comeBack},
+ * needs an entry in the log that passed the sensor over.
  */
 final class SensorOrder {
 
@@ -133,8 +133,9 @@ final class SensorOrder {
     }
 
     private String passedSentence(long logTimeMicros) {
-        return "comes after the picture had gone on without its sensor, which was passed over or not known: it takes effect at "
-                + Micros.text(logTimeMicros) + ", and the picture had come to " + Micros.text(passedUntilMicros);
+        return "comes after the picture had gone on without its sensor, which was passed over or not known: it takes"
+                + " effect at " + Micros.text(logTimeMicros) + ", and the picture had come to "
+                + Micros.text(passedUntilMicros);
     }
 
     private boolean isRestart(Part part) {
@@ -190,8 +191,8 @@ final class SensorOrder {
     }
 
     /**
-     * Takes note of a part that cannot be used, since the settings of its time no longer know the sensor: the sensor has
-     * gone on to it all the same, or the region would wait for ever for what it sent before.
+     * Takes note of a part that cannot be used, since the settings of its time no longer know the sensor: the sensor
+     * has gone on to it all the same, or the region would wait for ever for what it sent before.
      */
     List<Closed> goneOn(long scanTimeMicros, SensorSettings settings) {
         List<Closed> closed = new ArrayList<>();
@@ -290,7 +291,8 @@ final class SensorOrder {
     /** Throws where the state contradicts itself. */
     void check() {
         for (ScanParts scan : open.values()) {
-            Invariant.holds(scan.logTimeMicros() >= promiseMicros, "an open scan of sensor %s takes effect at %s, before"
+            Invariant.holds(scan.logTimeMicros() >= promiseMicros,
+                    "an open scan of sensor %s takes effect at %s, before"
                     + " its promise %s", sensor, scan.logTimeMicros(), promiseMicros);
             Remembered known = remembered.get(scan.scanTimeMicros());
             Invariant.holds(known != null && known.closing == null, "the open scan %s of sensor %s is not remembered as"

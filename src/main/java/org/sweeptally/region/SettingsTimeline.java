@@ -80,8 +80,8 @@ final class SettingsTimeline {
     }
 
     /**
-     * Forgets settings under which no scan can have begun that takes effect at the horizon or later. The last few stay in
-     * any case, so that what is said of a part that comes much too late does not depend on when it comes.
+     * Forgets settings under which no scan can have begun that takes effect at the horizon or later. The last few stay
+     * in any case, so that what is said of a part that comes much too late does not depend on when it comes.
      */
     void forgetBefore(long horizonMicros) {
         while (byFrom.headMap(inForceFromMicros).size() > PAST_REVISIONS) {

@@ -25,8 +25,8 @@ final class TickWatch {
     }
 
     /**
-     * Asks to pass a sensor over that has been quiet for its time, if by then every partition of the detections had been
-     * read to its end: what has not been read may hold its word.
+     * Asks to pass a sensor over that has been quiet for its time, if by then every partition of the detections had
+     * been read to its end: what has not been read may hold its word.
      */
     private void silence(SensorOrder sensor, MachineOutputs out) {
         long quietSince = sensor.watch().quietSince(state.wallMicros);
@@ -42,7 +42,8 @@ final class TickWatch {
         boolean known = state.horizonMicros != Micros.BEFORE_ALL && state.horizonMicros != Micros.AFTER_ALL
                 && sensor.latestScanMicros() != Micros.BEFORE_ALL;
         long limit = Micros.plus(state.horizonMicros, Micros.ofSeconds(state.rules().bounds().clockAheadSeconds()));
-        boolean ahead = known && waitsFor != null && !waitsFor.equals(sensor.sensor()) && sensor.latestScanMicros() > limit;
+        boolean ahead = known && waitsFor != null && !waitsFor.equals(sensor.sensor())
+                && sensor.latestScanMicros() > limit;
         if (sensor.watch().clockAheadBegins(ahead)) {
             out.finding(findings.clockAhead(sensor.sensor(), sensor.latestScanMicros(), state.horizonMicros, waitsFor));
         }

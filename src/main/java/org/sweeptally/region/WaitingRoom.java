@@ -120,13 +120,14 @@ final class WaitingRoom {
         for (var entry : byPlace.entrySet()) {
             Place place = entry.getKey();
             Invariant.holds(before == null || before.compareTo(place) < 0, "%s waits before %s", before, place);
-            Invariant.holds(place.logTimeMicros() >= horizonMicros, "%s waits, and the horizon is %s", place, horizonMicros);
+            Invariant.holds(place.logTimeMicros() >= horizonMicros, "%s waits, and the horizon is %s", place,
+                    horizonMicros);
             sum += entry.getValue().bytes();
             count += entry.getValue().entries();
             before = place;
         }
-        Invariant.holds(sum == bytes && count == entries, "%s entries of %s bytes wait, and %s of %s were counted", count,
-                sum, entries, bytes);
+        Invariant.holds(sum == bytes && count == entries, "%s entries of %s bytes wait, and %s of %s were counted",
+                count, sum, entries, bytes);
     }
 
     void write(StateWriter out) {

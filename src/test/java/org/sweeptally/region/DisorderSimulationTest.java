@@ -72,7 +72,8 @@ class DisorderSimulationTest {
         }
         sums.remove(RegionCounters.Name.WAITING_BOUND.name());
         assertThat(sums).as("%s", sums).allSatisfy((name, sum) -> assertThat(sum).as(name).isPositive());
-        assertThat(sums).containsKeys(RejectReason.UNFINISHED.name(), RejectReason.PASSED.name(), RejectReason.LATE.name(),
+        assertThat(sums).containsKeys(RejectReason.UNFINISHED.name(), RejectReason.PASSED.name(),
+                RejectReason.LATE.name(),
                 RejectReason.NO_SENSOR_POSITION.name(), RejectReason.REPEAT_CONFLICT.name());
     }
 
@@ -88,7 +89,8 @@ class DisorderSimulationTest {
 
     private static List<LogEntry> log(TestSites.Reader reader, Random random) {
         SensorSettings north = TestSites.sensor("north-shore", 0, 2500);
-        SensorSettings south = TestSites.withDisorder(TestSites.withSweep(TestSites.sensor("south-shore", 0, -2500), 0.6), 2);
+        SensorSettings south = TestSites.withDisorder(TestSites.withSweep(TestSites.sensor("south-shore", 0, -2500),
+                0.6), 2);
         SensorSettings boat = TestSites.withLeastInterval(TestSites.moving("pilot-boat"), 0.3);
         List<LogEntry> log = new ArrayList<>();
         int revision = 0;
@@ -104,12 +106,14 @@ class DisorderSimulationTest {
                         List<SensorSettings> some = new ArrayList<>(List.of(north, south, boat));
                         some.remove(random.nextInt(6) % 5 % 3);
                         Site site = TestSites.withThresholds(
-                                TestSites.site(++revision, some.toArray(SensorSettings[]::new)), 0.6 + 0.3 * random.nextDouble(), 0.2);
+                                TestSites.site(++revision, some.toArray(SensorSettings[]::new)), 0.6
+                                        + 0.3 * random.nextDouble(), 0.2);
                         Double from = random.nextBoolean() ? null : Double.valueOf(time + 3 * random.nextDouble());
                         log.add(Entries.settings(reader.text(site), site, from));
                     }
                 }
-                case 3 -> log.add(Entries.silent(List.of("north-shore", "south-shore", "pilot-boat").get(random.nextInt(3))));
+                case 3 -> log.add(Entries.silent(List.of("north-shore", "south-shore", "pilot-boat")
+                        .get(random.nextInt(3))));
                 case 4 -> log.add(neighbour(random, time));
                 case 5, 6 -> repeat(log, random);
                 default -> log.add(part(random, time, i));
@@ -126,7 +130,8 @@ class DisorderSimulationTest {
     /** An entry once more, but for older settings. */
     private static void repeat(List<LogEntry> log, Random random) {
         LogEntry entry = log.isEmpty() ? Entries.tick(0) : log.get(Math.max(0, log.size() - 1 - random.nextInt(12)));
-        boolean latest = log.stream().filter(e -> e.getBody() instanceof SettingsBody).reduce(entry, (a, b) -> b).equals(entry);
+        boolean latest = log.stream().filter(e -> e.getBody() instanceof SettingsBody).reduce(entry, (a, b) -> b)
+                .equals(entry);
         if (latest || !(entry.getBody() instanceof SettingsBody)) {
             log.add(entry);
         }

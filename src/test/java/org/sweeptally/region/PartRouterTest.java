@@ -39,7 +39,8 @@ class PartRouterTest {
     @Test
     void aRegionGetsTheDetectionsOfItsCoreAndApronWithTheirOwnIndexes() {
         PartRouter router = new PartRouter(site(NORTH));
-        LogEntry entry = part("north-shore", 1).sees(-3000, 0).sees(-200, 0).sees(200, 0).sees(3000, 0).sees(500, 0).entry();
+        LogEntry entry = part("north-shore", 1).sees(-3000, 0).sees(-200, 0).sees(200, 0).sees(3000, 0).sees(500, 0)
+                .entry();
         PartRouter.Routed routed = router.route(entry);
         assertThat(routed.byRegion()).containsOnlyKeys("east", "west");
         assertThat(indexes(routed, "west")).containsExactly(0, 1, 2);
@@ -64,7 +65,8 @@ class PartRouterTest {
 
     @Test
     void theReachTouchesTheApronToo() {
-        assertThat(new PartRouter(site(TestSites.withReach(NORTH, 699))).regionsSeenBy("north-shore")).containsExactly("west");
+        assertThat(new PartRouter(site(TestSites.withReach(NORTH, 699))).regionsSeenBy("north-shore"))
+                .containsExactly("west");
         assertThat(new PartRouter(site(TestSites.withReach(NORTH, 711))).regionsSeenBy("north-shore"))
                 .containsExactly("east", "west");
     }
@@ -74,7 +76,8 @@ class PartRouterTest {
         PartRouter router = new PartRouter(site(NORTH));
         assertThat(router.route(part("north-shore", 1).open().entry()).byRegion()).isEmpty();
         assertThat(router.route(part("north-shore", 1).open().sees(-1000, 3000).entry()).byRegion()).isEmpty();
-        assertThat(router.route(part("north-shore", 1).open().sees(-3000, 0).entry()).byRegion()).containsOnlyKeys("west");
+        assertThat(router.route(part("north-shore", 1).open().sees(-3000, 0).entry()).byRegion())
+                .containsOnlyKeys("west");
     }
 
     @Test
@@ -100,8 +103,10 @@ class PartRouterTest {
         assertThat(told.reject().getReasons().get(0).getIndexes()).containsExactly(1, 2);
         assertThat(told.reject().getWhole()).isFalse();
         assertThat(told.reject().getSentence())
-                .contains("has 1 of 3 detections beyond the sensor's reach of 6000.0 m, and 1 more outside every region");
-        assertThat(new PartRouter(TestSites.rejectingOutside(site(NORTH))).route(part("north-shore", 1).sees(0, 0).entry())
+                .contains("has 1 of 3 detections beyond the sensor's reach of 6000.0 m")
+                .contains("and 1 more outside every region");
+        assertThat(new PartRouter(TestSites.rejectingOutside(site(NORTH))).route(part("north-shore", 1).sees(0, 0)
+                .entry())
                 .reject()).isNull();
     }
 
@@ -139,12 +144,14 @@ class PartRouterTest {
             double north = south + 50 + 3000 * random.nextDouble();
             GeoPolygon other = TestSites.rectangle(west, south, east, north);
             double distance = PolygonDistance.between(
-                    area.settings().core(), area.core(), other, org.sweeptally.geo.PlaneArea.of(other, area.plane()), area.plane());
+                    area.settings().core(), area.core(), other, org.sweeptally.geo.PlaneArea.of(other, area.plane()),
+                            area.plane());
             double across = Math.max(0, Math.max(west - 1000, -1000 - east));
             double along = Math.max(0, Math.max(south - 1000, -1000 - north));
             assertThat(distance)
                     .as("seed %s, rectangle %s", seed, i)
-                    .isCloseTo(Math.sqrt(across * across + along * along), org.assertj.core.api.Assertions.within(15.0));
+                    .isCloseTo(Math.sqrt(across * across + along * along),
+                            org.assertj.core.api.Assertions.within(15.0));
         }
     }
 

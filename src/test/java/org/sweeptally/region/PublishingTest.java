@@ -73,7 +73,8 @@ class PublishingTest {
             assertThat(here).isEqualTo(count.getTracks());
         }
         assertThat(List.of(tracks, births, ends))
-                .containsExactly((long) rig.out.tracks.size(), (long) rig.out.births.size(), (long) rig.out.ends.size());
+                .containsExactly((long) rig.out.tracks.size(), (long) rig.out.births.size(),
+                        (long) rig.out.ends.size());
         assertThat(rig.out.counts.stream().map(Count::getSequence).toList()).startsWith(1L, 2L, 3L).hasSize(30);
         Count first = rig.out.counts.get(0);
         assertThat(first.getMachineVersion()).isEqualTo(RegionMachine.MACHINE_VERSION);
@@ -140,7 +141,8 @@ class PublishingTest {
             rig.apply(part("north-shore", 1 + i / 8.0).sees(300, -400));
         }
         String key = TestSites.REGION + "/" + rig.out.births.get(0).getObject();
-        List<Long> times = rig.out.pictures.get(key).stream().map(p -> ((Track) p.getContent()).getTimeMicros()).toList();
+        List<Long> times = rig.out.pictures.get(key).stream().map(p -> ((Track) p.getContent()).getTimeMicros())
+                .toList();
         assertThat(times).hasSizeBetween(3, 5);
         for (int i = 1; i < times.size(); i++) {
             assertThat(times.get(i) - times.get(i - 1)).isGreaterThanOrEqualTo(1_000_000);
@@ -184,7 +186,8 @@ class PublishingTest {
     @Test
     void endOfInputClosesWhatIsOpenAndLetsAllTakeEffectInOrder() {
         Rig rig = Rig.with(NORTH, TestSites.sensor("south-shore", 0, -100));
-        rig.apply(part("north-shore", 3), part("north-shore", 9).open().sees(0, 0), part("north-shore", 9).part(1).open());
+        rig.apply(part("north-shore", 3), part("north-shore", 9).open().sees(0, 0), part("north-shore", 9).part(1)
+                .open());
         assertThat(rig.effects()).isEmpty();
         rig.apply(Entries.endOfInput());
         assertThat(rig.effects()).containsExactly(3.0, 9.0);

@@ -135,7 +135,8 @@ class ScanConversionTest {
         LogEntry second = part("north-shore", 1).part(1).sees(5, place).sees(2, place).entry();
         LogEntry first = part("north-shore", 1).part(0).open().sees(9, place).entry();
         List<Observation> observations = convert(sensor, second, first).observations();
-        assertThat(observations.stream().map(o -> o.part() + "-" + o.index()).toList()).containsExactly("0-9", "1-2", "1-5");
+        assertThat(observations.stream().map(o -> o.part() + "-" + o.index()).toList()).containsExactly("0-9", "1-2",
+                "1-5");
     }
 
     @Test
@@ -153,7 +154,8 @@ class ScanConversionTest {
     @Test
     void aMovingSensorThatDoesNotSayWhereItWasIsRejectedAndCountsNoMiss() {
         Rig rig = Rig.with(TestSites.moving("pilot-boat"));
-        rig.apply(part("pilot-boat", 1).seesOffset(0, 0), part("pilot-boat", 2).from(TestSites.MIDDLE).seesOffset(0, 0));
+        rig.apply(part("pilot-boat", 1).seesOffset(0, 0), part("pilot-boat", 2).from(TestSites.MIDDLE).seesOffset(0,
+                0));
         assertThat(rig.effects()).containsExactly(2.0);
         assertThat(rig.out.rejects).hasSize(1);
         assertThat(rig.out.rejects.get(0).getSentence()).contains("has no sensorPosition");
@@ -181,7 +183,8 @@ class ScanConversionTest {
         return new GeoPoint(TestSites.at(east, north).latitude(), TestSites.at(east, north).longitude(), null);
     }
 
-    private static LogEntry covering(Double from, Double to, Double fromAzimuth, Double toAzimuth, List<GeoPoint> area) {
+    private static LogEntry covering(Double from, Double to, Double fromAzimuth, Double toAzimuth,
+            List<GeoPoint> area) {
         LogEntry entry = part("north-shore", 1).entry();
         ScanParts.partOf(entry).setCoverage(new Coverage(from, to, fromAzimuth, toAzimuth, area));
         return entry;

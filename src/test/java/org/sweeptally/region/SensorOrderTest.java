@@ -56,8 +56,8 @@ class SensorOrderTest {
         assertThat(reject.getRegion()).isEqualTo(TestSites.REGION);
         assertThat(reject.getReasons().get(0).getIndexes()).containsExactly(0);
         assertThat(reject.getSentence())
-                .isEqualTo("part 0 of scan 2031-05-01T04:00:01Z of sensor north-shore came before with other content, and the"
-                        + " first stands");
+                .isEqualTo("part 0 of scan 2031-05-01T04:00:01Z of sensor north-shore came before with other content,"
+                        + " and the first stands");
     }
 
     @Test
@@ -116,7 +116,8 @@ class SensorOrderTest {
 
     @Test
     void aPromiseBeyondAnOpenScanClosesItWhole() {
-        Rig rig = rig().apply(part("north-shore", 1).open().sees(0, 0), part("north-shore", 1).part(1).open().nothingBefore(5));
+        Rig rig = rig().apply(part("north-shore", 1).open().sees(0, 0), part("north-shore", 1).part(1).open()
+                .nothingBefore(5));
         assertThat(rig.effects()).containsExactly(1.0);
     }
 
@@ -153,7 +154,8 @@ class SensorOrderTest {
     @Test
     void withDisorderAllowedTheNextScanClosesOnlyWhatIsEarlierByMore() {
         Rig rig = Rig.with(TestSites.withDisorder(NORTH, 1.5))
-                .apply(part("north-shore", 1).open().sees(0, 0), part("north-shore", 2).open(), part("north-shore", 2.5).open());
+                .apply(part("north-shore", 1).open().sees(0, 0), part("north-shore", 2).open(), part("north-shore", 2.5)
+                        .open());
         assertThat(rig.counted(RegionCounters.Name.SCANS_CLOSED_BY_NEXT)).isEqualTo(1);
         assertThat(rig.out.rejects).isEmpty();
     }
@@ -171,7 +173,8 @@ class SensorOrderTest {
 
     @Test
     void gapsInTheScanNumbersAreCountedAndFound() {
-        Rig rig = rig().apply(part("north-shore", 1).scan(17), part("north-shore", 2).scan(18), part("north-shore", 5).scan(21));
+        Rig rig = rig().apply(part("north-shore", 1).scan(17), part("north-shore", 2).scan(18), part("north-shore", 5)
+                .scan(21));
         assertThat(rig.counted(RegionCounters.Name.SCANS_MISSING)).isEqualTo(2);
         assertThat(rig.out.findingKinds()).containsExactly(FindingKind.SCANS_MISSING);
         assertThat(rig.out.findings.get(0).getAmount()).isEqualTo(2);

@@ -63,7 +63,8 @@ class SettingsEntriesTest {
         assertThat(rig.effects()).as("south-shore has not spoken").containsExactly(1.0);
         assertThat(rig.heartbeat(0).getHorizonMicros()).isEqualTo(Entries.micros(3));
         rig.apply(part("south-shore", 2));
-        assertThat(rig.out.reasons()).as("by the settings of its time it is nobody").containsExactly(RejectReason.UNKNOWN_SENSOR);
+        assertThat(rig.out.reasons()).as("by the settings of its time it is nobody")
+                .containsExactly(RejectReason.UNKNOWN_SENSOR);
         rig.apply(part("south-shore", 5));
         assertThat(rig.effects()).containsExactly(1.0, 4.0, 5.0);
     }
@@ -175,7 +176,8 @@ class SettingsEntriesTest {
     void aRegionDoesNotMoveUnderARunningMachine() {
         Rig rig = Rig.with(NORTH);
         Site moved = TestSites.site(
-                2, List.of(TestSites.region(TestSites.REGION, TestSites.rectangle(-1000, -2000, 2000, 2000))), List.of(NORTH));
+                2, List.of(TestSites.region(TestSites.REGION, TestSites.rectangle(-1000, -2000, 2000, 2000))),
+                        List.of(NORTH));
         assertThatThrownBy(() -> rig.apply(rig.settings(moved)))
                 .isInstanceOf(IllegalStateException.class)
                 .hasMessageContaining("settings revision 2 change the polygon")
@@ -186,7 +188,8 @@ class SettingsEntriesTest {
     void settingsThatDoNotKnowTheRegionAreRefused() {
         Rig rig = new Rig();
         Site other = TestSites.site(
-                1, List.of(TestSites.region("elsewhere", TestSites.rectangle(-1000, -2000, 2000, 2000))), List.of(NORTH));
+                1, List.of(TestSites.region("elsewhere", TestSites.rectangle(-1000, -2000, 2000, 2000))),
+                        List.of(NORTH));
         assertThatThrownBy(() -> rig.apply(rig.settings(other)))
                 .isInstanceOf(IllegalStateException.class)
                 .hasMessageContaining(TestSites.REGION)

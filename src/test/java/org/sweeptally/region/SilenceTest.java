@@ -14,9 +14,13 @@ import org.sweeptally.event.LogEntry;
 import org.sweeptally.event.PassedOverWhy;
 import org.sweeptally.event.RejectReason;
 import org.sweeptally.event.SilentBody;
+import org.sweeptally.site.BoundSettings;
 import org.sweeptally.site.SensorSettings;
+import org.sweeptally.site.Site;
 
-/** The picture goes on without a sensor only by an entry in the log, and that is asked for only when all has been read. */
+/**
+ * The picture goes on without a sensor only by an entry in the log, and that is asked for only when all has been read.
+ */
 class SilenceTest {
 
     private static final SensorSettings NORTH = TestSites.sensor("north-shore", 0, 0);
@@ -77,7 +81,8 @@ class SilenceTest {
 
     @Test
     void ticksThatStoodStillDoNotMakeASensorSilentThatHasJustSpoken() {
-        Rig rig = rig().apply(tick(100), mark(0, 1, 5000)).apply(part("north-shore", 1), part("south-shore", 1)).apply(tick(1000));
+        Rig rig = rig().apply(tick(100), mark(0, 1, 5000)).apply(part("north-shore", 1), part("south-shore", 1))
+                .apply(tick(1000));
         assertThat(rig.out.appended).isEmpty();
     }
 
@@ -111,7 +116,8 @@ class SilenceTest {
 
     @Test
     void anOpenScanOfASilentSensorIsUnfinished() {
-        Rig rig = rig().apply(part("south-shore", 1).open().sees(0, 0), part("north-shore", 1)).apply(silent("south-shore"));
+        Rig rig = rig().apply(part("south-shore", 1).open().sees(0, 0), part("north-shore", 1))
+                .apply(silent("south-shore"));
         assertThat(rig.out.reasons()).containsExactly(RejectReason.UNFINISHED);
         assertThat(rig.counted(RegionCounters.Name.SCANS_UNFINISHED)).isEqualTo(1);
         assertThat(rig.effects()).as("and counts no miss").containsExactly(1.0);
@@ -121,7 +127,8 @@ class SilenceTest {
 
     @Test
     void whenAllArePassedOverWhatHasComeTakesEffectAndNothingBeyondIsPassed() {
-        Rig rig = rig().apply(part("north-shore", 1), part("north-shore", 30)).apply(silent("south-shore"), silent("north-shore"));
+        Rig rig = rig().apply(part("north-shore", 1), part("north-shore", 30)).apply(silent("south-shore"),
+                silent("north-shore"));
         assertThat(rig.effects()).containsExactly(1.0, 30.0);
         Heartbeat heartbeat = rig.heartbeat(0);
         assertThat(heartbeat.getWaitsFor()).isNull();
@@ -139,7 +146,8 @@ class SilenceTest {
 
     @Test
     void atTheBoundOfWhatWaitsTheLaggardIsPassedOver() {
-        Rig rig = Rig.with(TestSites.withBounds(TestSites.site(1, NORTH, SOUTH), b -> new org.sweeptally.site.BoundSettings(
+        Site site = TestSites.site(1, NORTH, SOUTH);
+        Rig rig = Rig.with(TestSites.withBounds(site, b -> new BoundSettings(
                 b.gateSigmas(), b.components(), b.unseenTerms(), b.exactAssociationSteps(), b.propagationSweeps(),
                 b.detectionsPerPart(), 2000, b.clockAheadSeconds(), b.snapshotScans())));
         int sent = 0;

@@ -28,9 +28,11 @@ class SnapshotTest {
             Rig rig = new Rig(reader).applyAll(log.subList(0, cut));
             byte[] snapshot = rig.machine.snapshot();
             rig.machine = RegionMachine.restore(snapshot, reader);
-            assertThat(rig.machine.snapshot()).as("snapshot of the restored, at entry %s, seed %s", cut, SEED).isEqualTo(snapshot);
+            assertThat(rig.machine.snapshot()).as("snapshot of the restored, at entry %s, seed %s", cut, SEED)
+                    .isEqualTo(snapshot);
             rig.applyAll(log.subList(cut, log.size()));
-            assertThat(rig.out.publishedBytes()).as("cut at entry %s, seed %s", cut, SEED).isEqualTo(whole.out.publishedBytes());
+            assertThat(rig.out.publishedBytes()).as("cut at entry %s, seed %s", cut, SEED)
+                    .isEqualTo(whole.out.publishedBytes());
             assertThat(rig.out.rejectSet()).as("cut at entry %s", cut).isEqualTo(whole.out.rejectSet());
             assertThat(rig.out.heartbeats).isEqualTo(whole.out.heartbeats);
             assertThat(rig.out.findings).isEqualTo(whole.out.findings);
@@ -82,12 +84,14 @@ class SnapshotTest {
 
     @Test
     void aSnapshotThatIsCutOffOrTooLongIsRefused() {
-        Rig rig = Rig.with(TestSites.sensor("north-shore", 0, 0)).apply(Entries.part("north-shore", 1).sees(0, 0).entry());
+        Rig rig = Rig.with(TestSites.sensor("north-shore", 0, 0)).apply(Entries.part("north-shore", 1).sees(0, 0)
+                .entry());
         byte[] snapshot = rig.machine.snapshot();
         Random random = new Random(SEED);
         for (int i = 0; i < 50; i++) {
             byte[] cut = Arrays.copyOf(snapshot, 4 + random.nextInt(snapshot.length - 4));
-            assertThatThrownBy(() -> RegionMachine.restore(cut, rig.reader)).isInstanceOf(IllegalArgumentException.class);
+            assertThatThrownBy(() -> RegionMachine.restore(cut, rig.reader))
+                    .isInstanceOf(IllegalArgumentException.class);
         }
         assertThatThrownBy(() -> RegionMachine.restore(Arrays.copyOf(snapshot, snapshot.length + 3), rig.reader))
                 .isInstanceOf(IllegalArgumentException.class)

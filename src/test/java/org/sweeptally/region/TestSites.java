@@ -49,7 +49,8 @@ final class TestSites {
     /** Place at an offset from the middle, in metres, near enough for tests that need no exact one. */
     static LatLon at(double east, double north) {
         double latitude = MIDDLE.latitude() + north / 111_035;
-        return new LatLon(latitude, MIDDLE.longitude() + east / (111_320 * StrictMath.cos(StrictMath.toRadians(latitude))));
+        return new LatLon(latitude, MIDDLE.longitude()
+                + east / (111_320 * StrictMath.cos(StrictMath.toRadians(latitude))));
     }
 
     static GeoPolygon rectangle(double west, double south, double east, double north) {
@@ -93,25 +94,30 @@ final class TestSites {
     }
 
     static SensorSettings withSweep(SensorSettings s, double seconds) {
-        return new SensorSettings(s.name(), s.position(), s.roams(), s.reachMetres(), s.noise(), s.detectionProbability(),
+        return new SensorSettings(s.name(), s.position(), s.roams(), s.reachMetres(), s.noise(),
+                s.detectionProbability(),
                 s.clutterPerScan(), s.intervalSeconds(), seconds, s.leastIntervalSeconds(), s.disorderSeconds(),
                 s.silentSeconds());
     }
 
     static SensorSettings withLeastInterval(SensorSettings s, double seconds) {
-        return new SensorSettings(s.name(), s.position(), s.roams(), s.reachMetres(), s.noise(), s.detectionProbability(),
-                s.clutterPerScan(), s.intervalSeconds(), s.sweepSeconds(), seconds, s.disorderSeconds(), s.silentSeconds());
+        return new SensorSettings(s.name(), s.position(), s.roams(), s.reachMetres(), s.noise(),
+                s.detectionProbability(),
+                s.clutterPerScan(), s.intervalSeconds(), s.sweepSeconds(), seconds, s.disorderSeconds(),
+                        s.silentSeconds());
     }
 
     static SensorSettings withDisorder(SensorSettings s, double seconds) {
-        return new SensorSettings(s.name(), s.position(), s.roams(), s.reachMetres(), s.noise(), s.detectionProbability(),
+        return new SensorSettings(s.name(), s.position(), s.roams(), s.reachMetres(), s.noise(),
+                s.detectionProbability(),
                 s.clutterPerScan(), s.intervalSeconds(), s.sweepSeconds(), s.leastIntervalSeconds(), seconds,
                 s.silentSeconds());
     }
 
     static SensorSettings withReach(SensorSettings s, double metres) {
         return new SensorSettings(s.name(), s.position(), s.roams(), metres, s.noise(), s.detectionProbability(),
-                s.clutterPerScan(), s.intervalSeconds(), s.sweepSeconds(), s.leastIntervalSeconds(), s.disorderSeconds(),
+                s.clutterPerScan(), s.intervalSeconds(), s.sweepSeconds(), s.leastIntervalSeconds(),
+                        s.disorderSeconds(),
                 s.silentSeconds());
     }
 
@@ -142,17 +148,20 @@ final class TestSites {
     }
 
     static Site withThresholds(Site s, double confirming, double ending) {
-        return new Site(s.name(), s.revision(), s.fromMicros(), s.sensors(), s.regions(), s.motion(), s.lifetimeSeconds(),
+        return new Site(s.name(), s.revision(), s.fromMicros(), s.sensors(), s.regions(), s.motion(),
+                s.lifetimeSeconds(),
                 s.unseen(), new ThresholdSettings(confirming, ending), s.bounds(), s.rejectOutside());
     }
 
     static Site withBounds(Site s, UnaryOperator<BoundSettings> change) {
-        return new Site(s.name(), s.revision(), s.fromMicros(), s.sensors(), s.regions(), s.motion(), s.lifetimeSeconds(),
+        return new Site(s.name(), s.revision(), s.fromMicros(), s.sensors(), s.regions(), s.motion(),
+                s.lifetimeSeconds(),
                 s.unseen(), s.thresholds(), change.apply(s.bounds()), s.rejectOutside());
     }
 
     static Site rejectingOutside(Site s) {
-        return new Site(s.name(), s.revision(), s.fromMicros(), s.sensors(), s.regions(), s.motion(), s.lifetimeSeconds(),
+        return new Site(s.name(), s.revision(), s.fromMicros(), s.sensors(), s.regions(), s.motion(),
+                s.lifetimeSeconds(),
                 s.unseen(), s.thresholds(), s.bounds(), true);
     }
 

@@ -6,7 +6,9 @@ import java.util.Random;
 import org.sweeptally.event.LogEntry;
 import org.sweeptally.site.SensorSettings;
 
-/** An invented world: a few objects in straight lines, seen by the sensors of a site, as each sensor's parts in order. */
+/**
+ * An invented world: a few objects in straight lines, seen by the sensors of a site, as each sensor's parts in order.
+ */
 final class World {
 
     private static final int OBJECTS = 5;
