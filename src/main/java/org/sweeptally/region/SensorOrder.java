@@ -169,7 +169,9 @@ final class SensorOrder {
         if (time == latestScanMicros && part.getScan() != null) {
             latestNumber = part.getScan();
         }
-        closeEarlier(time, Micros.ofSeconds(settings.disorderSeconds()), closed);
+        long disorder = Micros.ofSeconds(settings.disorderSeconds());
+        promiseAtLeast(Micros.plus(scan.logTimeMicros(), -disorder));
+        closeEarlier(time, disorder, closed);
         if (part.getClosesScan()) {
             close(scan, Closing.BY_PART, closed);
         }

@@ -79,6 +79,13 @@ class SensorOrderTest {
     }
 
     @Test
+    void aPartOlderThanAnOpenScanIsLateToo() {
+        Rig rig = rig().apply(part("north-shore", 5).open().sees(0, 0), part("north-shore", 4).part(0).sees(1, 1));
+        assertThat(rig.out.reasons()).containsExactly(RejectReason.LATE);
+        assertThat(rig.effects()).isEmpty();
+    }
+
+    @Test
     void disorderThatIsAllowedIsNotLateAndTakesEffectInOrder() {
         Rig rig = Rig.with(TestSites.withDisorder(NORTH, 3)).apply(part("north-shore", 10), part("north-shore", 8));
         assertThat(rig.effects()).isEmpty();
