@@ -19,6 +19,7 @@ public final class Counters {
         CLUSTERS_EXACT,
         CLUSTERS_PROPAGATED,
         CLUSTERS_IMPOSSIBLE,
+        CLUSTERS_UNDERFLOWED,
         PROPAGATION_SWEEPS,
         PROPAGATION_CAPPED,
         COMPONENTS_BEGUN,

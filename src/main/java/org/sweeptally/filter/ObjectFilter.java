@@ -85,8 +85,8 @@ public final class ObjectFilter {
         counters.add(Counters.Name.OBSERVATIONS, scan.observations().size());
         DetectionIndex index = new DetectionIndex(scan.observations());
         UnseenEvidence evidence = unseen.evidence(scan, index);
-        ScanHypotheses hypotheses =
-                ScanHypotheses.of(components, scan, index, evidence, settings, counters, association, problem);
+        ScanHypotheses hypotheses = new ScanHypotheses(
+                components, scan, index, evidence, settings, counters, association, problem);
 
         List<Component> begun = new NewComponents(
                         scan, logTimeMicros, unseen, evidence, components, settings, counters)
@@ -105,15 +105,17 @@ public final class ObjectFilter {
 
     /** Confirms, recycles and lets go. */
     private ScanResult sortOut() {
+        double confirming = LogOdds.of(settings.confirming());
+        double ending = LogOdds.of(settings.ending());
+        double recycling = LogOdds.of(settings.recyclingBelow());
         List<Component> kept = new ArrayList<>(components.size());
         List<Component> recycled = new ArrayList<>();
         List<Component> gone = new ArrayList<>();
         for (Component component : components) {
-            double existence = component.existence();
-            component.confirmed = existence >= (component.confirmed ? settings.ending() : settings.confirming());
+            component.confirmed = component.logOdds >= (component.confirmed ? ending : confirming);
             if (isGone(component)) {
                 gone.add(component);
-            } else if (existence < settings.recyclingBelow()) {
+            } else if (component.logOdds < recycling) {
                 recycled.add(component);
             } else {
                 kept.add(component);

@@ -5,6 +5,7 @@ import java.util.Arrays;
 import java.util.List;
 import org.sweeptally.filter.association.Association;
 import org.sweeptally.filter.association.AssociationBounds;
+import org.sweeptally.filter.association.AssociationCounts;
 import org.sweeptally.filter.association.AssociationProblem;
 import org.sweeptally.filter.association.AssociationMarginals;
 import org.sweeptally.model.Gaussian;
@@ -25,8 +26,15 @@ final class ScanHypotheses {
     private static final double LEAST_USE = 0.01;
 
     private final Scan scan;
+    private final FilterSettings settings;
+    private final Counters counters;
     private final AssociationProblem problem;
     private final AssociationMarginals marginals;
+
+    /** Existence of each component before the scan, and its complement. */
+    private final double[] existence;
+
+    private final double[] absence;
 
     /** Probability of detection of each component, averaged over its density. */
     private final double[] detection;
@@ -38,18 +46,8 @@ final class ScanHypotheses {
     private final Mixture mixture = new Mixture();
     private final double[] step = new double[4];
 
-    private ScanHypotheses(Scan scan, AssociationProblem problem, AssociationMarginals marginals, double[] detection) {
-        this.scan = scan;
-        this.problem = problem;
-        this.marginals = marginals;
-        this.detection = detection;
-        this.somebodys = new double[problem.columns()];
-        for (int pair = 0; pair < problem.pairs(); pair++) {
-            somebodys[problem.column(pair)] += marginals.pair(pair);
-        }
-    }
-
-    static ScanHypotheses of(
+    /** @param association solves the problem, in storage that both keep for the next scan */
+    ScanHypotheses(
             List<Component> components,
             Scan scan,
             DetectionIndex index,
@@ -58,45 +56,42 @@ final class ScanHypotheses {
             Counters counters,
             Association association,
             AssociationProblem problem) {
+        this.scan = scan;
+        this.settings = settings;
+        this.counters = counters;
+        this.problem = problem;
+        existence = new double[components.size()];
+        absence = new double[components.size()];
+        detection = new double[components.size()];
         problem.clear();
         double clutter = scan.look().clutterPerSquareMetre();
         for (int j = 0; j < scan.observations().size(); j++) {
             problem.addColumn(clutter + evidence.total(j));
         }
-        PositionUpdate update = new PositionUpdate();
-        double[] detection = new double[components.size()];
         for (int i = 0; i < detection.length; i++) {
-            detection[i] = gate(components.get(i), scan, index, settings, counters, problem, update);
+            gate(components.get(i), i, index);
         }
         counters.add(Counters.Name.GATED_COMPONENT_PAIRS, problem.pairs());
-        AssociationMarginals marginals = association.solve(
+        marginals = association.solve(
                 problem, new AssociationBounds(settings.exactAssociationSteps(), settings.propagationSweeps()));
-        counters.add(Counters.Name.CLUSTERS_CLOSED_FORM, marginals.counts().closed());
-        counters.add(Counters.Name.CLUSTERS_EXACT, marginals.counts().exact());
-        counters.add(Counters.Name.CLUSTERS_PROPAGATED, marginals.counts().propagated());
-        counters.add(Counters.Name.PROPAGATION_SWEEPS, marginals.counts().sweeps());
-        counters.add(Counters.Name.PROPAGATION_CAPPED, marginals.counts().sweepCapHits());
-        counters.add(Counters.Name.CLUSTERS_IMPOSSIBLE, marginals.counts().impossible());
-        return new ScanHypotheses(scan, problem, marginals, detection);
+        count(marginals.counts());
+        somebodys = new double[problem.columns()];
+        for (int pair = 0; pair < problem.pairs(); pair++) {
+            somebodys[problem.column(pair)] += marginals.pair(pair);
+        }
     }
 
-    /** Adds a component's row to the problem; returns its averaged probability of detection. */
-    private static double gate(
-            Component component,
-            Scan scan,
-            DetectionIndex index,
-            FilterSettings settings,
-            Counters counters,
-            AssociationProblem problem,
-            PositionUpdate update) {
+    /** Adds component i's row to the problem. */
+    private void gate(Component component, int i, DetectionIndex index) {
         Look look = scan.look();
         Gaussian density = component.density;
         double constant = look.constantOver(density);
-        double averaged = Double.isNaN(constant) ? look.averageOver(density) : constant;
-        double existence = component.existence();
-        problem.addRow(LogOdds.complement(component.logOdds) + existence * (1 - averaged));
-        if (constant == 0) {
-            return 0;
+        existence[i] = component.existence();
+        absence[i] = LogOdds.complement(component.logOdds);
+        detection[i] = Double.isNaN(constant) ? look.averageOver(density) : constant;
+        problem.addRow(absence[i] + existence[i] * (1 - detection[i]));
+        if (detection[i] == 0) {
+            return;
         }
         update.prior(density);
         double gate = settings.gateSigmas() * settings.gateSigmas();
@@ -109,10 +104,19 @@ final class ScanHypotheses {
                 double there = Double.isNaN(constant)
                         ? look.probabilityOfDetection(update.updatedEast(), update.updatedNorth())
                         : constant;
-                problem.addPair(j, existence * there * update.likelihood());
+                problem.addPair(j, existence[i] * there * update.likelihood());
             }
         }
-        return averaged;
+    }
+
+    private void count(AssociationCounts counts) {
+        counters.add(Counters.Name.CLUSTERS_CLOSED_FORM, counts.closed());
+        counters.add(Counters.Name.CLUSTERS_EXACT, counts.exact());
+        counters.add(Counters.Name.CLUSTERS_PROPAGATED, counts.propagated());
+        counters.add(Counters.Name.PROPAGATION_SWEEPS, counts.sweeps());
+        counters.add(Counters.Name.PROPAGATION_CAPPED, counts.sweepCapHits());
+        counters.add(Counters.Name.CLUSTERS_IMPOSSIBLE, counts.impossible());
+        counters.add(Counters.Name.CLUSTERS_UNDERFLOWED, counts.underflows());
     }
 
     /** Marginal probability that no component caused an observation. */
@@ -130,9 +134,8 @@ final class ScanHypotheses {
      * some observation, or missed and there all the same. The density is the Gaussian with the moments of the mixture.
      */
     void update(Component component, int i, long logTimeMicros) {
-        double existence = component.existence();
-        double absent = LogOdds.complement(component.logOdds);
-        double hidden = existence * (1 - detection[i]);
+        double absent = absence[i];
+        double hidden = existence[i] * (1 - detection[i]);
         double missed = marginals.missed(i);
         double missedThere = absent + hidden > 0 ? missed * (hidden / (absent + hidden)) : 0;
         double missedAbsent = absent + hidden > 0 ? missed * (absent / (absent + hidden)) : missed;

@@ -67,6 +67,7 @@ final class Unseen {
         for (UnseenTerm term : terms) {
             term.weight *= survival;
             motion.predict(term.density, seconds);
+            term.sigmaMetres = term.density.largestPositionSigma();
         }
     }
 
@@ -82,12 +83,14 @@ final class Unseen {
         double gate = settings.gateSigmas() * settings.gateSigmas();
         for (int t = 0; t < terms.size(); t++) {
             UnseenTerm term = terms.get(t);
-            int candidates = index.query(term.density, settings.gateSigmas());
+            double everywhere =
+                    scan.look().constantNear(term.density.east(), term.density.north(), term.sigmaMetres);
+            term.detection = Double.isNaN(everywhere) ? scan.look().averageOver(term.density) : everywhere;
+            int candidates = term.detection > 0 ? index.query(term.density, settings.gateSigmas()) : 0;
             if (candidates == 0) {
                 continue;
             }
             update.prior(term.density);
-            double everywhere = scan.look().constantOver(term.density);
             for (int c = 0; c < candidates; c++) {
                 int j = index.found(c);
                 if (!update.measure(observations.get(j).measurement())) {
@@ -160,12 +163,11 @@ final class Unseen {
     /** A history that may go on in a new component, and the share of the component that comes from it. */
     record Heir(ObjectHistory tag, double share) {}
 
-    /** Thins the unseen part by a look that could have detected what is in it. */
+    /** Thins the unseen part by the look whose {@link #evidence} was taken, which could have detected what is in it. */
     void missed(Look look) {
         grid.missed(look);
         for (UnseenTerm term : terms) {
-            double everywhere = look.constantOver(term.density);
-            term.weight *= 1 - (Double.isNaN(everywhere) ? look.averageOver(term.density) : everywhere);
+            term.weight *= 1 - term.detection;
         }
         terms.addAll(entering);
         entering.clear();
@@ -230,7 +232,7 @@ final class Unseen {
         for (UnseenTerm term : terms) {
             if (!core.isAtLeast(-apronMetres, term.density.east(), term.density.north())) {
                 counters.add(Counters.Name.TERMS_GONE, 1);
-            } else if (term.density.largestPositionSigma() > settings.unseenCellMetres()) {
+            } else if (term.sigmaMetres > settings.unseenCellMetres()) {
                 give(term, Counters.Name.TERMS_RETURNED_WIDE);
             } else if (isFaint(term)) {
                 give(term, Counters.Name.TERMS_RETURNED_FAINT);

@@ -13,9 +13,16 @@ final class UnseenTerm {
     final Gaussian density;
     final ObjectHistory tag;
 
+    /** Greatest standard deviation of the position, metres; of the density as it is now. */
+    double sigmaMetres;
+
+    /** Probability that the scan at hand detects it, averaged over its density. */
+    double detection;
+
     UnseenTerm(double weight, Gaussian density, ObjectHistory tag) {
         this.weight = weight;
         this.density = density;
         this.tag = tag;
+        this.sigmaMetres = density.largestPositionSigma();
     }
 }

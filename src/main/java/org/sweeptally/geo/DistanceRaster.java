@@ -3,18 +3,19 @@ package org.sweeptally.geo;
 /**
  * Bounds on the distance from a polygon's nearest edge without looking at its edges: the signed distance at the
  * centres of a raster over the polygon. Distance changes by at most a metre a metre, so that a point's differs from
- * its cell's centre's by at most half the cell's diagonal. Most questions of "far enough inside?" end here, at the
+ * its cell's centre's by at most the way between them. Most questions of "far enough inside?" end here, at the
  * cost of one look-up, however many edges the polygon has.
  */
 final class DistanceRaster {
 
-    private static final int CELLS = 64;
+    private static final int CELLS = 128;
 
     private final double west;
     private final double south;
     private final double perEast;
     private final double perNorth;
-    private final double halfDiagonal;
+    private final double cellEast;
+    private final double cellNorth;
     private final double[] atCentre = new double[CELLS * CELLS];
 
     DistanceRaster(PlaneArea area) {
@@ -24,7 +25,8 @@ final class DistanceRaster {
         double height = (area.maxNorth() - south) / CELLS;
         perEast = 1 / width;
         perNorth = 1 / height;
-        halfDiagonal = 0.5 * Math.sqrt(width * width + height * height);
+        cellEast = width;
+        cellNorth = height;
         for (int row = 0; row < CELLS; row++) {
             for (int column = 0; column < CELLS; column++) {
                 atCentre[row * CELLS + column] =
@@ -33,13 +35,22 @@ final class DistanceRaster {
         }
     }
 
-    /** A number that the signed distance at a point is not below; minus infinity for a point outside the raster. */
-    double atLeast(double east, double north) {
+    /**
+     * Whether the signed distance at a point is at least so much: 1 for yes, -1 for no, 0 where only the edges can tell.
+     */
+    int isAtLeast(double metres, double east, double north) {
         double column = (east - west) * perEast;
         double row = (north - south) * perNorth;
         if (!(column >= 0 && column < CELLS && row >= 0 && row < CELLS)) {
-            return Double.NEGATIVE_INFINITY;
+            return 0;
         }
-        return atCentre[(int) row * CELLS + (int) column] - halfDiagonal;
+        double offEast = (column - (int) column - 0.5) * cellEast;
+        double offNorth = (row - (int) row - 0.5) * cellNorth;
+        double beyond = atCentre[(int) row * CELLS + (int) column] - metres;
+        double away = offEast * offEast + offNorth * offNorth;
+        if (beyond * beyond <= away) {
+            return 0;
+        }
+        return beyond > 0 ? 1 : -1;
     }
 }

@@ -126,7 +126,8 @@ public final class PlaneArea {
         if (raster == null) {
             raster = new DistanceRaster(this);
         }
-        return raster.atLeast(east, north) >= metres || signedDistanceMetres(east, north) >= metres;
+        int quick = raster.isAtLeast(metres, east, north);
+        return quick == 0 ? signedDistanceMetres(east, north) >= metres : quick > 0;
     }
 
     /**

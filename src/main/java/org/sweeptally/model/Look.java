@@ -73,21 +73,26 @@ public final class Look {
      * must be averaged.
      */
     public double constantOver(Gaussian density) {
+        return constantNear(density.east(), density.north(), density.largestPositionSigma());
+    }
+
+    /** The same for a density whose greatest position sigma is known already. */
+    public double constantNear(double east, double north, double sigmaMetres) {
         if (!constantProfile || coverage.isPresent()) {
             return Double.NaN;
         }
-        double margin = CLEAR_SIGMAS * density.largestPositionSigma();
-        double distance = distanceFromSensor(density.east(), density.north());
+        double margin = CLEAR_SIGMAS * sigmaMetres;
+        double distance = distanceFromSensor(east, north);
         if (distance - margin > sensor.reachMetres()) {
             return 0;
         }
         if (distance + margin > sensor.reachMetres()) {
             return Double.NaN;
         }
-        if (core.isAtLeast(margin - apronMetres, density.east(), density.north())) {
+        if (core.isAtLeast(margin - apronMetres, east, north)) {
             return sensor.detection().points().get(0).probability();
         }
-        return core.isAtLeast(-margin - apronMetres, density.east(), density.north()) ? Double.NaN : 0;
+        return core.isAtLeast(-margin - apronMetres, east, north) ? Double.NaN : 0;
     }
 
     /**
