@@ -1,0 +1,113 @@
+package org.sweeptally.bench;
+
+import java.io.ByteArrayInputStream;
+import java.io.ByteArrayOutputStream;
+import java.io.DataInputStream;
+import java.io.DataOutputStream;
+import java.io.IOException;
+import java.util.List;
+import org.sweeptally.filter.Counters;
+import org.sweeptally.filter.FilterScene;
+import org.sweeptally.filter.FilterSettings;
+import org.sweeptally.filter.ObjectFilter;
+import org.sweeptally.filter.Scan;
+import org.sweeptally.geo.PlaneArea;
+import org.sweeptally.model.Look;
+import org.sweeptally.world.ModelRun;
+import org.sweeptally.world.SimulatedScan;
+import org.sweeptally.world.SimulatedWorld;
+import org.sweeptally.world.WorldSettings;
+
+/**
+ * A filter that has run for a while, and its next scan: as many objects as asked for and as much clutter, at a density of
+ * 20 objects on 16 square kilometres.
+ */
+final class ScanScene {
+
+    /** Scans before the measured one: the unseen part has settled, components are as many as objects. */
+    private static final int SCANS_BEFORE = 8;
+
+    private static final double MARGIN_METRES = 200;
+
+    /** What a site's default is for the square with 1,000 objects; the same for all, so that all grows alike. */
+    private static final double CELL_METRES = 590;
+
+    private final FilterSettings settings;
+    private final PlaneArea core;
+    private final Scan scan;
+    private final double seconds;
+    private final byte[] state;
+
+    ScanScene(int objects, long seed) {
+        WorldSettings world =
+                WorldSettings.fourKilometres(MARGIN_METRES, 20).grownTo(objects).withScans(SCANS_BEFORE + 1);
+        core = FilterScene.square(world.sideMetres() / 2);
+        settings = withCell(ModelRun.settings(world, 0.5, 0.4), CELL_METRES);
+        seconds = world.periodSeconds();
+        Look look = ModelRun.look(world, core);
+        List<SimulatedScan> scans = SimulatedWorld.scans(world, seed);
+        ObjectFilter filter = new ObjectFilter(settings, core, MARGIN_METRES);
+        for (int k = 0; k < SCANS_BEFORE; k++) {
+            filter.predict(k == 0 ? 0 : seconds);
+            filter.update(ModelRun.scan(world, scans.get(k), look), scans.get(k).micros());
+        }
+        state = bytes(filter);
+        scan = ModelRun.scan(world, scans.get(SCANS_BEFORE), look);
+    }
+
+    /** A filter before the measured scan. */
+    ObjectFilter filter() {
+        try {
+            return ObjectFilter.read(new DataInputStream(new ByteArrayInputStream(state)), settings, core, MARGIN_METRES);
+        } catch (IOException e) {
+            throw new IllegalStateException("a filter that was just written cannot be read", e);
+        }
+    }
+
+    Scan scan() {
+        return scan;
+    }
+
+    /** Time between scans. */
+    double seconds() {
+        return seconds;
+    }
+
+    /** The measured work: predict, update, count; gives the expected number of objects. */
+    double step(ObjectFilter filter) {
+        filter.predict(seconds);
+        filter.update(scan, scan.scanTimeMicros());
+        return filter.count().mean() + filter.expectedUnseen();
+    }
+
+    /** Pairs of a component or a recycled term with a detection in its gate, in the measured scan. */
+    int gatedPairs() {
+        ObjectFilter filter = filter();
+        long before = pairs(filter);
+        step(filter);
+        return (int) (pairs(filter) - before);
+    }
+
+    private static long pairs(ObjectFilter filter) {
+        return filter.counters().get(Counters.Name.GATED_COMPONENT_PAIRS)
+                + filter.counters().get(Counters.Name.GATED_TERM_PAIRS);
+    }
+
+    private static byte[] bytes(ObjectFilter filter) {
+        ByteArrayOutputStream bytes = new ByteArrayOutputStream();
+        try {
+            filter.write(new DataOutputStream(bytes));
+        } catch (IOException e) {
+            throw new IllegalStateException("memory cannot be written to", e);
+        }
+        return bytes.toByteArray();
+    }
+
+    private static FilterSettings withCell(FilterSettings s, double cellMetres) {
+        return new FilterSettings(
+                s.accelerationNoise(), s.speedSigma(), s.lifetimeSeconds(), s.birthsPerSquareMetrePerSecond(),
+                s.outsidePerSquareMetre(), s.initialPerSquareMetre(), s.confirming(), s.ending(), s.recyclingBelow(),
+                s.gateSigmas(), cellMetres, s.components(), s.unseenTerms(), s.exactAssociationSteps(),
+                s.propagationSweeps());
+    }
+}
