@@ -34,6 +34,7 @@ final class ScanScene {
 
     private final FilterSettings settings;
     private final PlaneArea core;
+    private final Scan before;
     private final Scan scan;
     private final double seconds;
     private final byte[] state;
@@ -47,18 +48,23 @@ final class ScanScene {
         Look look = ModelRun.look(world, core);
         List<SimulatedScan> scans = SimulatedWorld.scans(world, seed);
         ObjectFilter filter = new ObjectFilter(settings, core, MARGIN_METRES);
-        for (int k = 0; k < SCANS_BEFORE; k++) {
+        for (int k = 0; k < SCANS_BEFORE - 1; k++) {
             filter.predict(k == 0 ? 0 : seconds);
             filter.update(ModelRun.scan(world, scans.get(k), look), scans.get(k).micros());
         }
         state = bytes(filter);
+        before = ModelRun.scan(world, scans.get(SCANS_BEFORE - 1), look);
         scan = ModelRun.scan(world, scans.get(SCANS_BEFORE), look);
     }
 
-    /** A filter before the measured scan. */
+    /** A filter that has just taken in the scan before the measured one, as in steady work. */
     ObjectFilter filter() {
         try {
-            return ObjectFilter.read(new DataInputStream(new ByteArrayInputStream(state)), settings, core, MARGIN_METRES);
+            DataInputStream in = new DataInputStream(new ByteArrayInputStream(state));
+            ObjectFilter filter = ObjectFilter.read(in, settings, core, MARGIN_METRES);
+            filter.predict(seconds);
+            filter.update(before, before.scanTimeMicros());
+            return filter;
         } catch (IOException e) {
             throw new IllegalStateException("a filter that was just written cannot be read", e);
         }
