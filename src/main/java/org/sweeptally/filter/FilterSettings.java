@@ -18,6 +18,7 @@ package org.sweeptally.filter;
  * @param unseenTerms                    bound on Gaussian terms of the unseen part
  * @param exactAssociationSteps          bound on the work of one exactly solved cluster
  * @param propagationSweeps              bound on sweeps of belief propagation over one cluster
+ * @param leastTermWeight                expected objects below which a weak new object goes to the grid at once
  */
 public record FilterSettings(
         double accelerationNoise,
@@ -34,7 +35,8 @@ public record FilterSettings(
         int components,
         int unseenTerms,
         long exactAssociationSteps,
-        int propagationSweeps) {
+        int propagationSweeps,
+        double leastTermWeight) {
 
     /** Existence below which a component is better kept as part of the unseen; common practice, no source. */
     public static final double RECYCLING_BELOW = 0.1;

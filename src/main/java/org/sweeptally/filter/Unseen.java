@@ -19,9 +19,6 @@ import org.sweeptally.model.PositionUpdate;
  */
 final class Unseen {
 
-    /** What is less likely than this does not become a term but goes to the grid at once. */
-    private static final double LEAST_WEIGHT = 1e-5;
-
     private final PlaneArea core;
     private final double apronMetres;
     private final Counters counters;
@@ -218,7 +215,7 @@ final class Unseen {
 
     /** Whether it is worth a term; else it goes to the grid at once. */
     private boolean isHeavy(double weight, PositionMeasurement z) {
-        if (weight >= LEAST_WEIGHT) {
+        if (weight >= settings.leastTermWeight()) {
             return true;
         }
         counters.add(Counters.Name.TERMS_TOO_LIGHT, 1);

@@ -13,6 +13,7 @@ package org.sweeptally.site;
  * @param waitingBytes         what may wait in a region for its horizon
  * @param clockAheadSeconds    how far ahead of the horizon a sensor's clock may run before it is a finding
  * @param snapshotScans        scans between two snapshots of a region
+ * @param leastTermWeight      expected objects below which a weak new object goes to the grid at once
  */
 public record BoundSettings(
         double gateSigmas,
@@ -23,4 +24,5 @@ public record BoundSettings(
         int detectionsPerPart,
         long waitingBytes,
         double clockAheadSeconds,
-        int snapshotScans) {}
+        int snapshotScans,
+        double leastTermWeight) {}

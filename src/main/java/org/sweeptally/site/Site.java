@@ -60,6 +60,7 @@ public record Site(
                 bounds.components(),
                 bounds.unseenTerms(),
                 bounds.exactAssociationSteps(),
-                bounds.propagationSweeps());
+                bounds.propagationSweeps(),
+                bounds.leastTermWeight());
     }
 }

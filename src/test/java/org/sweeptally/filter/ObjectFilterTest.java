@@ -135,7 +135,7 @@ class ObjectFilterTest {
         FilterSettings tight = new FilterSettings(
                 s.accelerationNoise(), s.speedSigma(), s.lifetimeSeconds(), s.birthsPerSquareMetrePerSecond(),
                 s.outsidePerSquareMetre(), s.initialPerSquareMetre(), s.confirming(), s.ending(), s.recyclingBelow(),
-                s.gateSigmas(), s.unseenCellMetres(), 3, 5, s.exactAssociationSteps(), s.propagationSweeps());
+                s.gateSigmas(), s.unseenCellMetres(), 3, 5, s.exactAssociationSteps(), s.propagationSweeps(), s.leastTermWeight());
         ObjectFilter filter = scene.filter(tight);
         for (int k = 0; k < 6; k++) {
             double[] places = new double[40];

@@ -149,7 +149,7 @@ class SilenceTest {
         Site site = TestSites.site(1, NORTH, SOUTH);
         Rig rig = Rig.with(TestSites.withBounds(site, b -> new BoundSettings(
                 b.gateSigmas(), b.components(), b.unseenTerms(), b.exactAssociationSteps(), b.propagationSweeps(),
-                b.detectionsPerPart(), 2000, b.clockAheadSeconds(), b.snapshotScans())));
+                b.detectionsPerPart(), 2000, b.clockAheadSeconds(), b.snapshotScans(), b.leastTermWeight())));
         int sent = 0;
         while (rig.out.appended.isEmpty() && sent < 100) {
             assertThat(rig.heartbeat(0).getWaitingBytes()).isLessThanOrEqualTo(2000);
