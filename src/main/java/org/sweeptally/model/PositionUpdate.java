@@ -22,6 +22,16 @@ public final class PositionUpdate {
     private double inverse22;
     private double peak;
 
+    /** P H', 4 x 2, row by row. */
+    private double c11;
+    private double c12;
+    private double c21;
+    private double c22;
+    private double c31;
+    private double c32;
+    private double c41;
+    private double c42;
+
     /** K, 4 x 2, row by row. */
     private double k11;
     private double k12;
@@ -116,15 +126,14 @@ public final class PositionUpdate {
     private boolean gain(PositionMeasurement z) {
         DMatrix4x4 p = prior.covariance;
         double lag = z.lagSeconds();
-        // P H', 4 x 2.
-        double c11 = p.a11 - lag * p.a13;
-        double c12 = p.a12 - lag * p.a14;
-        double c21 = p.a21 - lag * p.a23;
-        double c22 = p.a22 - lag * p.a24;
-        double c31 = p.a31 - lag * p.a33;
-        double c32 = p.a32 - lag * p.a34;
-        double c41 = p.a41 - lag * p.a43;
-        double c42 = p.a42 - lag * p.a44;
+        c11 = p.a11 - lag * p.a13;
+        c12 = p.a12 - lag * p.a14;
+        c21 = p.a21 - lag * p.a23;
+        c22 = p.a22 - lag * p.a24;
+        c31 = p.a31 - lag * p.a33;
+        c32 = p.a32 - lag * p.a34;
+        c41 = p.a41 - lag * p.a43;
+        c42 = p.a42 - lag * p.a44;
         double s11 = c11 - lag * c31 + z.varEast();
         double s12 = c12 - lag * c32 + z.covEastNorth();
         double s22 = c22 - lag * c42 + z.varNorth();
@@ -151,15 +160,6 @@ public final class PositionUpdate {
     /** P - K (P H')', upper triangle first, so that it stays symmetric to the bit. */
     private void updateCovariance() {
         DMatrix4x4 p = prior.covariance;
-        double lag = gainOf.lagSeconds();
-        double c11 = p.a11 - lag * p.a13;
-        double c12 = p.a12 - lag * p.a14;
-        double c21 = p.a21 - lag * p.a23;
-        double c22 = p.a22 - lag * p.a24;
-        double c31 = p.a31 - lag * p.a33;
-        double c32 = p.a32 - lag * p.a34;
-        double c41 = p.a41 - lag * p.a43;
-        double c42 = p.a42 - lag * p.a44;
         DMatrix4x4 u = updated;
         u.a11 = p.a11 - (k11 * c11 + k12 * c12);
         u.a12 = p.a12 - (k11 * c21 + k12 * c22);
