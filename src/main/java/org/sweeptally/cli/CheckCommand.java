@@ -11,8 +11,8 @@ import picocli.CommandLine.Mixin;
         name = "check",
         mixinStandardHelpOptions = true,
         description = {
-            "Checks a site file: prints every fault with its line, or, if there is none, what the site will do: what each"
-                    + " sensor covers, how long the picture waits for whom, how many false births to expect, and how"
+            "Checks a site file: prints every fault with its line, or, if there is none, what the site will do: what"
+                    + " each sensor covers, how long the picture waits for whom, how many false births to expect, and how"
                     + " soon an object is confirmed.",
             ""
         },

@@ -59,7 +59,14 @@ final class CheckForecast {
      */
     record FalseBirths(long births, int scans, double hours) {}
 
-    /** Scans, of whatever sensor, from the first detection to the confirmation, which is one of them; over all trials. */
+    /**
+     * Scans that reach the object, of whatever sensor, from that of the first detection to that of the confirmation,
+     * both counted.
+     *
+     * @param median    of the trials in which it was confirmed
+     * @param ninetieth so many scans are enough in 90 % of them
+     * @param confirmed trials in which it was
+     */
     record ScansToConfirm(int median, int ninetieth, int confirmed, int trials) {}
 
     FalseBirths falseBirths() {
@@ -119,7 +126,7 @@ final class CheckForecast {
         Arrays.sort(scans, 0, confirmed);
         return new ScansToConfirm(
                 confirmed == 0 ? 0 : scans[confirmed / 2],
-                confirmed == 0 ? 0 : scans[Math.min(confirmed - 1, confirmed * 9 / 10)],
+                confirmed == 0 ? 0 : scans[(9 * confirmed + 9) / 10 - 1],
                 confirmed,
                 TRIALS);
     }
@@ -138,11 +145,17 @@ final class CheckForecast {
             double detection = scene.look(sensor).probabilityOfDetection(east, north);
             List<Observation> seen = new ArrayList<>();
             if (random.nextDouble() < detection) {
-                double sigma = sensor.noise().alongSigmaMetres();
-                seen.add(observation(sensor, east + sigma * gaussian(random), north + sigma * gaussian(random), 0));
+                double along = sensor.noise().alongSigmaMetres() * gaussian(random);
+                double across = sensor.noise().acrossSigmaMetres() * gaussian(random);
+                double[] sight = lineOfSight(sensor, east, north);
+                seen.add(observation(
+                        sensor,
+                        east + along * sight[0] + across * sight[1],
+                        north + along * sight[1] - across * sight[0],
+                        0));
             }
             update(filter, sensor, seen, timetable);
-            sinceFirst += sinceFirst > 0 || !seen.isEmpty() ? 1 : 0;
+            sinceFirst += !seen.isEmpty() || sinceFirst > 0 && detection > 0 ? 1 : 0;
             if (filter.components().stream().anyMatch(Component::confirmed)) {
                 return sinceFirst;
             }
@@ -163,9 +176,27 @@ final class CheckForecast {
         filter.update(new Scan(sensor.name(), micros, scene.look(sensor), seen), micros);
     }
 
-    private static Observation observation(SensorSettings sensor, double east, double north, int index) {
-        double sigma = sensor.noise().alongSigmaMetres();
-        return new Observation(PositionMeasurement.at(east, north, sigma), 0, index, null, null);
+    private Observation observation(SensorSettings sensor, double east, double north, int index) {
+        double[] sight = lineOfSight(sensor, east, north);
+        double along = sensor.noise().alongSigmaMetres() * sensor.noise().alongSigmaMetres();
+        double across = sensor.noise().acrossSigmaMetres() * sensor.noise().acrossSigmaMetres();
+        PositionMeasurement measured = new PositionMeasurement(
+                east,
+                north,
+                along * sight[0] * sight[0] + across * sight[1] * sight[1],
+                (along - across) * sight[0] * sight[1],
+                along * sight[1] * sight[1] + across * sight[0] * sight[0],
+                0);
+        return new Observation(measured, 0, index, null, null);
+    }
+
+    /** The unit vector, east and north, from a sensor to a place; of the sensor's own place, north. */
+    private double[] lineOfSight(SensorSettings sensor, double east, double north) {
+        PlanePoint at = scene.positionOf(sensor);
+        double e = east - at.eastMetres();
+        double n = north - at.northMetres();
+        double range = Math.sqrt(e * e + n * n);
+        return range == 0 ? new double[] {0, 1} : new double[] {e / range, n / range};
     }
 
     /** Whose turn it is: every sensor at its usual interval. */

@@ -1,7 +1,8 @@
 package org.sweeptally.cli;
 
 import java.io.PrintStream;
-import java.util.Comparator;
+import java.math.BigDecimal;
+import java.math.RoundingMode;
 import java.util.List;
 import java.util.Locale;
 import java.util.Optional;
@@ -29,7 +30,7 @@ final class CheckReport {
     }
 
     private void sensors(PrintStream out) {
-        TextTable table = new TextTable("sensor", "stands", "reach m", "every s", "sweep s", "clutter", "passed over after s");
+        TextTable table = new TextTable("sensor", "stands", "reach m", "every s", "sweep s", "clutter a scan");
         for (SensorSettings sensor : site.sensors()) {
             table.row(
                     sensor.name(),
@@ -37,8 +38,7 @@ final class CheckReport {
                     number(sensor.reachMetres()),
                     number(sensor.intervalSeconds()),
                     number(sensor.sweepSeconds()),
-                    number(sensor.clutterPerScan()),
-                    number(sensor.silentSeconds()));
+                    number(sensor.clutterPerScan()));
         }
         table.print(out);
     }
@@ -52,28 +52,43 @@ final class CheckReport {
             out.println("  no sensor reaches its core: it will have no picture");
             return;
         }
-        for (SensorSettings sensor : sensors) {
-            out.printf(Locale.ROOT, "  %s reaches %.0f %% of it%s%n", sensor.name(), 100 * scene.shareWithinReach(sensor),
-                    sensor.position().isPresent() ? "" : " from its middle");
-        }
-        waiting(sensors, out);
+        covering(scene, sensors, out);
         forecast(scene, out);
     }
 
-    /** A scan takes effect when every other sensor has promised nothing earlier: at the latest with its own next scan. */
-    private void waiting(List<SensorSettings> sensors, PrintStream out) {
-        SensorSettings slowest = sensors.stream().max(Comparator.comparingDouble(CheckReport::waitSeconds)).orElseThrow();
-        if (sensors.size() == 1) {
-            out.println("  the picture waits for nobody: there is one sensor");
-        } else {
-            out.printf("  the picture waits up to %s s for %s, and %s s if it falls silent%n", number(waitSeconds(slowest)),
-                    slowest.name(), number(slowest.silentSeconds()));
+    private static void covering(SiteScene scene, List<SensorSettings> sensors, PrintStream out) {
+        TextTable table = new TextTable("  sensor", "reaches %", "picture waits for it s", "or if it is silent s");
+        for (SensorSettings sensor : sensors) {
+            double share = 100 * scene.shareWithinReach(sensor);
+            table.row(
+                    "  " + sensor.name(),
+                    (share < 1 ? "< 1" : String.format(Locale.ROOT, "%.0f", share))
+                            + (sensor.position().isPresent() ? "" : " from the middle"),
+                    waiting(sensor, sensors.size() == 1),
+                    number(sensor.silentSeconds()));
         }
+        table.print(out);
     }
 
-    private static double waitSeconds(SensorSettings sensor) {
-        double promised = sensor.leastIntervalSeconds() - sensor.disorderSeconds();
-        return Math.max(0, sensor.intervalSeconds() + sensor.sweepSeconds() - promised);
+    private static String waiting(SensorSettings sensor, boolean alone) {
+        double seconds = alone ? ownWaitSeconds(sensor) : Math.max(othersWaitSeconds(sensor), ownWaitSeconds(sensor));
+        return seconds == 0 ? "0" : "up to " + number(seconds);
+    }
+
+    /**
+     * How long after its end another sensor's scan waits at most for this one to promise that nothing earlier will
+     * come: a scan of this one that ends as long before as its promise reaches just fails to.
+     */
+    static double othersWaitSeconds(SensorSettings sensor) {
+        return sensor.intervalSeconds() + sensor.disorderSeconds() - sensor.leastIntervalSeconds();
+    }
+
+    /** How long a scan of a sensor waits for later ones of the same, which may be out of order with itself. */
+    static double ownWaitSeconds(SensorSettings sensor) {
+        double owed = sensor.disorderSeconds() - sensor.leastIntervalSeconds();
+        return sensor.disorderSeconds() == 0 || owed < 0
+                ? 0
+                : (Math.floor(owed / sensor.intervalSeconds()) + 1) * sensor.intervalSeconds();
     }
 
     private void forecast(SiteScene scene, PrintStream out) {
@@ -82,11 +97,11 @@ final class CheckReport {
         double hours = births.hours();
         if (births.births() == 0) {
             // Rule of three: Hanley and Lippman-Hand 1983, JAMA 249(13).
-            out.printf(Locale.ROOT, "  false births: fewer than %s an hour (none in %,d simulated scans, %.2f hours, of clutter"
-                    + " alone; 95 %%)%n", rate(3 / hours), births.scans(), hours);
+            out.printf(Locale.ROOT, "  false births: fewer than %s an hour, with 95 %% certainty (none in %,d simulated scans"
+                    + " of clutter alone, %.2f hours)%n", rate(3 / hours), births.scans(), hours);
         } else {
-            out.printf(Locale.ROOT, "  false births: about %s an hour (%d in %,d simulated scans, %.2f hours, of clutter"
-                    + " alone)%n", rate(births.births() / hours), births.births(), births.scans(), hours);
+            out.printf(Locale.ROOT, "  false births: about %s an hour (%d in %,d simulated scans of clutter alone, %.2f"
+                    + " hours)%n", rate(births.births() / hours), births.births(), births.scans(), hours);
         }
         Optional<PlanePoint> place = scene.typicalPlace();
         place.map(forecast::scansToConfirm).ifPresent(scans -> confirmation(scans, out));
@@ -98,15 +113,18 @@ final class CheckReport {
                     + " clutterPerScan and unseen%n", scans.confirmed(), scans.trials());
             return;
         }
-        out.printf("  an object in the middle is confirmed with scan %d from its first detection on, 90 %% of them by scan %d"
-                + " (%d of %d simulated)%n", scans.median(), scans.ninetieth(), scans.confirmed(), scans.trials());
+        out.printf("  an object in the middle is confirmed by scan %d, counted from its first detection, and 90 %% of them by"
+                + " scan %d (%d of %d simulated objects)%n",
+                scans.median(), scans.ninetieth(), scans.confirmed(), scans.trials());
     }
 
     private static String rate(double perHour) {
         return String.format(Locale.ROOT, perHour < 10 ? "%.1f" : "%.0f", perHour);
     }
 
+    /** To a thousandth, without zeros at the end. */
     private static String number(double value) {
-        return value == Math.rint(value) ? String.format(Locale.ROOT, "%.0f", value) : Double.toString(value);
+        BigDecimal rounded = BigDecimal.valueOf(value).setScale(3, RoundingMode.HALF_UP).stripTrailingZeros();
+        return rounded.toPlainString();
     }
 }

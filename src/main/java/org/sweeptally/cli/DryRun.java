@@ -20,7 +20,7 @@ import org.sweeptally.region.text.PartLines;
 import org.sweeptally.site.SensorSettings;
 import org.sweeptally.site.Site;
 
-/** Reads a recording through all regions of a site and remembers what the summary needs; memory does not grow with it. */
+/** Reads a recording through all regions of a site and remembers what the summary needs, in constant memory. */
 final class DryRun {
 
     /** Lines between two signs of progress. */
@@ -33,7 +33,7 @@ final class DryRun {
     private final Map<String, RegionTally> tallies = new LinkedHashMap<>();
     private final SortedMap<RejectReason, ReasonTally> reasons = new TreeMap<>();
     private long lines;
-    private long partsUsed;
+    private long usableParts;
 
     /** How often one reason struck, and the first sentence about it. */
     record ReasonTally(long records, long detections, String example) {}
@@ -75,7 +75,7 @@ final class DryRun {
     }
 
     private void part(PartBody body, SourcePosition source) {
-        partsUsed += body.getUnusable() ? 0 : 1;
+        usableParts += body.getUnusable() ? 0 : 1;
         Part part = body.getPart();
         SensorSettings sensor = site.sensor(part.getSensor()).orElseThrow();
         long logTime = part.getScanTimeMicros() + Math.round(sensor.sweepSeconds() * 1e6);
@@ -113,8 +113,8 @@ final class DryRun {
         return lines;
     }
 
-    /** Parts of which something could be used. */
-    long partsUsed() {
-        return partsUsed;
+    /** Parts that could be read and of which something can be used. */
+    long usableParts() {
+        return usableParts;
     }
 }

@@ -59,7 +59,7 @@ final class DryRunCommand implements Callable<Integer> {
         if (site.isEmpty()) {
             return Main.USAGE;
         }
-        try (InputStream in = open(); RecordFiles files = new RecordFiles(out)) {
+        try (InputStream in = open(); RecordFiles files = new RecordFiles(out, recording())) {
             DryRun run = new DryRun(site.get(), files);
             run.readAll(in, size(), terminal);
             new DryRunSummary(run, out).print(terminal.out());
@@ -69,7 +69,8 @@ final class DryRunCommand implements Callable<Integer> {
         } catch (AccessDeniedException e) {
             throw new CommandFailedException(e.getFile() + ": may not be read or written");
         } catch (IOException e) {
-            throw new CommandFailedException("reading " + parts + " or writing to " + out + " failed: " + e.getMessage());
+            throw new CommandFailedException(
+                    "reading " + parts + " or writing to " + out + " failed: " + e.getMessage());
         }
     }
 
@@ -82,6 +83,10 @@ final class DryRunCommand implements Callable<Integer> {
             throw new CommandFailedException(parts + ": is a folder, not a file of parts");
         }
         return new BufferedInputStream(Files.newInputStream(file));
+    }
+
+    private Optional<Path> recording() {
+        return parts.equals(STANDARD_INPUT) ? Optional.empty() : Optional.of(Path.of(parts));
     }
 
     /** Bytes of the recording, 0 where they are not known beforehand. */

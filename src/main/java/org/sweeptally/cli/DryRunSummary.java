@@ -22,18 +22,20 @@ final class DryRunSummary {
     }
 
     void print(PrintStream out) {
-        out.printf("%s: %,d lines read, %,d parts used%n%n", run.site().name(), run.lines(), run.partsUsed());
+        out.printf("%s: %,d lines read, %,d usable parts%n%n", run.site().name(), run.lines(), run.usableParts());
         regions(out);
         asides(out);
         rejects(out);
         findings(out);
         out.println();
-        out.println("Records are in " + folder + ". The picture is an estimate; local rules and licensed practice come first.");
+        out.println("Records are in " + folder + ".");
+        out.println("The picture is an estimate; local rules and licensed practice come first.");
     }
 
     private void regions(PrintStream out) {
         TextTable table = new TextTable(
-                "region", "scans", "detections", "rejects", "births", "ends", "now", "expected", "90 % interval", "unseen");
+                "region", "scans", "detections", "rejects", "births", "ends", "shown now", "expected number", "90 % interval",
+                "expected unseen");
         for (RegionMachine machine : run.local().machines()) {
             RegionTally tally = run.tallies().get(machine.region());
             RegionCounters counters = machine.counters();
@@ -69,21 +71,22 @@ final class DryRunSummary {
     /** What is normal and yet worth a line. */
     private void asides(PrintStream out) {
         List<String> lines = new ArrayList<>();
-        say(lines, run.local().beyondReach(), "detections beyond their sensor's reach were passed over");
-        say(lines, run.local().outside(), "detections outside every region and its apron were passed over");
+        say(lines, run.local().beyondReach(), "detection", "beyond the reach of the sensor");
+        say(lines, run.local().outside(), "detection", "outside every region and its apron");
         for (RegionMachine machine : run.local().machines()) {
             long repeats = machine.counters().get(RegionCounters.Name.REPEATS);
-            say(lines, repeats, "repeated parts were passed over in " + machine.region());
+            say(lines, repeats, "part", "that had come before, in " + machine.region());
         }
         if (!lines.isEmpty()) {
             out.println();
+            out.println("Passed over, as is normal:");
             lines.forEach(out::println);
         }
     }
 
-    private static void say(List<String> lines, long times, String what) {
+    private static void say(List<String> lines, long times, String what, String which) {
         if (times > 0) {
-            lines.add(whole(times) + " " + what);
+            lines.add("  " + whole(times) + " " + what + (times == 1 ? " " : "s ") + which);
         }
     }
 
@@ -92,10 +95,10 @@ final class DryRunSummary {
             return;
         }
         out.println();
-        if (run.partsUsed() == 0) {
-            out.println("NOTHING COULD BE USED. Rejected, by reason:");
+        if (run.usableParts() == 0) {
+            out.println("NOTHING COULD BE USED. Rejected, by reason (whole in rejects.ndjson):");
         } else {
-            out.println("Rejected, by reason (whole in rejects.ndjson):");
+            out.println("Rejected, in a region or before it reached one, by reason (whole in rejects.ndjson):");
         }
         TextTable table = new TextTable("reason", "records", "detections", "for example");
         run.reasons().forEach((reason, tally) -> table.row(
@@ -110,9 +113,9 @@ final class DryRunSummary {
         }
         out.println();
         out.println("Found, and not as the site file says:");
-        TextTable table = new TextTable("region", "finding", "times", "for example");
-        run.tallies().values().forEach(tally -> tally.findings().forEach((kind, found) ->
-                table.row(tally.region(), kind.name(), whole(found.times()), found.example())));
+        TextTable table = new TextTable("region", "finding", "times", "the last one");
+        run.tallies().values().forEach(tally -> tally.findings().forEach(found ->
+                table.row(tally.region(), found.kind().name(), whole(found.times()), found.sentence())));
         table.print(out);
     }
 

@@ -1,5 +1,6 @@
 package org.sweeptally.cli;
 
+import java.util.Collection;
 import java.util.SortedMap;
 import java.util.TreeMap;
 import java.util.function.Consumer;
@@ -21,15 +22,15 @@ final class RegionTally implements MachineOutputs {
     private final String region;
     private final RecordFiles files;
     private final Consumer<Reject> onReject;
-    private final SortedMap<FindingKind, FindingTally> findings = new TreeMap<>();
+    private final SortedMap<String, FindingTally> findings = new TreeMap<>();
     private long births;
     private long ends;
     private long rejects;
     private Count first;
     private Count last;
 
-    /** How often something was found, and the first sentence about it. */
-    record FindingTally(long times, String example) {}
+    /** How often something was found of one sensor or bound, and the last sentence about it. */
+    record FindingTally(FindingKind kind, long times, String sentence) {}
 
     RegionTally(String region, RecordFiles files, Consumer<Reject> onReject) {
         this.region = region;
@@ -63,8 +64,9 @@ final class RegionTally implements MachineOutputs {
         return last;
     }
 
-    SortedMap<FindingKind, FindingTally> findings() {
-        return findings;
+    /** By kind and by what they are about. */
+    Collection<FindingTally> findings() {
+        return findings.values();
     }
 
     @Override
@@ -93,8 +95,9 @@ final class RegionTally implements MachineOutputs {
 
     @Override
     public void finding(Finding finding) {
-        findings.merge(finding.getKind(), new FindingTally(1, finding.getSentence()), (a, b) ->
-                new FindingTally(a.times + b.times, a.example));
+        FindingTally one = new FindingTally(finding.getKind(), 1, finding.getSentence());
+        findings.merge(finding.getKind() + " " + finding.getSubject(), one, (before, now) ->
+                new FindingTally(now.kind, before.times + 1, now.sentence));
     }
 
     @Override
