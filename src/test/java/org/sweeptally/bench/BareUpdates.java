@@ -12,9 +12,9 @@ import org.sweeptally.model.Gaussian;
 import org.sweeptally.model.PositionMeasurement;
 
 /**
- * Kalman updates (Kalman 1960) and nothing else, as one would write them with EJML's matrices of fixed size: no memory is
- * taken, H is padded to 4 x 4, only the 2 x 2 that is not padding is inverted. What a scan costs is told in multiples of
- * this.
+ * Kalman updates (Kalman 1960) and nothing else, as one would write them with EJML's matrices of fixed size: no memory
+ * is taken, H is padded to 4 x 4, only the 2 x 2 that is not padding is inverted. What a scan costs is told in
+ * multiples of this.
  */
 final class BareUpdates {
 

@@ -16,9 +16,9 @@ import org.openjdk.jmh.annotations.Warmup;
 import org.sweeptally.filter.ObjectFilter;
 
 /**
- * One scan of a region whose number of objects grows at constant density, beside the bare Kalman updates of its gated pairs.
- * What counts are ratios within one run: {@code scan} over {@code bareUpdates}, and {@code scan} at 10,000 objects over
- * {@code scan} at 1,000.
+ * One scan of a region whose number of objects grows at constant density, beside the bare Kalman updates of its gated
+ * pairs. What counts are ratios within one run: {@code scan} over {@code bareUpdates}, and {@code scan} at 10,000
+ * objects over {@code scan} at 1,000.
  */
 @State(Scope.Thread)
 @BenchmarkMode(Mode.AverageTime)

@@ -19,8 +19,8 @@ import org.sweeptally.world.SimulatedWorld;
 import org.sweeptally.world.WorldSettings;
 
 /**
- * A filter that has run for a while, and its next scan: as many objects as asked for and as much clutter, at a density of
- * 20 objects on 16 square kilometres.
+ * A filter that has run for a while, and its next scan: as many objects as asked for and as much clutter, at a density
+ * of 20 objects on 16 square kilometres.
  */
 final class ScanScene {
 

@@ -1,6 +1,9 @@
 package org.sweeptally.harbour;
 
-/** The recordings' own metres, east and north of their origin, by WGS84 radii there: good to a centimetre in the harbour. */
+/**
+ * The recordings' own metres, east and north of their origin, by WGS84 radii there: good to a centimetre in the
+ * harbour.
+ */
 final class HarbourPlane {
 
     private static final double LATITUDE = 63.4389029083;

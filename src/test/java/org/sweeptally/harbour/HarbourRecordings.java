@@ -20,9 +20,9 @@ import java.util.SortedMap;
 import java.util.TreeMap;
 
 /**
- * Recordings of a radar and a lidar on a small ferry in a Norwegian harbour and canal, 2021, with true positions of two
- * vessels (Autoferry sensor fusion dataset, CC0). They lie beside the checkout, in {@code ../shared} or wherever the system
- * property {@code sweeptally.shared} says, and are never copied into it.
+ * Recordings of a radar and a lidar on a small ferry in a Norwegian harbour and canal, 2021, with true positions of
+ * two vessels (Autoferry sensor fusion dataset, CC0). They lie beside the checkout, in {@code ../shared} or wherever
+ * the system property {@code sweeptally.shared} says, and are never copied into it.
  */
 public final class HarbourRecordings {
 

@@ -43,7 +43,8 @@ class HarbourRecordingsTest {
     @Test
     void aScanIsOneClosingPartWithItsDetectionsInOrder() throws IOException {
         assertThat(new HarbourRecordings(folder).parts(2, List.of("radar"), Order.TIME)).containsExactly(
-                "{\"sensor\":\"radar\",\"scan\":0,\"scanTime\":\"2021-05-04T06:00:01.184Z\",\"part\":0,\"closesScan\":true,"
+                "{\"sensor\":\"radar\",\"scan\":0,\"scanTime\":\"2021-05-04T06:00:01.184Z\",\"part\":0,"
+                        + "\"closesScan\":true,"
                         + "\"sensorPosition\":{\"latitude\":63.438902908,\"longitude\":10.39908278},\"detections\":["
                         + "{\"id\":\"r0-0\",\"eastMetres\":-218.25,\"northMetres\":-142.62},"
                         + "{\"id\":\"r0-1\",\"eastMetres\":38.91,\"northMetres\":102.77}]}");
@@ -63,7 +64,9 @@ class HarbourRecordingsTest {
     void truthAndScanTimesAreOfOneScenario() throws IOException {
         HarbourRecordings recordings = new HarbourRecordings(folder);
         assertThat(recordings.truth(2)).containsOnlyKeys("1");
-        assertThat(recordings.truth(2).get("1")).hasSize(2).contains(new HarbourRecordings.Truth(0.031, -354.80, 84.64));
+        assertThat(recordings.truth(2).get("1"))
+                .hasSize(2)
+                .contains(new HarbourRecordings.Truth(0.031, -354.80, 84.64));
         assertThat(recordings.scanSeconds(2, "lidar")).containsEntry(0, 1.184).containsEntry(1, 1.689).hasSize(2);
     }
 }

@@ -57,8 +57,10 @@ class HarbourReplayTest {
                     Files.readAllLines(picture.resolve("tracks.ndjson")),
                     "radar",
                     HarbourScore.CUT_METRES);
-            System.out.printf(Locale.ROOT, "harbour, %s, scenario %d: %.3f m, %.1f identity changes a vessel, %.2f shown%n",
-                    sensors, scenario, score.truthSideMetres(), score.identityChangesPerVessel(), score.meanConfirmed());
+            System.out.printf(
+                    Locale.ROOT, "harbour, %s, scenario %d: %.3f m, %.1f identity changes a vessel, %.2f shown%n",
+                    sensors, scenario, score.truthSideMetres(), score.identityChangesPerVessel(),
+                    score.meanConfirmed());
             mean[0] += score.truthSideMetres() / HarbourRecordings.SCENARIOS.size();
             mean[1] += score.identityChangesPerVessel() / HarbourRecordings.SCENARIOS.size();
             mean[2] += score.meanConfirmed() / HarbourRecordings.SCENARIOS.size();
@@ -102,7 +104,9 @@ class HarbourReplayTest {
         ByteArrayOutputStream said = new ByteArrayOutputStream();
         PrintStream stream = new PrintStream(said, true, StandardCharsets.UTF_8);
         int exit = Main.run(
-                new String[] {"dry-run", "--site", SITE.toString(), "--parts", parts.toString(), "--out", out.toString()},
+                new String[] {
+                    "dry-run", "--site", SITE.toString(), "--parts", parts.toString(), "--out", out.toString()
+                },
                 InputStream.nullInputStream(), stream, stream);
         assertThat(exit).as(said.toString(StandardCharsets.UTF_8)).isZero();
         return out;

@@ -12,8 +12,8 @@ import org.sweeptally.harbour.HarbourRecordings.Truth;
 import org.sweeptally.score.OptimalAssignment;
 
 /**
- * How well a picture shows the vessels whose true places are known. At every scan of a sensor the vessels are assigned to
- * shown objects one to one, at least total distance, each distance cut.
+ * How well a picture shows the vessels whose true places are known. At every scan of a sensor the vessels are assigned
+ * to shown objects one to one, at least total distance, each distance cut.
  *
  * @param truthSideMetres          mean of the cut distances over vessels and scans
  * @param identityChangesPerVessel how often a vessel nearer than the cut was shown under another identity than before
@@ -89,7 +89,9 @@ public record HarbourScore(double truthSideMetres, double identityChangesPerVess
         return picture;
     }
 
-    /** Where each vessel is at a time: on the line between the places before and after, and at the ends where it stops. */
+    /**
+     * Where each vessel is at a time: on the line between the places before and after, and at the ends where it stops.
+     */
     private static SortedMap<String, double[]> vessels(SortedMap<String, List<Truth>> truth, double seconds) {
         SortedMap<String, double[]> vessels = new TreeMap<>();
         truth.forEach((vessel, places) -> {

@@ -9,7 +9,10 @@ import org.junit.jupiter.api.Test;
 
 class BrierScoreTest {
 
-    /** The score of Brier 1950 and its decomposition by Murphy 1973 (formulas from memory); a case small enough to redo. */
+    /**
+     * The score of Brier 1950 and its decomposition by Murphy 1973 (formulas from memory); a case small enough to
+     * redo.
+     */
     @Test
     void aWorkedCaseComesApartIntoItsThreeParts() {
         BrierScore.Tally tally = new BrierScore.Tally(10);

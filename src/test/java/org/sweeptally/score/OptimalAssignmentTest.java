@@ -5,6 +5,7 @@ import static org.assertj.core.api.Assertions.assertThatThrownBy;
 import static org.assertj.core.api.Assertions.within;
 
 import java.util.ArrayList;
+import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.SplittableRandom;
 import org.jgrapht.alg.matching.KuhnMunkresMinimalWeightBipartitePerfectMatching;
@@ -107,7 +108,7 @@ class OptimalAssignmentTest {
             }
         }
         return new KuhnMunkresMinimalWeightBipartitePerfectMatching<>(
-                        graph, new java.util.LinkedHashSet<>(left), new java.util.LinkedHashSet<>(right))
+                        graph, new LinkedHashSet<>(left), new LinkedHashSet<>(right))
                 .getMatching()
                 .getWeight();
     }

@@ -11,14 +11,15 @@ import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.MethodSource;
 
 /**
- * The definition is that of Schuhmacher, Vo and Vo 2008, IEEE TSP 56(8):3447-3457 (from memory). The worked cases are small
- * enough to redo by hand; they were computed twice, by going through all permutations and by an independent library.
+ * The definition is that of Schuhmacher, Vo and Vo 2008, IEEE TSP 56(8):3447-3457 (from memory). The worked cases are
+ * small enough to redo by hand; they were computed twice, by going through all permutations and by an independent
+ * library.
  */
 class OspaTest {
 
     private static final double TOLERANCE = 1e-12;
 
-    /** Truth, estimates, cut; then distance, localisation, cardinality for p = 1 and for p = 2; NaN where not tabulated. */
+    /** Truth, estimates, cut; then distance, localisation, cardinality for p = 1 and for p = 2. */
     private record Worked(
             double[][] truth, double[][] estimates, double cut, double[] first, double[] second) {}
 
@@ -61,7 +62,8 @@ class OspaTest {
     void workedCasesComeOut(Worked c) {
         Ospa.Score first = new Ospa(c.cut, 1).between(c.truth, c.estimates);
         Ospa.Score second = new Ospa(c.cut, 2).between(c.truth, c.estimates);
-        assertThat(r(first.distance(), first.localisation(), first.cardinality())).containsExactly(c.first, within(TOLERANCE));
+        assertThat(r(first.distance(), first.localisation(), first.cardinality()))
+                .containsExactly(c.first, within(TOLERANCE));
         assertThat(r(second.distance(), second.localisation(), second.cardinality()))
                 .containsExactly(c.second, within(TOLERANCE));
     }
@@ -79,7 +81,10 @@ class OspaTest {
             String about = "case " + n + " of seed 2008";
             assertThat(ospa.between(x, x).distance()).as(about).isZero();
             double xy = ospa.between(x, y).distance();
-            assertThat(xy).as(about).isCloseTo(ospa.between(y, x).distance(), within(1e-9)).isBetween(0.0, cut * (1 + 1e-12));
+            assertThat(xy)
+                    .as(about)
+                    .isCloseTo(ospa.between(y, x).distance(), within(1e-9))
+                    .isBetween(0.0, cut * (1 + 1e-12));
             assertThat(ospa.between(x, z).distance())
                     .as(about)
                     .isLessThanOrEqualTo(xy + ospa.between(y, z).distance() + 1e-9);

@@ -2,7 +2,9 @@ package org.sweeptally.world;
 
 import java.util.SplittableRandom;
 
-/** Random numbers that are the same on any machine: the generator's bits are specified, and StrictMath does the rest. */
+/**
+ * Random numbers that are the same on any machine: the generator's bits are specified, and StrictMath does the rest.
+ */
 final class Chance {
 
     private final SplittableRandom random;

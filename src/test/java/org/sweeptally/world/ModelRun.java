@@ -51,9 +51,9 @@ public final class ModelRun {
     public static FilterSettings settings(WorldSettings world, double confirming, double ending) {
         double density = world.objectsPerSquareMetre();
         return new FilterSettings(
-                world.accelerationNoise(), world.speedSigma(), world.lifetimeSeconds(), density / world.lifetimeSeconds(),
-                density, density, confirming, ending, FilterSettings.RECYCLING_BELOW, 5, 100, 100_000, 1_000_000,
-                1_000_000, 1000, 1e-5);
+                world.accelerationNoise(), world.speedSigma(), world.lifetimeSeconds(),
+                density / world.lifetimeSeconds(), density, density, confirming, ending,
+                FilterSettings.RECYCLING_BELOW, 5, 100, 100_000, 1_000_000, 1_000_000, 1000, 1e-5);
     }
 
     /** A scan as the filter takes it: nothing in it says what caused a detection. */

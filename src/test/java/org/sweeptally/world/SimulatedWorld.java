@@ -7,10 +7,11 @@ import java.util.SplittableRandom;
 /**
  * An invented world that is as the filter believes it to be: objects come into being anywhere, uniformly in place and
  * time, with a Gaussian velocity; live for an exponential time; move with continuous white noise acceleration, exactly
- * discretised. The sensor sees those near enough with a constant probability, with Gaussian errors, among uniform clutter.
+ * discretised. The sensor sees those near enough with a constant probability, with Gaussian errors, among uniform
+ * clutter.
  *
- * <p>Objects live on an area so much larger than what the sensor sees that what comes into view during a run is what would
- * come from an endless plane; so the square loses and gains objects across its border, at a steady density.
+ * <p>Objects live on an area so much larger than what the sensor sees that what comes into view during a run is what
+ * would come from an endless plane; so the square loses and gains objects across its border, at a steady density.
  */
 public final class SimulatedWorld {
 
@@ -101,8 +102,8 @@ public final class SimulatedWorld {
     }
 
     /**
-     * With u, v independent and of variance 1: velocity changes by sqrt(q t) u, place by t velocity + sqrt(q t^3) (u / 2 + v
-     * / sqrt(12)), which have the variances q t and q t^3 / 3 and the covariance q t^2 / 2.
+     * With u, v independent and of variance 1: velocity changes by sqrt(q t) u, place by t velocity + sqrt(q t^3) (u /
+     * 2 + v / sqrt(12)), which have the variances q t and q t^3 / 3 and the covariance q t^2 / 2.
      */
     private double[] moved(double[] x, double seconds) {
         double[] y = x.clone();

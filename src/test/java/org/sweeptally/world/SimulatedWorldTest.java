@@ -23,7 +23,7 @@ class SimulatedWorldTest {
                 sum[k] += scans.get(k).truth().size();
             }
         }
-        // A Poisson number at any time (superposition and thinning: Kingman 1993, from memory), so 4 standard errors are:
+        // The number is Poisson at any time (superposition and thinning: Kingman 1993, from memory); 4 standard errors.
         double tolerance = 4 * Math.sqrt(WORLD.objects() / runs);
         for (int k : new int[] {0, 20, 40, 59}) {
             assertThat(sum[k] / runs).as("scan %s of seeds 1 to %s", k, runs).isCloseTo(20, within(tolerance));
@@ -55,12 +55,17 @@ class SimulatedWorldTest {
                 }
             }
         }
-        assertThat((double) detected / chances).as("seeds 1 to 20").isCloseTo(0.9, within(4 * Math.sqrt(0.09 / chances)));
+        assertThat((double) detected / chances)
+                .as("seeds 1 to 20")
+                .isCloseTo(0.9, within(4 * Math.sqrt(0.09 / chances)));
         assertThat((double) clutter / scans).as("seeds 1 to 20").isCloseTo(30, within(4 * Math.sqrt(30.0 / scans)));
         assertThat(squares / detected).as("seeds 1 to 20").isCloseTo(1, within(4 / Math.sqrt(detected)));
     }
 
-    /** Continuous white noise acceleration over t: variances q t and q t^3 / 3, covariance q t^2 / 2 (Bar-Shalom et al. 2001). */
+    /**
+     * Continuous white noise acceleration over t: variances q t and q t^3 / 3, covariance q t^2 / 2 (Bar-Shalom et al.
+     * 2001).
+     */
     @Test
     void objectsMoveAsTheFilterBelieves() {
         WorldSettings shaken = new WorldSettings(4000, 200, 200, 600, 2, 6, 3, 2, 15, 0.9, 0);

@@ -53,8 +53,8 @@ public final class ToldFilter {
     }
 
     /**
-     * Takes in a scan; gives the picture: estimated places [east, north] in the square, of the objects alive that have ever
-     * been detected.
+     * Takes in a scan; gives the picture: estimated places [east, north] in the square, of the objects alive that have
+     * ever been detected.
      */
     public double[][] update(SimulatedScan scan) {
         SortedMap<Integer, Axis[]> alive = new TreeMap<>();

@@ -37,14 +37,14 @@ public record WorldSettings(
     public WorldSettings grownTo(double moreObjects) {
         double factor = moreObjects / objects;
         return new WorldSettings(
-                sideMetres * Math.sqrt(factor), marginMetres, moreObjects, lifetimeSeconds, accelerationNoise, speedSigma,
-                periodSeconds, scans, sigmaMetres, probabilityOfDetection, clutterPerScan * factor);
+                sideMetres * Math.sqrt(factor), marginMetres, moreObjects, lifetimeSeconds, accelerationNoise,
+                speedSigma, periodSeconds, scans, sigmaMetres, probabilityOfDetection, clutterPerScan * factor);
     }
 
     public WorldSettings withScans(int number) {
         return new WorldSettings(
-                sideMetres, marginMetres, objects, lifetimeSeconds, accelerationNoise, speedSigma, periodSeconds, number, sigmaMetres,
-                probabilityOfDetection, clutterPerScan);
+                sideMetres, marginMetres, objects, lifetimeSeconds, accelerationNoise, speedSigma, periodSeconds,
+                number, sigmaMetres, probabilityOfDetection, clutterPerScan);
     }
 
     public double areaSquareMetres() {
