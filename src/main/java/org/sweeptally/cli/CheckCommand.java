@@ -12,8 +12,8 @@ import picocli.CommandLine.Mixin;
         mixinStandardHelpOptions = true,
         description = {
             "Checks a site file: prints every fault with its line, or, if there is none, what the site will do: what"
-                    + " each sensor covers, how long the picture waits for whom, how many false births to expect, and how"
-                    + " soon an object is confirmed.",
+                    + " each sensor covers, how long the picture waits for whom, how many false births to expect, and"
+                    + " how soon an object is confirmed.",
             ""
         },
         footer = {"", "Example:", "  sweeptally check --site site.yaml"})

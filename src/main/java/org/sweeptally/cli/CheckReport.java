@@ -97,11 +97,11 @@ final class CheckReport {
         double hours = births.hours();
         if (births.births() == 0) {
             // Rule of three: Hanley and Lippman-Hand 1983, JAMA 249(13).
-            out.printf(Locale.ROOT, "  false births: fewer than %s an hour, with 95 %% certainty (none in %,d simulated scans"
-                    + " of clutter alone, %.2f hours)%n", rate(3 / hours), births.scans(), hours);
+            out.printf(Locale.ROOT, "  false births: fewer than %s an hour, with 95 %% certainty (none in %,d simulated"
+                    + " scans of clutter alone, %.2f hours)%n", rate(3 / hours), births.scans(), hours);
         } else {
-            out.printf(Locale.ROOT, "  false births: about %s an hour (%d in %,d simulated scans of clutter alone, %.2f"
-                    + " hours)%n", rate(births.births() / hours), births.births(), births.scans(), hours);
+            out.printf(Locale.ROOT, "  false births: about %s an hour (%d in %,d simulated scans of clutter alone,"
+                    + " %.2f hours)%n", rate(births.births() / hours), births.births(), births.scans(), hours);
         }
         Optional<PlanePoint> place = scene.typicalPlace();
         place.map(forecast::scansToConfirm).ifPresent(scans -> confirmation(scans, out));
@@ -113,8 +113,8 @@ final class CheckReport {
                     + " clutterPerScan and unseen%n", scans.confirmed(), scans.trials());
             return;
         }
-        out.printf("  an object in the middle is confirmed by scan %d, counted from its first detection, and 90 %% of them by"
-                + " scan %d (%d of %d simulated objects)%n",
+        out.printf("  an object in the middle is confirmed by scan %d, counted from its first detection, in 90 %% of"
+                + " cases by scan %d (%d of %d simulated objects)%n",
                 scans.median(), scans.ninetieth(), scans.confirmed(), scans.trials());
     }
 

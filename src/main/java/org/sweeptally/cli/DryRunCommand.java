@@ -70,7 +70,7 @@ final class DryRunCommand implements Callable<Integer> {
             throw new CommandFailedException(e.getFile() + ": may not be read or written");
         } catch (IOException e) {
             throw new CommandFailedException(
-                    "reading " + parts + " or writing to " + out + " failed: " + e.getMessage());
+                    "reading " + shownParts() + " or writing to " + out + " failed: " + e.getMessage());
         }
     }
 
@@ -83,6 +83,10 @@ final class DryRunCommand implements Callable<Integer> {
             throw new CommandFailedException(parts + ": is a folder, not a file of parts");
         }
         return new BufferedInputStream(Files.newInputStream(file));
+    }
+
+    private String shownParts() {
+        return parts.equals(STANDARD_INPUT) ? "standard input" : parts;
     }
 
     private Optional<Path> recording() {

@@ -34,8 +34,8 @@ final class DryRunSummary {
 
     private void regions(PrintStream out) {
         TextTable table = new TextTable(
-                "region", "scans", "detections", "rejects", "births", "ends", "shown now", "expected number", "90 % interval",
-                "expected unseen");
+                "region", "scans", "detections", "rejects", "births", "ends", "shown now", "expected number",
+                "90 % interval", "expected unseen");
         for (RegionMachine machine : run.local().machines()) {
             RegionTally tally = run.tallies().get(machine.region());
             RegionCounters counters = machine.counters();

@@ -73,7 +73,8 @@ public final class Main implements Runnable {
             terminal.err().println("sweeptally: " + e.getMessage());
             return FAILED;
         }
-        terminal.err().println("sweeptally: a fault of this program, not of its input: " + e);
+        terminal.err().println("sweeptally: a fault of this program, not of its input: " + e
+                + " (the log, on standard error, has the details)");
         LOG.error("a fault of this program", e);
         return FAILED;
     }

@@ -31,20 +31,21 @@ class BadInputDryRunTest {
 
     @ParameterizedTest(name = "{0}")
     @CsvSource(delimiter = '|', textBlock = """
-        text                  | what the gull saw                      | NOT_A_PART | the line is not JSON, at column 1
-        a broken-off line     | {"sensor":"north-shore","scanTime":"20 | NOT_A_PART | the line is not JSON, at column
-        a list                | [1,2]                                  | NOT_A_PART | is not a JSON object
-        two parts on a line   | {"sensor":"a","scanTime":"2031-05-01T04:00:04Z"} {} | NOT_A_PART | something follows the part
-        a slip in a field     | {"sensor":"north-shore","scanTime":"2031-05-01T04:00:04Z","detektions":[]} | BAD_FIELD | detections
-        a field twice         | {"sensor":"north-shore","sensor":"north-shore","scanTime":"2031-05-01T04:00:04Z"} | BAD_FIELD | sensor is given more than once
-        no scan time          | {"sensor":"north-shore","detections":[]} | BAD_FIELD | scanTime is missing
-        a time without a zone | {"sensor":"north-shore","scanTime":"2031-05-01T04:00:04"} | BAD_FIELD | scanTime is "2031-05-01T04:00:04"
-        an unknown sensor     | {"sensor":"lighthouse","scanTime":"2031-05-01T04:00:04Z","closesScan":true} | UNKNOWN_SENSOR | the site's sensors are north-shore, pilot-house, south-shore
+        text | what the gull saw | NOT_A_PART | the line is not JSON, at column 1
+        a broken-off line | {"sensor":"north-shore","scanTi | NOT_A_PART | the line is not JSON, at column
+        a list | [1,2] | NOT_A_PART | is not a JSON object
+        two parts on a line | {$NORTH,$TIME} {} | NOT_A_PART | something follows the part
+        a slip in a field | {$NORTH,$TIME,"detektions":[]} | BAD_FIELD | detections
+        a field twice | {$NORTH,$NORTH,$TIME} | BAD_FIELD | sensor is given more than once
+        no scan time | {$NORTH,"detections":[]} | BAD_FIELD | scanTime is missing
+        no zone | {$NORTH,"scanTime":"2031-05-01T04:00:04"} | BAD_FIELD | scanTime is "2031-05-01T04:00:04"
+        an unknown sensor | {"sensor":"lighthouse",$TIME} | UNKNOWN_SENSOR | sensors are north-shore, pilot-house, south
         """)
     void aLineThatIsNoUsablePartIsRejectedWithASentence(String what, String line, String reason, String words)
             throws IOException {
         List<String> lines = vessel(20);
-        lines.add(PLACE, line);
+        lines.add(PLACE, line.replace("$NORTH", "\"sensor\":\"north-shore\"")
+                .replace("$TIME", "\"scanTime\":\"2031-05-01T04:00:04Z\""));
         DryRunOf run = run(lines);
         assertOneReject(run, reason, words);
         assertThat(run.counts()).hasSize(lines.size() - 1);
@@ -54,24 +55,26 @@ class BadInputDryRunTest {
 
     @ParameterizedTest(name = "{0}")
     @CsvSource(delimiter = '|', textBlock = """
-        latitude not a number | "latitude":NaN,"longitude":-33.5       | latitude is NaN: degrees north from -90 to 90
-        endless longitude     | "latitude":44,"longitude":Infinity     | longitude is Infinity: degrees east from -180 to 180
-        latitude 91           | "latitude":91,"longitude":-33.5        | latitude is 91.0: degrees north from -90 to 90
-        an endless offset     | "eastMetres":-Infinity,"northMetres":0 | eastMetres is -Infinity: metres from the sensor
-        no place              | "id":"nowhere"                         | latitude and longitude
-        noise below zero      | "latitude":44,"longitude":-33.5,"sigmaMetres":-1 | sigmaMetres is -1
-        another day's time    | "latitude":44,"longitude":-33.5,"time":"2031-05-02T04:00:05Z" | the look lasts from
+        latitude not a number | $AT NaN,"longitude":-33.5 | latitude is NaN: degrees north from -90 to 90
+        endless longitude | $AT 44,"longitude":Infinity | longitude is Infinity: degrees east from -180 to 180
+        latitude 91 | $AT 91,"longitude":-33.5 | latitude is 91.0: degrees north from -90 to 90
+        an endless offset | "eastMetres":-Infinity,"northMetres":0 | eastMetres is -Infinity: metres from the sensor
+        no place | "id":"nowhere" | latitude and longitude
+        noise below zero | $AT 44,"longitude":-33.5,"sigmaMetres":-1 | sigmaMetres is -1
+        another day's time | $AT 44,"longitude":-33.5,"time":"2031-05-02T04:00:05Z" | the look lasts from
         """)
     void aBadDetectionIsRejectedAndItsNeighboursAreUsed(String what, String fields, String words) throws IOException {
         List<String> lines = vessel(20);
-        String bad = lines.get(PLACE).replace("\"detections\":[", "\"detections\":[{" + fields + "},");
+        String detection = "{" + fields.replace("$AT", "\"latitude\":") + "}";
+        String bad = lines.get(PLACE).replace("\"detections\":[", "\"detections\":[" + detection + ",");
         String good = "n3"; // the id of the detection that follows
         assertThat(bad).contains("\"id\":\"" + good + "\"");
         lines.set(PLACE, bad);
         DryRunOf run = run(lines);
         JsonNode reject = assertOneReject(run, "BAD_FIELD", words);
         assertThat(reject.get("whole").asBoolean()).isFalse();
-        assertThat(reject.get("reasons").get(0).get("indexes")).hasSize(1).first().extracting(JsonNode::asInt).isEqualTo(0);
+        assertThat(reject.get("reasons").get(0).get("indexes")).singleElement().satisfies(
+                index -> assertThat(index.asInt()).isZero());
         assertThat(reject.get("originalText").asText()).isEqualTo(bad);
         assertThat(run.tracks()).anyMatch(track -> uses(track, good));
         assertVesselFollowed(run);
@@ -179,7 +182,8 @@ class BadInputDryRunTest {
         DryRunOf run = run(lines);
         assertThat(run.rejects()).isEmpty();
         assertThat(run.counts()).hasSize(lines.size());
-        assertThat(run.counts().stream().filter(count -> count.get("sensor").asText().equals("north-shore"))).hasSize(16);
+        assertThat(run.counts().stream().filter(count -> count.get("sensor").asText().equals("north-shore")))
+                .hasSize(16);
         assertThat(run.out()).contains("CLOCK_AHEAD").contains("the clock of sensor south-shore seems to run ahead");
         assertThat(run.out()).doesNotContain("-shore has said nothing");
     }
@@ -286,7 +290,8 @@ class BadInputDryRunTest {
     }
 
     private static String flood(String time, int detections) {
-        return "{\"sensor\":\"north-shore\",\"scanTime\":\"" + time + "\",\"scan\":3,\"closesScan\":true,\"detections\":["
+        return "{\"sensor\":\"north-shore\",\"scanTime\":\"" + time + "\",\"scan\":3,\"closesScan\":true,"
+                + "\"detections\":["
                 + "{\"latitude\":44,\"longitude\":-33.5},".repeat(detections - 1)
                 + "{\"latitude\":44,\"longitude\":-33.5}]}";
     }

@@ -80,13 +80,14 @@ class CheckCommandTest {
         assertThat(CheckReport.ownWaitSeconds(sensor(3, 2.5, 2))).isZero(); // its own least interval promises more
         assertThat(CheckReport.ownWaitSeconds(sensor(3, 0, 2))).isEqualTo(3);
         assertThat(CheckReport.ownWaitSeconds(sensor(3, 0, 4))).isEqualTo(6);
-        assertThat(CheckReport.ownWaitSeconds(sensor(3, 0, 3))).isEqualTo(6); // a promise up to a time leaves that time open
+        // A promise of nothing before a time leaves that time open.
+        assertThat(CheckReport.ownWaitSeconds(sensor(3, 0, 3))).isEqualTo(6);
     }
 
     private static SensorSettings sensor(double interval, double leastInterval, double disorder) {
         return new SensorSettings(
                 "radar", Optional.of(new LatLon(44, -33.5)), Optional.empty(), 5000,
-                new SensorSettings.PositionNoise(10, 10), DetectionProfile.constant(0.9), 10, interval, 0, leastInterval,
-                disorder, 10);
+                new SensorSettings.PositionNoise(10, 10), DetectionProfile.constant(0.9), 10, interval, 0,
+                leastInterval, disorder, 10);
     }
 }

@@ -56,7 +56,8 @@ class CheckForecastTest {
         assertThat(births.scans()).isLessThan(3000).isGreaterThan(10);
     }
 
-    private CheckForecast.ScansToConfirm confirm(double detection, double clutter, double confirming) throws IOException {
+    private CheckForecast.ScansToConfirm confirm(double detection, double clutter, double confirming)
+            throws IOException {
         SiteScene scene = scene(detection, clutter, confirming);
         return new CheckForecast(scene).scansToConfirm(scene.typicalPlace().orElseThrow());
     }

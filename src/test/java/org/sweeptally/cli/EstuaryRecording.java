@@ -37,7 +37,7 @@ final class EstuaryRecording {
     private static final String OFFSETS = "pilot-house";
 
     /**
-     * A vessel: where it is at the beginning, how it moves, how fast it turns to the right, and when it is there at all.
+     * A vessel: where it is at the beginning, how it moves, how fast it turns to the right, and when it is there.
      * Metres, metres a second, radians a second, seconds, in a plane that touches in the middle of the region.
      */
     private record Vessel(

@@ -3,6 +3,7 @@ package org.sweeptally.cli;
 import static org.assertj.core.api.Assertions.assertThat;
 
 import java.io.IOException;
+import java.io.InputStream;
 import java.nio.file.Files;
 import java.nio.file.Path;
 import org.junit.jupiter.api.Test;
@@ -85,8 +86,39 @@ class MainTest {
         Path file = Files.writeString(folder.resolve("picture"), "mine");
         CliRun run = CliRun.of("dry-run", "--site", SITE, "--parts", PARTS, "--out", file.toString());
         assertThat(run.exitCode()).isEqualTo(1);
-        assertThat(run.err()).isEqualTo("sweeptally: " + file + ": is a file, and a folder is needed for the records\n");
+        assertThat(run.err())
+                .isEqualTo("sweeptally: " + file + ": is a file, and a folder is needed for the records\n");
         assertThat(file).hasContent("mine");
+    }
+
+    @Test
+    void anInputThatBreaksOffFailsInOneSentence() {
+        CliRun run = CliRun.withInput(throwing(new IOException("the line is dead")), "dry-run", "--site", SITE,
+                "--parts", "-", "--out", folder.toString());
+        assertThat(run.exitCode()).isEqualTo(1);
+        assertThat(run.err()).isEqualTo(
+                "sweeptally: reading standard input or writing to " + folder + " failed: the line is dead\n");
+    }
+
+    @Test
+    void aFaultOfTheProgramItselfIsNamedInOneLine() {
+        CliRun run = CliRun.withInput(throwing(new IllegalStateException("impossible")), "dry-run", "--site", SITE,
+                "--parts", "-", "--out", folder.toString());
+        assertThat(run.exitCode()).isEqualTo(1);
+        assertThat(run.err()).contains("a fault of this program").contains("impossible").contains("the log");
+        assertThat(run.err().lines()).hasSize(1);
+    }
+
+    private static InputStream throwing(Exception cause) {
+        return new InputStream() {
+            @Override
+            public int read() throws IOException {
+                if (cause instanceof IOException e) {
+                    throw e;
+                }
+                throw (RuntimeException) cause;
+            }
+        };
     }
 
     @Test
