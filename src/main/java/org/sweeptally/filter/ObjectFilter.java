@@ -27,7 +27,7 @@ import org.sweeptally.model.NearlyConstantVelocity;
 public final class ObjectFilter {
 
     private final PlaneArea core;
-    private final double apronMetres;
+    private double apronMetres;
     private final Counters counters = new Counters();
     private final Association association = new Association();
     private final AssociationProblem problem = new AssociationProblem();
@@ -49,10 +49,11 @@ public final class ObjectFilter {
         this.unseen = new Unseen(settings, core, apronMetres, counters);
     }
 
-    /** Goes on with other settings. */
-    public void settings(FilterSettings changed) {
-        unseen.settings(changed);
+    /** Goes on with other settings, and perhaps with another apron. */
+    public void settings(FilterSettings changed, double changedApronMetres) {
+        unseen.settings(changed, changedApronMetres);
         settings = changed;
+        apronMetres = changedApronMetres;
         motion = new NearlyConstantVelocity(changed.accelerationNoise());
     }
 

@@ -20,7 +20,7 @@ import org.sweeptally.model.PositionUpdate;
 final class Unseen {
 
     private final PlaneArea core;
-    private final double apronMetres;
+    private double apronMetres;
     private final Counters counters;
     private final PositionUpdate update = new PositionUpdate();
     private final Mixture mixture = new Mixture();
@@ -50,13 +50,15 @@ final class Unseen {
         return terms;
     }
 
-    void settings(FilterSettings changed) {
-        if (changed.unseenCellMetres() != settings.unseenCellMetres()) {
-            UnseenGrid finer = new UnseenGrid(changed, core, apronMetres);
-            finer.takeFrom(grid);
-            grid = finer;
+    void settings(FilterSettings changed, double changedApronMetres) {
+        if (changed.unseenCellMetres() != settings.unseenCellMetres() || changedApronMetres != apronMetres) {
+            UnseenGrid other = new UnseenGrid(changed, core, changedApronMetres);
+            other.fill(changed.outsidePerSquareMetre());
+            other.takeFrom(grid);
+            grid = other;
         }
         settings = changed;
+        apronMetres = changedApronMetres;
     }
 
     void predict(NearlyConstantVelocity motion, double survival, double seconds) {

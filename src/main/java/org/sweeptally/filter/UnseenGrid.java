@@ -237,18 +237,32 @@ final class UnseenGrid {
         return sum;
     }
 
-    /** Takes over another grid's mass, cell by cell at the centres. */
+    /**
+     * Takes over another grid's density wherever the other has one; elsewhere this grid keeps its own. A cell takes the mean
+     * over points spread evenly in it.
+     */
     void takeFrom(UnseenGrid other) {
-        Arrays.fill(mass, 0);
-        for (int row = 0; row < other.rows; row++) {
-            for (int column = 0; column < other.columns; column++) {
-                int cell = other.cell(row, column);
-                if (other.inside[cell]) {
-                    deposit(other.west + (column + 0.5) * other.side, other.south + (row + 0.5) * other.side,
-                            other.mass[cell]);
+        for (int row = 0; row < rows; row++) {
+            for (int column = 0; column < columns; column++) {
+                int cell = cell(row, column);
+                if (inside[cell]) {
+                    mass[cell] = meanMass(other, row, column);
                 }
             }
         }
+    }
+
+    private double meanMass(UnseenGrid other, int row, int column) {
+        double perCell = side * side / (other.side * other.side);
+        double sum = 0;
+        for (int i = 0; i < SUBPOINTS; i++) {
+            for (int j = 0; j < SUBPOINTS; j++) {
+                int there = other.cellAt(
+                        west + (column + (i + 0.5) / SUBPOINTS) * side, south + (row + (j + 0.5) / SUBPOINTS) * side);
+                sum += there >= 0 ? perCell * other.mass[there] : mass[cell(row, column)];
+            }
+        }
+        return sum / (SUBPOINTS * SUBPOINTS);
     }
 
     void write(DataOutput out) throws IOException {

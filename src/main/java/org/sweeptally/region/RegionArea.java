@@ -16,9 +16,17 @@ final class RegionArea {
     private final PlaneArea core;
 
     RegionArea(RegionSettings settings) {
+        this(settings, new LocalPlane(settings.core().middle()));
+    }
+
+    private RegionArea(RegionSettings settings, LocalPlane plane) {
+        this(settings, plane, PlaneArea.of(settings.core(), plane));
+    }
+
+    private RegionArea(RegionSettings settings, LocalPlane plane, PlaneArea core) {
         this.settings = settings;
-        this.plane = new LocalPlane(settings.core().middle());
-        this.core = PlaneArea.of(settings.core(), plane);
+        this.plane = plane;
+        this.core = core;
     }
 
     String name() {
@@ -65,12 +73,15 @@ final class RegionArea {
         return PolygonDistance.between(settings.core(), core, roams, PlaneArea.of(roams, plane), plane) <= metres;
     }
 
-    /** Whether the other settings of the region leave it where it is. */
+    /** Whether the other settings of the region leave its core where it is. */
     boolean isWhere(RegionSettings other) {
         return settings.core().outer().equals(other.core().outer())
-                && settings.core().holes().equals(other.core().holes())
-                && settings.apronMetres() == other.apronMetres()
-                && settings.unseenCellMetres() == other.unseenCellMetres();
+                && settings.core().holes().equals(other.core().holes());
+    }
+
+    /** The same core, perhaps with another apron or other cells. */
+    RegionArea with(RegionSettings other) {
+        return new RegionArea(other, plane, core);
     }
 
     RegionSettings settings() {

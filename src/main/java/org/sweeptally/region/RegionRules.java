@@ -52,13 +52,13 @@ final class RegionRules {
      */
     RegionRules next(SettingsBody later, Function<String, Site> reader) {
         Site laterSite = reader.apply(later.getText());
-        if (!area.isWhere(settingsOf(area.name(), laterSite, later))) {
-            throw new IllegalStateException("settings revision " + later.getRevision()
-                    + " change the polygon, the apron"
-                    + " or the unseen cells of region " + area.name() + ", which runs with those of revision "
-                    + body.getRevision() + ": a running region stays where it is; give the new one another name");
+        RegionSettings there = settingsOf(area.name(), laterSite, later);
+        if (!area.isWhere(there)) {
+            throw new IllegalStateException("settings revision " + later.getRevision() + " change the polygon of region "
+                    + area.name() + ", which runs with that of revision " + body.getRevision()
+                    + ": a running region stays where it is; give the new one another name");
         }
-        return new RegionRules(later, laterSite, area);
+        return new RegionRules(later, laterSite, area.with(there));
     }
 
     private static RegionSettings settingsOf(String region, Site site, SettingsBody body) {

@@ -12,7 +12,7 @@ import org.sweeptally.site.SensorSettings;
 /** What a scan does when its turn has come: the filter takes it in, and the picture that follows is published. */
 final class ScanEffect {
 
-    private final ScanConversion conversion;
+    private ScanConversion conversion;
     private final ObjectFilter filter;
     private final Publisher publisher;
     private final BoundWatch boundWatch;
@@ -53,7 +53,8 @@ final class ScanEffect {
 
     /** Goes on under other settings. */
     void settings(RegionRules rules) {
-        filter.settings(rules.filterSettings());
+        filter.settings(rules.filterSettings(), rules.area().apronMetres());
+        conversion = new ScanConversion(rules.area());
     }
 
     /**

@@ -185,6 +185,18 @@ class SettingsEntriesTest {
     }
 
     @Test
+    void theApronAndTheCellsMayChangeWhileARegionRuns() {
+        SensorSettings nearSighted = TestSites.withReach(NORTH, 100);
+        Rig rig = Rig.with(nearSighted).apply(part("north-shore", 1), part("north-shore", 2));
+        Site wider = TestSites.withApron(TestSites.site(2, nearSighted), 800, 130);
+        rig.apply(rig.settings(wider, 3)).apply(part("north-shore", 3), part("north-shore", 4));
+        assertThat(revisions(rig)).containsExactly(1, 1, 2, 2);
+        double before = rig.out.counts.get(1).getExpectedUnseen();
+        double after = rig.out.counts.get(2).getExpectedUnseen();
+        assertThat(after).as("unseen objects of the core, but for the edges of cells").isBetween(0.98 * before, 1.02 * before);
+    }
+
+    @Test
     void settingsThatDoNotKnowTheRegionAreRefused() {
         Rig rig = new Rig();
         Site other = TestSites.site(

@@ -52,7 +52,8 @@ class SnapshotTest {
         world.scansOf(pilot, 2).stream().limit(20).forEach(scan -> parts.addAll(scan.parts()));
         parts.sort(java.util.Comparator.comparingLong((LogEntry entry) -> ScanParts.partOf(entry).getScanTimeMicros()));
         Site site = TestSites.site(1, north, pilot, mute);
-        Site later = TestSites.withThresholds(TestSites.site(2, north, pilot, mute), 0.6, 0.2);
+        Site later = TestSites.withApron(
+                TestSites.withThresholds(TestSites.site(2, north, pilot, mute), 0.6, 0.2), 450, 160);
         List<LogEntry> log = new ArrayList<>(parts.subList(0, 5));
         log.add(1, Entries.tick(100));
         log.add(Entries.settings(reader.text(site), site));

@@ -147,6 +147,15 @@ final class TestSites {
                 false);
     }
 
+    /** The same regions with another apron and other cells. */
+    static Site withApron(Site s, double apronMetres, double cellMetres) {
+        List<RegionSettings> regions = s.regions().stream()
+                .map(region -> new RegionSettings(region.name(), region.core(), apronMetres, cellMetres))
+                .toList();
+        return new Site(s.name(), s.revision(), s.fromMicros(), s.sensors(), regions, s.motion(), s.lifetimeSeconds(),
+                s.unseen(), s.thresholds(), s.bounds(), s.rejectOutside());
+    }
+
     static Site withThresholds(Site s, double confirming, double ending) {
         return new Site(s.name(), s.revision(), s.fromMicros(), s.sensors(), s.regions(), s.motion(),
                 s.lifetimeSeconds(),
