@@ -2,8 +2,10 @@ package org.sweeptally.cli;
 
 import static org.assertj.core.api.Assertions.assertThat;
 
+import java.io.ByteArrayOutputStream;
 import java.io.IOException;
 import java.io.InputStream;
+import java.io.PrintStream;
 import java.nio.file.Files;
 import java.nio.file.Path;
 import org.junit.jupiter.api.Test;
@@ -102,11 +104,20 @@ class MainTest {
 
     @Test
     void aFaultOfTheProgramItselfIsNamedInOneLine() {
-        CliRun run = CliRun.withInput(throwing(new IllegalStateException("impossible")), "dry-run", "--site", SITE,
-                "--parts", "-", "--out", folder.toString());
+        PrintStream standardError = System.err;
+        ByteArrayOutputStream log = new ByteArrayOutputStream();
+        System.setErr(new PrintStream(log, true));
+        CliRun run;
+        try {
+            run = CliRun.withInput(throwing(new IllegalStateException("impossible")), "dry-run", "--site", SITE,
+                    "--parts", "-", "--out", folder.toString());
+        } finally {
+            System.setErr(standardError);
+        }
         assertThat(run.exitCode()).isEqualTo(1);
         assertThat(run.err()).contains("a fault of this program").contains("impossible").contains("the log");
         assertThat(run.err().lines()).hasSize(1);
+        assertThat(log.toString()).contains("IllegalStateException: impossible").contains("at org.sweeptally.");
     }
 
     private static InputStream throwing(Exception cause) {
