@@ -6,6 +6,7 @@ import org.sweeptally.geo.LocalPlane;
 import org.sweeptally.geo.PlaneArea;
 import org.sweeptally.geo.PlanePoint;
 import org.sweeptally.model.Look;
+import org.sweeptally.region.PartRouter;
 import org.sweeptally.site.RegionSettings;
 import org.sweeptally.site.SensorSettings;
 import org.sweeptally.site.Site;
@@ -40,9 +41,12 @@ final class SiteScene {
         return core;
     }
 
-    /** Sensors that can see any of the region's core, by name. */
+    /** Sensors that can see any of what the region hears, by name: it waits for these. */
     List<SensorSettings> sensors() {
-        return site.sensors().stream().filter(sensor -> shareWithinReach(sensor) > 0).toList();
+        PartRouter router = new PartRouter(site);
+        return site.sensors().stream()
+                .filter(sensor -> router.regionsSeenBy(sensor.name()).contains(region.name()))
+                .toList();
     }
 
     PlanePoint positionOf(SensorSettings sensor) {

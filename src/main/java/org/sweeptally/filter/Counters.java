@@ -15,6 +15,7 @@ public final class Counters {
         OBSERVATIONS,
         GATED_COMPONENT_PAIRS,
         GATED_TERM_PAIRS,
+        PAIRS_OVER_BOUND,
         CLUSTERS_CLOSED_FORM,
         CLUSTERS_EXACT,
         CLUSTERS_PROPAGATED,

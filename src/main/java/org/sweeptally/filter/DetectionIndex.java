@@ -12,6 +12,9 @@ import org.sweeptally.model.PositionMeasurement;
  */
 final class DetectionIndex {
 
+    /** A measurement whose variance is more than this many times the median is kept out of the raster. */
+    private static final double WIDE_VARIANCES = 64;
+
     private final double minEast;
     private final double minNorth;
     private final double bucketMetres;
@@ -22,6 +25,9 @@ final class DetectionIndex {
     private final int[] bucketStart;
     private final int[] sorted;
 
+    /** Measurements that every query finds. */
+    private final int[] wide;
+
     private final double largestSigma;
     private final double leastLag;
     private final double greatestLag;
@@ -29,6 +35,7 @@ final class DetectionIndex {
     private int[] found = new int[64];
 
     DetectionIndex(List<Observation> observations) {
+        boolean[] isWide = wide(observations);
         double west = Double.POSITIVE_INFINITY;
         double east = Double.NEGATIVE_INFINITY;
         double south = Double.POSITIVE_INFINITY;
@@ -36,22 +43,27 @@ final class DetectionIndex {
         double variance = 0;
         double shortest = Double.POSITIVE_INFINITY;
         double longest = Double.NEGATIVE_INFINITY;
-        for (Observation observation : observations) {
-            PositionMeasurement z = observation.measurement();
+        int wideOnes = 0;
+        for (int j = 0; j < isWide.length; j++) {
+            if (isWide[j]) {
+                wideOnes++;
+                continue;
+            }
+            PositionMeasurement z = observations.get(j).measurement();
             west = Math.min(west, z.east());
             east = Math.max(east, z.east());
             south = Math.min(south, z.north());
             north = Math.max(north, z.north());
-            variance = Math.max(variance, Math.max(z.varEast(), z.varNorth()));
+            variance = Math.max(variance, largestVariance(z));
             shortest = Math.min(shortest, z.lagSeconds());
             longest = Math.max(longest, z.lagSeconds());
         }
-        int m = observations.size();
+        int m = isWide.length - wideOnes;
         largestSigma = Math.sqrt(variance);
-        leastLag = shortest;
-        greatestLag = longest;
-        minEast = west;
-        minNorth = south;
+        leastLag = m == 0 ? 0 : shortest;
+        greatestLag = m == 0 ? 0 : longest;
+        minEast = m == 0 ? 0 : west;
+        minNorth = m == 0 ? 0 : south;
         double width = m == 0 ? 0 : east - west;
         double height = m == 0 ? 0 : north - south;
         bucketMetres = Math.max(1e-3, Math.max(
@@ -60,19 +72,50 @@ final class DetectionIndex {
         rows = 1 + (int) (height / bucketMetres);
         bucketStart = new int[columns * rows + 1];
         sorted = new int[m];
-        int[] bucket = new int[m];
-        for (int j = 0; j < m; j++) {
-            PositionMeasurement z = observations.get(j).measurement();
-            bucket[j] = row(z.north()) * columns + column(z.east());
-            bucketStart[bucket[j] + 1]++;
+        wide = new int[wideOnes];
+        fill(observations, isWide);
+    }
+
+    private void fill(List<Observation> observations, boolean[] isWide) {
+        int[] bucket = new int[isWide.length];
+        int wideOnes = 0;
+        for (int j = 0; j < isWide.length; j++) {
+            if (isWide[j]) {
+                wide[wideOnes++] = j;
+            } else {
+                PositionMeasurement z = observations.get(j).measurement();
+                bucket[j] = row(z.north()) * columns + column(z.east());
+                bucketStart[bucket[j] + 1]++;
+            }
         }
         for (int b = 0; b < columns * rows; b++) {
             bucketStart[b + 1] += bucketStart[b];
         }
         int[] next = Arrays.copyOf(bucketStart, columns * rows);
-        for (int j = 0; j < m; j++) {
-            sorted[next[bucket[j]]++] = j;
+        for (int j = 0; j < isWide.length; j++) {
+            if (!isWide[j]) {
+                sorted[next[bucket[j]]++] = j;
+            }
         }
+    }
+
+    /** Which measurements are so much less exact than most that they would widen everybody's search. */
+    private static boolean[] wide(List<Observation> observations) {
+        double[] variances = new double[observations.size()];
+        for (int j = 0; j < variances.length; j++) {
+            variances[j] = largestVariance(observations.get(j).measurement());
+        }
+        double[] ordered = variances.clone();
+        Arrays.sort(ordered);
+        boolean[] wide = new boolean[variances.length];
+        for (int j = 0; j < wide.length; j++) {
+            wide[j] = variances[j] > WIDE_VARIANCES * ordered[ordered.length / 2];
+        }
+        return wide;
+    }
+
+    private static double largestVariance(PositionMeasurement z) {
+        return Math.max(z.varEast(), z.varNorth());
     }
 
     /**
@@ -81,8 +124,13 @@ final class DetectionIndex {
      * @return how many; {@link #found} names them, in order of the scan
      */
     int query(Gaussian density, double gateSigmas) {
+        if (wide.length > found.length) {
+            found = Arrays.copyOf(found, 2 * wide.length);
+        }
+        System.arraycopy(wide, 0, found, 0, wide.length);
+        int count = wide.length;
         if (sorted.length == 0) {
-            return 0;
+            return count;
         }
         DMatrix4x4 p = density.covariance;
         double lag = Math.max(Math.abs(leastLag), Math.abs(greatestLag));
@@ -96,7 +144,6 @@ final class DetectionIndex {
         int lastColumn = column(Math.max(east1, east2) + reachEast);
         int firstRow = row(Math.min(north1, north2) - reachNorth);
         int lastRow = row(Math.max(north1, north2) + reachNorth);
-        int count = 0;
         for (int row = firstRow; row <= lastRow; row++) {
             int from = bucketStart[row * columns + firstColumn];
             int to = bucketStart[row * columns + lastColumn + 1];

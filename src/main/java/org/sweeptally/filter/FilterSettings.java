@@ -19,6 +19,7 @@ package org.sweeptally.filter;
  * @param exactAssociationSteps          bound on the work of one exactly solved cluster
  * @param propagationSweeps              bound on sweeps of belief propagation over one cluster
  * @param leastTermWeight                expected objects below which a weak new object goes to the grid at once
+ * @param gatedPairs                     bound on pairs of a scan's observations with components, and with terms
  */
 public record FilterSettings(
         double accelerationNoise,
@@ -36,7 +37,8 @@ public record FilterSettings(
         int unseenTerms,
         long exactAssociationSteps,
         int propagationSweeps,
-        double leastTermWeight) {
+        double leastTermWeight,
+        int gatedPairs) {
 
     /** Existence below which a component is better kept as part of the unseen; common practice, no source. */
     public static final double RECYCLING_BELOW = 0.1;

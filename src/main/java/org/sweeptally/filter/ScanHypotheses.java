@@ -10,6 +10,7 @@ import org.sweeptally.filter.association.AssociationProblem;
 import org.sweeptally.filter.association.AssociationMarginals;
 import org.sweeptally.model.Gaussian;
 import org.sweeptally.model.Look;
+import org.sweeptally.model.PositionMeasurement;
 import org.sweeptally.model.PositionUpdate;
 
 /**
@@ -81,7 +82,10 @@ final class ScanHypotheses {
         }
     }
 
-    /** Adds component i's row to the problem. */
+    /**
+     * Adds component i's row to the problem. Near an edge the probability of detection of a pair is taken where the sensor
+     * measured, since that decided whether it would report it: of two looks side by side the one that reported has it.
+     */
     private void gate(Component component, int i, DetectionIndex index) {
         Look look = scan.look();
         Gaussian density = component.density;
@@ -98,12 +102,15 @@ final class ScanHypotheses {
         int candidates = index.query(density, settings.gateSigmas());
         for (int c = 0; c < candidates; c++) {
             int j = index.found(c);
-            if (!update.measure(scan.observations().get(j).measurement())) {
+            PositionMeasurement z = scan.observations().get(j).measurement();
+            if (!update.measure(z)) {
                 counters.add(Counters.Name.INNOVATIONS_NOT_POSITIVE, 1);
             } else if (update.distanceSquared() <= gate) {
-                double there = Double.isNaN(constant)
-                        ? look.probabilityOfDetection(update.updatedEast(), update.updatedNorth())
-                        : constant;
+                if (problem.pairs() == settings.gatedPairs()) {
+                    counters.add(Counters.Name.PAIRS_OVER_BOUND, 1);
+                    continue;
+                }
+                double there = Double.isNaN(constant) ? look.probabilityOfDetection(z.east(), z.north()) : constant;
                 problem.addPair(j, existence[i] * there * update.likelihood());
             }
         }

@@ -3,7 +3,9 @@ package org.sweeptally.filter;
 import java.util.ArrayList;
 import java.util.Comparator;
 import java.util.List;
+import java.util.SortedMap;
 import java.util.SortedSet;
+import java.util.TreeMap;
 import org.ejml.data.DMatrix4x4;
 import org.sweeptally.geo.PlaneArea;
 import org.sweeptally.model.Gaussian;
@@ -92,11 +94,16 @@ final class Unseen {
             update.prior(term.density);
             for (int c = 0; c < candidates; c++) {
                 int j = index.found(c);
-                if (!update.measure(observations.get(j).measurement())) {
+                PositionMeasurement z = observations.get(j).measurement();
+                if (!update.measure(z)) {
                     counters.add(Counters.Name.INNOVATIONS_NOT_POSITIVE, 1);
                 } else if (update.distanceSquared() <= gate) {
+                    if (evidence.pairs() == settings.gatedPairs()) {
+                        counters.add(Counters.Name.PAIRS_OVER_BOUND, 1);
+                        continue;
+                    }
                     double detection = Double.isNaN(everywhere)
-                            ? scan.look().probabilityOfDetection(update.updatedEast(), update.updatedNorth())
+                            ? scan.look().probabilityOfDetection(z.east(), z.north())
                             : everywhere;
                     evidence.addTerm(j, t, term.weight * detection * update.likelihood());
                 }
@@ -144,19 +151,25 @@ final class Unseen {
     /** The tag from which over half of the evidence for an observation comes, with its share; null if there is none. */
     Heir heir(UnseenEvidence evidence, int j) {
         double half = 0.5 * evidence.total(j);
+        SortedMap<Identity, Double> sums = new TreeMap<>();
         for (int pair = evidence.firstPair(j); pair < evidence.endPair(j); pair++) {
             ObjectHistory tag = terms.get(evidence.term(pair)).tag;
-            double sum = 0;
-            for (int other = evidence.firstPair(j); other < evidence.endPair(j); other++) {
-                if (terms.get(evidence.term(other)).tag.identity().equals(tag.identity())) {
-                    sum += evidence.value(other);
-                }
-            }
+            double sum = sums.merge(tag.identity(), evidence.value(pair), Double::sum);
             if (sum > half) {
-                return new Heir(tag, sum / evidence.total(j));
+                return new Heir(tag, share(evidence, j, tag.identity()));
             }
         }
         return null;
+    }
+
+    private double share(UnseenEvidence evidence, int j, Identity identity) {
+        double sum = 0;
+        for (int pair = evidence.firstPair(j); pair < evidence.endPair(j); pair++) {
+            if (terms.get(evidence.term(pair)).tag.identity().equals(identity)) {
+                sum += evidence.value(pair);
+            }
+        }
+        return sum / evidence.total(j);
     }
 
     /** A history that may go on in a new component, and the share of the component that comes from it. */
@@ -204,7 +217,10 @@ final class Unseen {
         }
         for (int pair = evidence.firstPair(j); pair < evidence.endPair(j); pair++) {
             double weight = perEvidence * evidence.value(pair);
-            if (isHeavy(weight, z)) {
+            if (entering.size() >= settings.unseenTerms()) {
+                counters.add(Counters.Name.TERMS_OVER_BOUND, 1);
+                grid.deposit(z.east(), z.north(), weight);
+            } else if (isHeavy(weight, z)) {
                 UnseenTerm prior = terms.get(evidence.term(pair));
                 boolean taken = alive.contains(prior.tag.identity());
                 update.prior(prior.density);

@@ -28,6 +28,15 @@ final class UnseenGrid {
     /** What the series may leave out, as a share. */
     private static final double SERIES_REST = 1e-17;
 
+    /** Expected events of the uniformised process in one piece of a long gap. */
+    private static final double PIECE_EVENTS = 100;
+
+    /**
+     * After so many pieces a gap has no more effect: with cells of 100 m and a speed sigma of 6 m/s they are a day, in
+     * which whoever was unseen has died, left or spread. It bounds what one odd scan time can cost.
+     */
+    private static final int MOST_PIECES = 100;
+
     /** Sub-points along a side of a cell for shares of its area. */
     private static final int SUBPOINTS = 4;
 
@@ -97,8 +106,8 @@ final class UnseenGrid {
             }
         }
         // Long gaps in pieces, so that the Poisson weights below do not underflow.
-        int pieces = 1 + (int) (rate * seconds / 100);
-        for (int piece = 0; piece < pieces; piece++) {
+        double pieces = 1 + Math.floor(rate * seconds / PIECE_EVENTS);
+        for (int piece = 0; piece < Math.min(pieces, MOST_PIECES); piece++) {
             solve(exchange / rate, rate * seconds / pieces, source, 1 / rate);
         }
     }

@@ -25,7 +25,8 @@ public final class Look {
     private final boolean constantProfile;
 
     /**
-     * @param position    where the sensor was, in the region's plane
+     * @param position    where the sensor was, in the region's plane; not a number where it was beyond the plane's
+     *                    horizon, and then it sees nothing here
      * @param coverage    where it looked, if not over its whole reach
      * @param core        the region's core in its plane
      * @param apronMetres how far around the core the region hears
@@ -83,7 +84,7 @@ public final class Look {
         }
         double margin = CLEAR_SIGMAS * sigmaMetres;
         double distance = distanceFromSensor(east, north);
-        if (distance - margin > sensor.reachMetres()) {
+        if (!(distance - margin <= sensor.reachMetres())) {
             return 0;
         }
         if (distance + margin > sensor.reachMetres()) {
@@ -121,7 +122,7 @@ public final class Look {
 
     private double seenProbability(double east, double north) {
         double distance = distanceFromSensor(east, north);
-        if (distance > sensor.reachMetres()) {
+        if (!(distance <= sensor.reachMetres())) {
             return 0;
         }
         if (coverage.isPresent()

@@ -15,6 +15,10 @@ import org.sweeptally.geo.PlaneArea;
 public record LookCoverage(
         double fromMetres, double toMetres, double fromAzimuthRadians, double widthRadians, Optional<PlaneArea> area) {
 
+    /** Of a look that looked at nothing here. */
+    public static final LookCoverage NOTHING =
+            new LookCoverage(Double.POSITIVE_INFINITY, Double.POSITIVE_INFINITY, 0, 2 * StrictMath.PI, Optional.empty());
+
     private static final double TURN = 2 * StrictMath.PI;
 
     /** Whether the look looked at a place, given by its offset from the sensor and by its coordinates in the plane. */

@@ -94,16 +94,6 @@ public final class PositionUpdate {
         into[at + 3] = k41 * innovationEast + k42 * innovationNorth;
     }
 
-    /** Where the update puts the object, metres east. */
-    public double updatedEast() {
-        return prior.mean.a1 + k11 * innovationEast + k12 * innovationNorth;
-    }
-
-    /** Where the update puts the object, metres north. */
-    public double updatedNorth() {
-        return prior.mean.a2 + k21 * innovationEast + k22 * innovationNorth;
-    }
-
     /** The updated covariance; valid until the next call of {@link #measure} or {@link #prior}. */
     public DMatrix4x4 updatedCovariance() {
         if (!updatedIsCurrent) {

@@ -14,6 +14,7 @@ final class BoundWatch {
 
     private static final List<Bound> BOUNDS = List.of(
             new Bound("components", Counters.Name.COMPONENTS_OVER_BOUND),
+            new Bound("gatedPairs", Counters.Name.PAIRS_OVER_BOUND),
             new Bound("unseenTerms", Counters.Name.TERMS_OVER_BOUND),
             new Bound("propagationSweeps", Counters.Name.PROPAGATION_CAPPED));
 

@@ -34,10 +34,7 @@ final class PartArrivals {
         SensorOrder order = state.sensors.computeIfAbsent(
                 part.getSensor(), name -> new SensorOrder(name, state.horizonMicros));
         order.watch().heard();
-        if (order.comeBack(state.horizonMicros)) {
-            state.counters.add(RegionCounters.Name.SENSORS_BACK);
-            out.finding(findings.back(part.getSensor(), state.horizonMicros, order.promiseMicros()));
-        }
+        order.passed(state.horizonMicros);
         judge(entry, body, logTime, order, settings, out);
     }
 
@@ -56,6 +53,10 @@ final class PartArrivals {
             state.counters.add(counterOf(refused.reason()));
             out.reject(Rejects.whole(state.region, entry, refused.reason(), refused.sentence()));
         } else if (verdict instanceof SensorOrder.Accepted accepted) {
+            if (order.comeBack()) {
+                state.counters.add(RegionCounters.Name.SENSORS_BACK);
+                out.finding(findings.back(order.sensor(), state.horizonMicros, order.promiseMicros()));
+            }
             if (accepted.restart()) {
                 state.counters.add(RegionCounters.Name.RESTARTS);
                 Part part = body.getPart();

@@ -70,6 +70,11 @@ final class RegionArea {
     }
 
     private boolean isNear(GeoPolygon roams, double metres) {
+        boolean facing = roams.outer().stream().noneMatch(corner -> Double.isNaN(plane.toPlane(corner).eastMetres()));
+        if (!facing) {
+            // Part of it is on the other side of the earth: it may pass anywhere on its way there.
+            return true;
+        }
         return PolygonDistance.between(settings.core(), core, roams, PlaneArea.of(roams, plane), plane) <= metres;
     }
 

@@ -70,6 +70,9 @@ final class ScanConversion {
     }
 
     private LookCoverage coverage(Coverage coverage, LatLon position) {
+        if (coverage.getArea() != null && !isFacing(coverage.getArea())) {
+            return LookCoverage.NOTHING;
+        }
         double from = 0;
         double width = 2 * StrictMath.PI;
         if (coverage.getFromAzimuthDegrees() != null) {
@@ -90,6 +93,12 @@ final class ScanConversion {
     private PlaneArea planeArea(List<GeoPoint> corners) {
         List<LatLon> ring = corners.stream().map(ScanConversion::place).toList();
         return PlaneArea.of(new GeoPolygon(ring, List.of()), area.plane());
+    }
+
+    /** Whether all of an area is on the side of the earth that the region's plane touches. */
+    private boolean isFacing(List<GeoPoint> corners) {
+        return corners.stream()
+                .noneMatch(corner -> Double.isNaN(area.plane().toPlane(place(corner)).eastMetres()));
     }
 
     private List<Observation> observations(ScanParts scan, SensorSettings sensor, LatLon position) {

@@ -87,18 +87,22 @@ final class SensorOrder {
         return open;
     }
 
+    /** While the sensor is passed over, what the picture has passed meanwhile stays passed. */
+    void passed(long horizonMicros) {
+        if (passedOver) {
+            passedUntilMicros = Math.max(passedUntilMicros, horizonMicros);
+        }
+    }
+
     /**
-     * Ends the sensor's being passed over, if it is: from here on the region waits for it again, and what the picture
-     * has passed meanwhile stays passed.
+     * Ends the sensor's being passed over, if it is: from here on the region waits for it again. A part that could not be
+     * used does not do that, or a sensor whose times are of no use would hold the region for ever.
      *
      * @return whether it was passed over
      */
-    boolean comeBack(long horizonMicros) {
+    boolean comeBack() {
         boolean was = passedOver;
-        if (was) {
-            passedOver = false;
-            passedUntilMicros = Math.max(passedUntilMicros, horizonMicros);
-        }
+        passedOver = false;
         return was;
     }
 

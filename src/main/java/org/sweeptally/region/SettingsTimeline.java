@@ -18,6 +18,10 @@ final class SettingsTimeline {
     private static final int PAST_REVISIONS = 8;
 
     private final TreeMap<Long, RegionRules> byFrom = new TreeMap<>();
+
+    /** Settings that others replaced before they took effect, by revision: a writer may write them again. */
+    private final TreeMap<Integer, SettingsBody> superseded = new TreeMap<>();
+
     private long inForceFromMicros = Micros.BEFORE_ALL;
 
     /** The first settings hold from the beginning. */
@@ -47,8 +51,10 @@ final class SettingsTimeline {
 
     /** Whether the settings are among those held, so that they say nothing new. */
     boolean holds(SettingsBody body) {
-        return byFrom.values().stream().anyMatch(rules -> rules.revision() == body.getRevision()
-                && rules.body().getText().equals(body.getText()));
+        SettingsBody replaced = superseded.get(body.getRevision());
+        return (replaced != null && replaced.getText().equals(body.getText()))
+                || byFrom.values().stream().anyMatch(rules -> rules.revision() == body.getRevision()
+                        && rules.body().getText().equals(body.getText()));
     }
 
     /** The highest revision known, in force or waiting. */
@@ -63,12 +69,15 @@ final class SettingsTimeline {
      * @return times of the settings that were waiting and no longer are
      */
     List<Long> add(long fromMicros, RegionRules rules) {
-        List<Long> superseded = byFrom.tailMap(fromMicros, true).keySet().stream()
+        List<Long> replaced = byFrom.tailMap(fromMicros, true).keySet().stream()
                 .filter(from -> from > inForceFromMicros)
                 .toList();
-        superseded.forEach(byFrom::remove);
+        for (long from : replaced) {
+            SettingsBody body = byFrom.remove(from).body();
+            superseded.put(body.getRevision(), body);
+        }
         byFrom.put(fromMicros, rules);
-        return superseded;
+        return replaced;
     }
 
     /** Lets the settings that hold from a time take effect. */
@@ -98,6 +107,8 @@ final class SettingsTimeline {
         out.number(byFrom.size());
         byFrom.forEach((from, rules) -> out.time(from).record(rules.body()));
         out.time(inForceFromMicros);
+        out.number(superseded.size());
+        superseded.values().forEach(out::record);
     }
 
     static SettingsTimeline read(StateReader in, String region, Function<String, Site> reader) {
@@ -113,6 +124,10 @@ final class SettingsTimeline {
             timeline.byFrom.put(from, rules);
         }
         timeline.takeEffect(in.time());
+        for (int left = in.number(); left > 0; left--) {
+            SettingsBody body = in.record(SettingsBody.class);
+            timeline.superseded.put(body.getRevision(), body);
+        }
         return timeline;
     }
 }

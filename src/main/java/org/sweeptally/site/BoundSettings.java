@@ -14,6 +14,8 @@ package org.sweeptally.site;
  * @param clockAheadSeconds    how far ahead of the horizon a sensor's clock may run before it is a finding
  * @param snapshotScans        scans between two snapshots of a region
  * @param leastTermWeight      expected objects below which a weak new object goes to the grid at once
+ * @param gatedPairs           pairs of a scan's detections with the components, and with the unseen terms, in whose gates
+ *                             they lie
  */
 public record BoundSettings(
         double gateSigmas,
@@ -25,4 +27,5 @@ public record BoundSettings(
         long waitingBytes,
         double clockAheadSeconds,
         int snapshotScans,
-        double leastTermWeight) {}
+        double leastTermWeight,
+        int gatedPairs) {}

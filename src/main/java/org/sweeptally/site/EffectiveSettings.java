@@ -103,6 +103,7 @@ public final class EffectiveSettings {
         line(1, "clockAheadSeconds", bounds.clockAheadSeconds());
         line(1, "snapshotScans", Integer.toString(bounds.snapshotScans()));
         line(1, "leastTermWeight", bounds.leastTermWeight());
+        line(1, "gatedPairs", Integer.toString(bounds.gatedPairs()));
     }
 
     private void region(RegionSettings region) {

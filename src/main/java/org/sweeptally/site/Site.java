@@ -61,6 +61,7 @@ public record Site(
                 bounds.unseenTerms(),
                 bounds.exactAssociationSteps(),
                 bounds.propagationSweeps(),
-                bounds.leastTermWeight());
+                bounds.leastTermWeight(),
+                bounds.gatedPairs());
     }
 }

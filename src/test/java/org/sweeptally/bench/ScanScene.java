@@ -114,6 +114,6 @@ final class ScanScene {
                 s.accelerationNoise(), s.speedSigma(), s.lifetimeSeconds(), s.birthsPerSquareMetrePerSecond(),
                 s.outsidePerSquareMetre(), s.initialPerSquareMetre(), s.confirming(), s.ending(), s.recyclingBelow(),
                 s.gateSigmas(), cellMetres, s.components(), s.unseenTerms(), s.exactAssociationSteps(),
-                s.propagationSweeps(), s.leastTermWeight());
+                s.propagationSweeps(), s.leastTermWeight(), s.gatedPairs());
     }
 }

@@ -22,7 +22,7 @@ final class Begun {
     static FilterSettings undisturbed(double accelerationNoise, double gateSigmas) {
         return new FilterSettings(
                 accelerationNoise, 5, Double.POSITIVE_INFINITY, 0, 0, 0, 0.7, 0.3, 0, gateSigmas, 20_000, 1000, 1000,
-                1_000_000, 1000, 1e-5);
+                1_000_000, 1000, 1e-5, 2_000_000);
     }
 
     /** A filter with one component; log-odds may be infinite for an object that certainly exists. */

@@ -75,6 +75,6 @@ public final class FilterScene {
     public static FilterSettings settings() {
         double density = 20 / 16e6;
         return new FilterSettings(
-                0.05, 6, 600, density / 600, density, density, 0.7, 0.3, 0.1, 5, 100, 1000, 5000, 200_000, 1000, 1e-5);
+                0.05, 6, 600, density / 600, density, density, 0.7, 0.3, 0.1, 5, 100, 1000, 5000, 200_000, 1000, 1e-5, 2_000_000);
     }
 }

@@ -8,9 +8,14 @@ import java.io.ByteArrayOutputStream;
 import java.io.DataInputStream;
 import java.io.DataOutputStream;
 import java.io.IOException;
+import java.util.Optional;
 import java.util.SplittableRandom;
 import org.junit.jupiter.api.Test;
+import org.sweeptally.geo.PlanePoint;
+import org.sweeptally.model.DetectionProfile;
 import org.sweeptally.model.Look;
+import org.sweeptally.model.LookCoverage;
+import org.sweeptally.model.SensorModel;
 
 class ObjectFilterTest {
 
@@ -135,7 +140,7 @@ class ObjectFilterTest {
         FilterSettings tight = new FilterSettings(
                 s.accelerationNoise(), s.speedSigma(), s.lifetimeSeconds(), s.birthsPerSquareMetrePerSecond(),
                 s.outsidePerSquareMetre(), s.initialPerSquareMetre(), s.confirming(), s.ending(), s.recyclingBelow(),
-                s.gateSigmas(), s.unseenCellMetres(), 3, 5, s.exactAssociationSteps(), s.propagationSweeps(), s.leastTermWeight());
+                s.gateSigmas(), s.unseenCellMetres(), 3, 5, s.exactAssociationSteps(), s.propagationSweeps(), s.leastTermWeight(), s.gatedPairs());
         ObjectFilter filter = scene.filter(tight);
         for (int k = 0; k < 6; k++) {
             double[] places = new double[40];
@@ -166,6 +171,71 @@ class ObjectFilterTest {
                 assertThat(bytes(two)).as("seed %s, scan %s", seed, k).isEqualTo(bytes(one));
             }
         }
+    }
+
+    /** A radar before its clock is set: a legal time, sixty years before the next scan. */
+    @Test
+    void aGapOfSixtyYearsIsNoMoreWorkThanADay() {
+        ObjectFilter filter = seen(3);
+        filter.predict(60 * 365.25 * 86_400);
+        filter.update(FilterScene.scan(1_900_000_000_000_000L, look, 10, 10), 1_900_000_000_000_000L);
+        assertThat(filter.components()).as("the old one is gone, a new one begins").singleElement().satisfies(
+                component -> assertThat(component.firstSeenMicros()).isEqualTo(1_900_000_000_000_000L));
+        assertThat(filter.expectedUnseen()).as("0.1 of 20, since one look could have seen them").isBetween(1.9, 2.1);
+    }
+
+    @Test
+    void aCrowdAtOneSpotIsBoundedAndCounted() {
+        FilterSettings s = FilterScene.settings();
+        ObjectFilter filter = scene.filter(new FilterSettings(
+                s.accelerationNoise(), s.speedSigma(), s.lifetimeSeconds(), s.birthsPerSquareMetrePerSecond(),
+                s.outsidePerSquareMetre(), s.initialPerSquareMetre(), s.confirming(), s.ending(), s.recyclingBelow(),
+                s.gateSigmas(), s.unseenCellMetres(), 100, 500, 1000, 50, s.leastTermWeight(), 5000));
+        SplittableRandom random = new SplittableRandom(4);
+        for (int k = 0; k < 4; k++) {
+            double[] places = new double[600];
+            for (int i = 0; i < places.length; i++) {
+                places[i] = 40 * random.nextDouble();
+            }
+            filter.predict(k == 0 ? 0 : 2.5);
+            filter.update(FilterScene.scan(k * 2_500_000L, look, places), k * 2_500_000L);
+        }
+        assertThat(filter.counters().get(Counters.Name.PAIRS_OVER_BOUND)).isPositive();
+        assertThat(filter.counters().get(Counters.Name.TERMS_OVER_BOUND)).isPositive();
+        assertThat(filter.components().size()).isLessThanOrEqualTo(100);
+    }
+
+    @Test
+    void aSensorOnTheOtherSideOfTheEarthSaysNothing() {
+        ObjectFilter filter = seen(5);
+        double before = filter.components().get(0).existenceLogOdds();
+        SensorModel far = new SensorModel("far", 6000, DetectionProfile.constant(0.9), 10);
+        Look nowhere = new Look(
+                far, new PlanePoint(Double.NaN, Double.NaN), Optional.empty(), scene.core(), scene.apronMetres());
+        filter.update(FilterScene.scan(11 * SECOND, nowhere), 11 * SECOND);
+        assertThat(filter.components().get(0).existenceLogOdds()).isEqualTo(before);
+    }
+
+    /** Two sectors that meet under an object report it in turn, each turn in one of them: it stays one object. */
+    @Test
+    void sectorsThatMeetUnderAnObjectDoNotTearIt() {
+        SplittableRandom random = new SplittableRandom(6);
+        SensorModel radar = new SensorModel("mast", 10_000, DetectionProfile.constant(0.9), 10);
+        ObjectFilter filter = scene.filter(FilterScene.settings());
+        for (int turn = 0; turn < 40; turn++) {
+            filter.predict(turn == 0 ? 0 : 2.5);
+            double east = 15 * random.nextGaussian();
+            double north = 1000 + 15 * random.nextGaussian();
+            for (int half = 0; half < 2; half++) {
+                LookCoverage sector = new LookCoverage(
+                        0, Double.POSITIVE_INFINITY, half * Math.PI, Math.PI, Optional.empty());
+                Look part = new Look(radar, new PlanePoint(0, 0), Optional.of(sector), scene.core(), 200);
+                boolean inIt = (east >= 0) == (half == 0);
+                long time = turn * 2_500_000L + half;
+                filter.update(inIt ? FilterScene.scan(time, part, east, north) : FilterScene.scan(time, part), time);
+            }
+        }
+        assertThat(filter.components().stream().filter(Component::confirmed)).as("seed 6").hasSize(1);
     }
 
     @Test

@@ -232,14 +232,14 @@ class OutsideChecksTest {
     private static FilterSettings settings(double lifetime, double unseen) {
         double recycling = unseen > 0.00001 ? 0.1 : 1e-9;
         return new FilterSettings(
-                0.01, 5, lifetime, 0, 0, unseen, 0.7, 0.3, recycling, 5, 500, 100, 100, 1_000_000, 1000, 1e-5);
+                0.01, 5, lifetime, 0, 0, unseen, 0.7, 0.3, recycling, 5, 500, 100, 100, 1_000_000, 1000, 1e-5, 2_000_000);
     }
 
     private static FilterSettings gated(FilterSettings s, double gate) {
         return new FilterSettings(
                 s.accelerationNoise(), s.speedSigma(), s.lifetimeSeconds(), s.birthsPerSquareMetrePerSecond(),
                 s.outsidePerSquareMetre(), s.initialPerSquareMetre(), s.confirming(), s.ending(), s.recyclingBelow(), gate,
-                s.unseenCellMetres(), s.components(), s.unseenTerms(), s.exactAssociationSteps(), s.propagationSweeps(), s.leastTermWeight());
+                s.unseenCellMetres(), s.components(), s.unseenTerms(), s.exactAssociationSteps(), s.propagationSweeps(), s.leastTermWeight(), s.gatedPairs());
     }
 
     private static Component component(double existence, double east, int number, double variance) {

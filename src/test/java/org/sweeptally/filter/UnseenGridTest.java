@@ -107,7 +107,7 @@ class UnseenGridTest {
         coarse.fill(1e-6);
         coarse.deposit(10, 10, 0.5);
         FilterSettings fine = new FilterSettings(
-                0.05, 1e-9, 100, 0, 0, 0, 0.7, 0.3, 0.1, 5, 40, 1000, 5000, 200_000, 1000, 1e-5);
+                0.05, 1e-9, 100, 0, 0, 0, 0.7, 0.3, 0.1, 5, 40, 1000, 5000, 200_000, 1000, 1e-5, 2_000_000);
         UnseenGrid finer = new UnseenGrid(fine, core, 0);
         finer.takeFrom(coarse);
         assertThat(finer.total()).isCloseTo(coarse.total(), within(1e-12));
@@ -115,6 +115,6 @@ class UnseenGridTest {
 
     private static FilterSettings settings(double speedSigma, double lifetime, double births, double outside) {
         return new FilterSettings(
-                0.05, speedSigma, lifetime, births, outside, 0, 0.7, 0.3, 0.1, 5, CELL, 1000, 5000, 200_000, 1000, 1e-5);
+                0.05, speedSigma, lifetime, births, outside, 0, 0.7, 0.3, 0.1, 5, CELL, 1000, 5000, 200_000, 1000, 1e-5, 2_000_000);
     }
 }

@@ -14,6 +14,7 @@ import org.sweeptally.event.LogEntry;
 import org.sweeptally.event.PartBody;
 import org.sweeptally.event.RejectReason;
 import org.sweeptally.geo.GeoPolygon;
+import org.sweeptally.geo.LatLon;
 import org.sweeptally.geo.PlanePoint;
 import org.sweeptally.site.RegionSettings;
 import org.sweeptally.site.SensorSettings;
@@ -127,6 +128,15 @@ class PartRouterTest {
         assertThat(new PartRouter(site(west)).regionsSeenBy("pilot-boat")).containsExactly("west");
         SensorSettings across = TestSites.roaming(BOAT, TestSites.rectangle(-9000, -3, 60_000, 3));
         assertThat(new PartRouter(site(across)).regionsSeenBy("pilot-boat")).containsExactly("east", "far", "west");
+        LatLon here = TestSites.at(0, 0);
+        SensorSettings antipodes = TestSites.roaming(BOAT, new GeoPolygon(
+                List.of(
+                        new LatLon(-here.latitude(), here.longitude() + 178),
+                        new LatLon(-here.latitude(), here.longitude() + 179),
+                        new LatLon(-here.latitude() + 1, here.longitude() + 179)),
+                List.of()));
+        assertThat(new PartRouter(site(antipodes)).regionsSeenBy("pilot-boat")).as("it may pass on its way")
+                .containsExactly("east", "far", "west");
         SensorSettings nowhere = TestSites.roaming(BOAT, TestSites.rectangle(20_000, -500, 21_000, 500));
         assertThat(new PartRouter(site(nowhere)).regionsSeenBy("pilot-boat")).isEmpty();
     }

@@ -179,6 +179,16 @@ class ScanConversionTest {
         assertThat(polygon.look().probabilityOfDetection(300, 700)).isZero();
     }
 
+    @Test
+    void anAreaOnTheOtherSideOfTheEarthIsNoneOfThisRegion() {
+        SensorSettings sensor = TestSites.sensor("north-shore", 0, 0);
+        LatLon here = TestSites.at(0, 0);
+        List<GeoPoint> corners = List.of(
+                corner(0, 0), corner(1000, 0), new GeoPoint(-here.latitude(), here.longitude() + 179.0, null));
+        Scan scan = convert(sensor, covering(null, null, null, null, corners));
+        assertThat(scan.look().probabilityOfDetection(300, 100)).isZero();
+    }
+
     private static GeoPoint corner(double east, double north) {
         return new GeoPoint(TestSites.at(east, north).latitude(), TestSites.at(east, north).longitude(), null);
     }

@@ -197,6 +197,16 @@ class SettingsEntriesTest {
     }
 
     @Test
+    void settingsThatOthersReplacedMayBeWrittenAgain() {
+        Rig rig = Rig.with(NORTH);
+        LogEntry third = rig.settings(TestSites.site(3, NORTH), 30);
+        rig.apply(third, rig.settings(TestSites.site(4, NORTH), 20), third);
+        assertThat(rig.counted(RegionCounters.Name.SETTINGS_REPEATED)).isEqualTo(1);
+        rig.apply(part("north-shore", 10), part("north-shore", 40), part("north-shore", 41));
+        assertThat(revisions(rig)).containsExactly(1, 4, 4);
+    }
+
+    @Test
     void settingsThatDoNotKnowTheRegionAreRefused() {
         Rig rig = new Rig();
         Site other = TestSites.site(

@@ -93,25 +93,28 @@ class SilenceTest {
     }
 
     @Test
-    void theEntryActsEvenIfTheSensorSpokeMeanwhileAndTheNextPartBringsItBack() {
+    void theEntryActsEvenIfTheSensorSpokeMeanwhileAndThePartThatCanBeUsedBringsItBack() {
         Rig rig = rig().apply(part("north-shore", 1), part("south-shore", 1)).apply(silent("south-shore"));
         rig.apply(part("north-shore", 5));
         assertThat(rig.effects()).containsExactly(1.0, 1.0, 5.0);
         rig.apply(part("south-shore", 4).sees(0, 0));
         assertThat(rig.out.reasons()).containsExactly(RejectReason.PASSED);
         assertThat(rig.out.rejects.get(0).getSentence()).contains("had come to 2031-05-01T04:00:05.000001Z");
+        assertThat(rig.out.findingKinds()).as("not yet").containsExactly(FindingKind.SENSOR_SILENT);
+        rig.apply(part("south-shore", 6), part("north-shore", 7));
         assertThat(rig.out.findingKinds()).containsExactly(FindingKind.SENSOR_SILENT, FindingKind.SENSOR_BACK);
-        rig.apply(part("north-shore", 7), part("south-shore", 6));
         assertThat(rig.effects()).as("it holds the picture again").containsExactly(1.0, 1.0, 5.0, 6.0);
         rig.apply(part("south-shore", 8));
         assertThat(rig.effects()).containsExactly(1.0, 1.0, 5.0, 6.0, 7.0);
     }
 
     @Test
-    void theHorizonDoesNotGoBackForASensorThatComesBack() {
+    void aSensorWhoseTimesAreOfNoUseDoesNotHoldThePicture() {
         Rig rig = rig().apply(silent("south-shore")).apply(part("north-shore", 100), part("south-shore", 1));
         assertThat(rig.heartbeat(0).getHorizonMicros()).isEqualTo(Entries.micros(100) + 1);
-        assertThat(rig.heartbeat(0).getWaitsFor()).isEqualTo("south-shore");
+        assertThat(rig.heartbeat(0).getWaitsFor()).isEqualTo("north-shore");
+        rig.apply(part("north-shore", 101), part("south-shore", 2), part("north-shore", 102));
+        assertThat(rig.effects()).containsExactly(100.0, 101.0, 102.0);
     }
 
     @Test
@@ -149,7 +152,7 @@ class SilenceTest {
         Site site = TestSites.site(1, NORTH, SOUTH);
         Rig rig = Rig.with(TestSites.withBounds(site, b -> new BoundSettings(
                 b.gateSigmas(), b.components(), b.unseenTerms(), b.exactAssociationSteps(), b.propagationSweeps(),
-                b.detectionsPerPart(), 2000, b.clockAheadSeconds(), b.snapshotScans(), b.leastTermWeight())));
+                b.detectionsPerPart(), 2000, b.clockAheadSeconds(), b.snapshotScans(), b.leastTermWeight(), b.gatedPairs())));
         int sent = 0;
         while (rig.out.appended.isEmpty() && sent < 100) {
             assertThat(rig.heartbeat(0).getWaitingBytes()).isLessThanOrEqualTo(2000);

@@ -53,7 +53,7 @@ public final class ModelRun {
         return new FilterSettings(
                 world.accelerationNoise(), world.speedSigma(), world.lifetimeSeconds(),
                 density / world.lifetimeSeconds(), density, density, confirming, ending,
-                FilterSettings.RECYCLING_BELOW, 5, 100, 100_000, 1_000_000, 1_000_000, 1000, 1e-5);
+                FilterSettings.RECYCLING_BELOW, 5, 100, 100_000, 1_000_000, 1_000_000, 1000, 1e-5, 2_000_000);
     }
 
     /** A scan as the filter takes it: nothing in it says what caused a detection. */

@@ -27,6 +27,9 @@ final class PropagatedAssociation {
     /** Greatest relative change of a message at which propagation stops. */
     static final double TOLERANCE = 1e-9;
 
+    /** Messages that one cluster may send, however many sweeps are allowed: some seconds of work. */
+    static final long MOST_MESSAGES = 500_000_000L;
+
     private final double tolerance;
     private double[] rowMessage = new double[32];
     private double[] columnMessage = new double[32];
@@ -44,7 +47,8 @@ final class PropagatedAssociation {
         cluster.floorZeros();
         begin(cluster);
         settled = false;
-        for (sweeps = 0; sweeps < mostSweeps && !settled; sweeps++) {
+        long affordable = Math.max(1, MOST_MESSAGES / (2L * Math.max(1, cluster.pairs())));
+        for (sweeps = 0; sweeps < Math.min(mostSweeps, affordable) && !settled; sweeps++) {
             for (int i = 0; i < cluster.rows; i++) {
                 sendRow(cluster, i);
             }
