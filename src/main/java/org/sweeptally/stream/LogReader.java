@@ -1,0 +1,19 @@
+package org.sweeptally.stream;
+
+/** Reads a stretch of a partition of the region log again. */
+public interface LogReader {
+
+    /** Takes in one record of the log. */
+    interface Sink {
+        void entry(long offset, byte[] key, byte[] value);
+    }
+
+    /**
+     * Hands over every committed record from one offset to another, both included, in their order. Offsets may be
+     * missing: the bus uses some for itself.
+     *
+     * @return how many records were handed over
+     * @throws OperatorStoppedException if the log no longer reaches back so far, does not reach so far, or cannot be read
+     */
+    long read(int partition, long from, long toInclusive, Sink sink);
+}
