@@ -27,11 +27,15 @@ import picocli.CommandLine.Spec;
             "Examples:",
             "  sweeptally check --site site.yaml",
             "  sweeptally dry-run --site site.yaml --parts parts.ndjson --out picture",
+            "  sweeptally topics --site site.yaml --bus localhost:9092",
+            "  sweeptally run --site site.yaml --bus localhost:9092",
             "",
             "Caution: the picture is an estimate. It is no aid to navigation or collision avoidance by itself;",
             "local rules and licensed practice come first."
         },
-        subcommands = {CheckCommand.class, DryRunCommand.class})
+        subcommands = {
+            CheckCommand.class, DryRunCommand.class, DemoCommand.class, TopicsCommand.class, RunCommand.class, PublishCommand.class
+        })
 public final class Main implements Runnable {
 
     private static final Logger LOG = LoggerFactory.getLogger(Main.class);
@@ -81,7 +85,7 @@ public final class Main implements Runnable {
 
     @Override
     public void run() {
-        throw new ParameterException(spec.commandLine(), "a command is missing: check or dry-run");
+        throw new ParameterException(spec.commandLine(), "a command is missing: check, dry-run, demo, topics, run or publish");
     }
 
     /** Gives every command its terminal. */
@@ -93,6 +97,18 @@ public final class Main implements Runnable {
             }
             if (type == DryRunCommand.class) {
                 return type.cast(new DryRunCommand(terminal));
+            }
+            if (type == DemoCommand.class) {
+                return type.cast(new DemoCommand(terminal));
+            }
+            if (type == TopicsCommand.class) {
+                return type.cast(new TopicsCommand(terminal));
+            }
+            if (type == RunCommand.class) {
+                return type.cast(new RunCommand(terminal));
+            }
+            if (type == PublishCommand.class) {
+                return type.cast(new PublishCommand(terminal));
             }
             return CommandLine.defaultFactory().create(type);
         }

@@ -32,6 +32,7 @@ class MainTest {
     @Test
     void everyCommandHasHelpWithAnExample() throws IOException {
         Golden.assertIs("help-check.txt", CliRun.of("check", "--help").out());
+        Golden.assertIs("help-demo.txt", CliRun.of("demo", "--help").out());
         Golden.assertIs("help-dry-run.txt", CliRun.of("dry-run", "--help").out());
     }
 
@@ -40,7 +41,9 @@ class MainTest {
         CliRun run = CliRun.of();
         assertThat(run.exitCode()).isEqualTo(2);
         assertThat(run.out()).isEmpty();
-        assertThat(run.err()).startsWith("a command is missing: check or dry-run\n").contains("Usage: sweeptally");
+        assertThat(run.err())
+                .startsWith("a command is missing: check, dry-run, demo, topics, run or publish\n")
+                .contains("Usage: sweeptally");
     }
 
     @ParameterizedTest

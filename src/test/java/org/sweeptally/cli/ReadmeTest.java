@@ -39,6 +39,7 @@ class ReadmeTest {
     @Test
     void whatItShowsIsWhatTheProgramPrints() throws IOException {
         assertThat(readme)
+                .contains(Files.readString(GOLDEN.resolve("demo.txt")).replace("The report is in FILE.\n", ""))
                 .contains(Files.readString(GOLDEN.resolve("estuary-check.txt")))
                 .contains(Files.readString(GOLDEN.resolve("estuary-dry-run.txt")).replace("DIR", "target/estuary"));
     }

@@ -3,6 +3,7 @@ package org.sweeptally.world;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.SplittableRandom;
+import org.sweeptally.demo.Chance;
 
 /**
  * An invented world that is as the filter believes it to be: objects come into being anywhere, uniformly in place and

@@ -7,6 +7,7 @@ import java.util.List;
 import java.util.SplittableRandom;
 import java.util.TreeMap;
 import org.junit.jupiter.api.Test;
+import org.sweeptally.demo.Chance;
 
 /** The simulated world is what it says it is, or nothing measured on it would mean anything. */
 class SimulatedWorldTest {

@@ -1,34 +1,34 @@
-package org.sweeptally.world;
+package org.sweeptally.demo;
 
 import java.util.SplittableRandom;
 
 /**
  * Random numbers that are the same on any machine: the generator's bits are specified, and StrictMath does the rest.
  */
-final class Chance {
+public final class Chance {
 
     private final SplittableRandom random;
     private double spare = Double.NaN;
 
-    Chance(SplittableRandom random) {
+    public Chance(SplittableRandom random) {
         this.random = random;
     }
 
     /** Uniform between two numbers. */
-    double between(double from, double to) {
+    public double between(double from, double to) {
         return from + (to - from) * random.nextDouble();
     }
 
-    boolean happens(double probability) {
+    public boolean happens(double probability) {
         return random.nextDouble() < probability;
     }
 
-    int below(int bound) {
+    public int below(int bound) {
         return random.nextInt(bound);
     }
 
     /** Mean 0, variance 1 (Box and Muller 1958). */
-    double gaussian() {
+    public double gaussian() {
         if (!Double.isNaN(spare)) {
             double value = spare;
             spare = Double.NaN;
@@ -41,7 +41,7 @@ final class Chance {
     }
 
     /** A Poisson number, by counting arrivals of rate 1 until the mean is used up. */
-    int poisson(double mean) {
+    public int poisson(double mean) {
         int arrivals = 0;
         double time = -StrictMath.log(1 - random.nextDouble());
         while (time < mean) {
