@@ -48,16 +48,14 @@ public final class EmbeddedBroker implements AutoCloseable {
      * @throws IOException if the folder cannot be written, or no free port could be had
      */
     public static EmbeddedBroker start(Path folder) throws IOException {
-        Files.createDirectories(folder);
-        for (int attempt = 1; ; attempt++) {
-            Path data = folder.resolve("broker-" + attempt);
-            try {
-                return startOnce(folder, data);
-            } catch (IllegalStateException e) {
-                if (attempt == STARTS || !isPortTaken(e)) {
-                    deleteTree(folder);
-                    throw new IOException("the embedded broker did not start: " + rootOf(e).getMessage(), e);
-                }
+        boolean started = false;
+        try {
+            EmbeddedBroker broker = startWithPorts(folder);
+            started = true;
+            return broker;
+        } finally {
+            if (!started) {
+                deleteTree(folder);
             }
         }
     }
@@ -73,6 +71,19 @@ public final class EmbeddedBroker implements AutoCloseable {
         server.shutdown();
         server.awaitShutdown();
         deleteTree(folder);
+    }
+
+    private static EmbeddedBroker startWithPorts(Path folder) throws IOException {
+        Files.createDirectories(folder);
+        for (int attempt = 1; ; attempt++) {
+            try {
+                return startOnce(folder, folder.resolve("broker-" + attempt));
+            } catch (IllegalStateException e) {
+                if (attempt == STARTS || !isPortTaken(e)) {
+                    throw new IOException("the embedded broker did not start: " + rootOf(e).getMessage(), e);
+                }
+            }
+        }
     }
 
     private static EmbeddedBroker startOnce(Path folder, Path data) throws IOException {
