@@ -34,7 +34,8 @@ import picocli.CommandLine.Spec;
             "local rules and licensed practice come first."
         },
         subcommands = {
-            CheckCommand.class, DryRunCommand.class, DemoCommand.class, TopicsCommand.class, RunCommand.class, PublishCommand.class
+            CheckCommand.class, DryRunCommand.class, DemoCommand.class, TopicsCommand.class, RunCommand.class,
+            PublishCommand.class
         })
 public final class Main implements Runnable {
 
@@ -85,7 +86,8 @@ public final class Main implements Runnable {
 
     @Override
     public void run() {
-        throw new ParameterException(spec.commandLine(), "a command is missing: check, dry-run, demo, topics, run or publish");
+        throw new ParameterException(
+                spec.commandLine(), "a command is missing: check, dry-run, demo, topics, run or publish");
     }
 
     /** Gives every command its terminal. */

@@ -24,8 +24,8 @@ import picocli.CommandLine.Parameters;
         name = "publish",
         mixinStandardHelpOptions = true,
         description = {
-            "Publishes parts of scans, one JSON object a line, as a sensor would: in their order, by sensor. A line that is"
-                    + " not a whole, sound part is not published, and said so with its number; the others are.",
+            "Publishes parts of scans, one JSON object a line, as a sensor would: in their order, by sensor. A line that"
+                    + " is not a whole, sound part is not published, and said so with its number; the others are.",
             ""
         },
         footer = {

@@ -22,7 +22,7 @@ import picocli.CommandLine.Option;
             "Runs the operator of a site beside a bus: reads the sensors' parts, keeps the picture of every region, and"
                     + " publishes it. Says what it does, and runs until it is stopped (SIGTERM, Ctrl-C).",
             "",
-            "Several processes with the same site share the regions. The topics have to be there: see the command topics.",
+            "Several processes with the same site share the regions. The topics have to be there: see topics.",
             ""
         },
         footer = {

@@ -99,13 +99,23 @@ final class TopicsCommand implements Callable<Integer> {
             List<String> differences = state.differences();
             asTheyShouldBe &= differences.isEmpty();
             boolean created = !onlyShow && missing.contains(state.plan());
-            String is = state.isMissing() ? "missing" : created ? "created" : differences.isEmpty() ? "right" : "differs";
-            table.row(state.plan().name(), Integer.toString(state.partitions()), is, state.plan().purpose());
+            table.row(state.plan().name(), Integer.toString(state.partitions()), word(state, created),
+                    state.plan().purpose());
         }
         table.print(out);
         for (TopicState state : states) {
             state.differences().forEach(difference -> out.println(state.plan().name() + ": " + difference));
         }
         return asTheyShouldBe ? Main.DONE : Main.FAILED;
+    }
+
+    private static String word(TopicState state, boolean created) {
+        if (state.isMissing()) {
+            return "missing";
+        }
+        if (created) {
+            return "created";
+        }
+        return state.differences().isEmpty() ? "right" : "differs";
     }
 }

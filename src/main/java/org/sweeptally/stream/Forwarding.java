@@ -95,7 +95,7 @@ final class Forwarding implements MachineOutputs {
         send(Output.SNAPSHOTS, snapshot.head());
     }
 
-    /** Sends bytes that were made already. What the bus's library finds amiss must not look like a fault of the machine. */
+    /** Sends bytes. What the bus's library finds amiss must not look like a fault of the machine. */
     void send(Output output, byte[] key, byte[] value) {
         try {
             context.forward(new Record<>(key, value, millis), nodes.get(output));

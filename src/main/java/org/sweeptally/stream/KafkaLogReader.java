@@ -58,15 +58,15 @@ final class KafkaLogReader implements LogReader {
         }
         long end = patiently(log, () -> consumer.endOffsets(List.of(log)).get(log));
         if (end <= toInclusive) {
-            throw new OperatorStoppedException("partition " + log.partition() + " of " + log.topic() + " ends before offset "
-                    + end + ", and it had been applied to offset " + toInclusive + ": it is not the log that the state"
-                    + " was made from");
+            throw new OperatorStoppedException("partition " + log.partition() + " of " + log.topic()
+                    + " ends at offset " + end + ", and it had been applied to offset " + toInclusive
+                    + ": it is not the log that the state was made from");
         }
     }
 
     private static String tooShort(TopicPartition log, long from, String what) {
-        return "partition " + log.partition() + " of " + log.topic() + " is needed from offset " + from + ", and " + what
-                + ": its retention is too short, and the regions on it cannot be recovered";
+        return "partition " + log.partition() + " of " + log.topic() + " is needed from offset " + from
+                + ", and " + what + ": its retention is too short, and the regions on it cannot be recovered";
     }
 
     /** Ends by position and not by a record, since the last offset may be none of a record. */
@@ -110,7 +110,8 @@ final class KafkaLogReader implements LogReader {
                 }
             } catch (KafkaException e) {
                 throw new OperatorStoppedException(
-                        "partition " + log.partition() + " of " + log.topic() + " cannot be read: " + e.getMessage(), e);
+                        "partition " + log.partition() + " of " + log.topic() + " cannot be read: " + e.getMessage(),
+                        e);
             }
         }
     }

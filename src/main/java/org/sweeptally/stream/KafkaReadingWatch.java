@@ -24,8 +24,8 @@ import org.slf4j.LoggerFactory;
  * partition had been read to its end at the moment of the question once the router has got to the offset of the answer.
  *
  * <p>The last offsets before the end may hold no record (a sender's transactions leave marks there). Where the router
- * stands still before the end, the consumer reads from there itself, and finds whether anything is left. Where the router
- * has not routed anything yet, it stands where the group last committed.
+ * stands still before the end, the consumer reads from there itself, and finds whether anything is left. Where the
+ * router has not routed anything yet, it stands where the group last committed.
  */
 final class KafkaReadingWatch implements ReadingWatch, AutoCloseable {
 

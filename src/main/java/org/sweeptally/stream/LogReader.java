@@ -13,7 +13,7 @@ public interface LogReader {
      * missing: the bus uses some for itself.
      *
      * @return how many records were handed over
-     * @throws OperatorStoppedException if the log no longer reaches back so far, does not reach so far, or cannot be read
+     * @throws OperatorStoppedException if the log no longer reaches back so far, ends before, or cannot be read
      */
     long read(int partition, long from, long toInclusive, Sink sink);
 }

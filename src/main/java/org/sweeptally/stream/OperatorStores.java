@@ -7,8 +7,8 @@ import org.apache.kafka.streams.state.Stores;
 record OperatorStores(KeyValueBytesStoreSupplier snapshots, KeyValueBytesStoreSupplier progress) {
 
     /**
-     * On disk. The bus's changelogs are what counts; but a process with a store on disk keeps its name across a restart,
-     * and so ends its own old transaction at once.
+     * On disk. The bus's changelogs are what counts; but a process with a store on disk keeps its name across a
+     * restart, and so ends its own old transaction at once.
      */
     static OperatorStores onDisk() {
         return new OperatorStores(

@@ -13,9 +13,9 @@ import org.sweeptally.region.NewerMachineVersionException;
 import org.sweeptally.region.wire.Wire;
 
 /**
- * Applies the entries of one partition of the region log to the machines of its regions. What the machines hold is never
- * in a store of the bus; the stores hold the last snapshots, and how far the log has been applied, which come to last
- * in the same transaction as the outputs. After a failure the rest is made again from the log.
+ * Applies the entries of one partition of the region log to the machines of its regions. What the machines hold is
+ * never in a store of the bus; the stores hold the last snapshots, and how far the log has been applied, which come to
+ * last in the same transaction as the outputs. After a failure the rest is made again from the log.
  */
 final class RegionProcessor implements Processor<byte[], byte[], byte[], byte[]> {
 
@@ -95,8 +95,8 @@ final class RegionProcessor implements Processor<byte[], byte[], byte[], byte[]>
     }
 
     /**
-     * Writes a tick to every region's log; it acts when it comes back from there. An exception of the bus must not leave
-     * from here: the bus's library would commit what it should abort.
+     * Writes a tick to every region's log; it acts when it comes back from there. An exception of the bus must not
+     * leave from here: the bus's library would commit what it should abort.
      */
     private void tick(long wallMillis) {
         try {

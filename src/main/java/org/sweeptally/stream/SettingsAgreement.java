@@ -16,8 +16,8 @@ import org.sweeptally.region.wire.Wire;
 
 /**
  * Brings the site file of a process and the settings that run to terms. A revision higher than all before is written to
- * the settings topic and to every region's log in one transaction; the same content is as good as written; anything else
- * is refused. Of several processes at once one writes, since all of them write under one name.
+ * the settings topic and to every region's log in one transaction; the same content is as good as written; anything
+ * else is refused. Of several processes at once one writes, since all of them write under one name.
  */
 final class SettingsAgreement {
 

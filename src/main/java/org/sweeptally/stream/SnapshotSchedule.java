@@ -36,6 +36,8 @@ record SnapshotSchedule(int scans, long tickMicros, long workNanos) {
     SnapshotSchedule first(int place, int regions) {
         double share = (place + 1.0) / regions;
         return new SnapshotSchedule(
-                Math.max(1, (int) (scans * share)), (long) (tickMicros * share), Math.max(1, (long) (workNanos * share)));
+                Math.max(1, (int) (scans * share)),
+                (long) (tickMicros * share),
+                Math.max(1, (long) (workNanos * share)));
     }
 }

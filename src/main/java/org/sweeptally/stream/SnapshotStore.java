@@ -9,7 +9,7 @@ import org.sweeptally.event.SnapshotHead;
 import org.sweeptally.event.SnapshotPiece;
 import org.sweeptally.region.wire.Wire;
 
-/** The last snapshot of every region of a task, in its state store: the pieces and the head of each under its region. */
+/** The last snapshot of every region of a task, in its state store: pieces and head of each under its region. */
 final class SnapshotStore {
 
     private static final String HEAD = "/head";

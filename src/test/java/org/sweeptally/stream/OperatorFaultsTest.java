@@ -198,7 +198,7 @@ class OperatorFaultsTest {
         });
     }
 
-    /** Detections in the middle, which both sides hear, with long ids until the part has so many bytes; its scan stays open. */
+    /** Detections in the middle, which both sides hear, with long ids, so many bytes of them; its scan stays open. */
     private static Part longPart(Part model, int bytes) {
         List<Detection> detections = new ArrayList<>();
         for (int length = 0; length < bytes; length += 1_040) {

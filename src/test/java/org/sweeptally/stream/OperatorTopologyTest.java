@@ -137,8 +137,9 @@ class OperatorTopologyTest {
         Set<String> ofRouter = sinks.get(sources.indexOf(Set.of("detections")));
         Set<String> ofRegion = sinks.get(sources.indexOf(Set.of(names.regionLog())));
         assertThat(ofRouter).containsExactlyInAnyOrder(names.regionLog(), names.rejects());
-        assertThat(ofRegion).containsExactlyInAnyOrder(names.regionLog(), names.rejects(), names.tracks(), names.births(),
-                names.ends(), names.counts(), names.picture(), names.heartbeat(), names.findings(), names.snapshots());
+        assertThat(ofRegion).containsExactlyInAnyOrder(names.regionLog(), names.rejects(), names.tracks(),
+                names.births(), names.ends(), names.counts(), names.picture(),
+                names.heartbeat(), names.findings(), names.snapshots());
     }
 
     @Test
@@ -155,7 +156,9 @@ class OperatorTopologyTest {
                     Wire.decode(r.value, Count.class)));
         }
         for (var region : site.regions()) {
-            assertThat(published.of("tracks", region.name())).isEqualTo(expected.of("tracks", region.name())).isNotEmpty();
+            assertThat(published.of("tracks", region.name()))
+                    .isNotEmpty()
+                    .isEqualTo(expected.of("tracks", region.name()));
             assertThat(published.of("counts", region.name())).isEqualTo(expected.of("counts", region.name()));
         }
     }
@@ -195,7 +198,8 @@ class OperatorTopologyTest {
     void partsAreReadByTheSettingsThatHoldAtTheirTime() {
         List<Part> parts = TestSite.recording(site);
         Part early = parts.get(0);
-        Site later = TestSite.withoutSensor(site, 2, OptionalLong.of(early.getScanTimeMicros() + 10), early.getSensor());
+        OptionalLong from = OptionalLong.of(early.getScanTimeMicros() + 10);
+        Site later = TestSite.withoutSensor(site, 2, from, early.getSensor());
         revisions.add(Revision.of(later));
         Part late = TestSite.at(early, early.getScanTimeMicros() + 10);
         try (TopologyTestDriver driver = driver()) {

@@ -63,7 +63,8 @@ class RecoveryTest {
     }
 
     private LiveRegions begin() {
-        return new LiveRegions(2, regions, LocalSite::readSettings, new SnapshotSchedule(30, 20_000_000, Long.MAX_VALUE));
+        SnapshotSchedule schedule = new SnapshotSchedule(30, 20_000_000, Long.MAX_VALUE);
+        return new LiveRegions(2, regions, LocalSite::readSettings, schedule);
     }
 
     /** Runs the log to an offset; what the stores hold then. */
