@@ -79,8 +79,8 @@ final class AttackedSite {
 
     private String text() {
         try {
-            return Files.readString(Path.of("src/main/resources/demo/site.yaml")).replace("site: skell", "site: " + name)
-                    + "\nbounds: {snapshotScans: 20}\n";
+            String text = Files.readString(Path.of("src/main/resources/demo/site.yaml"));
+            return text.replace("site: skell", "site: " + name) + "\nbounds: {snapshotScans: 20}\n";
         } catch (IOException e) {
             throw new UncheckedIOException(e);
         }

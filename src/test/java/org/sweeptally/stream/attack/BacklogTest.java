@@ -37,7 +37,8 @@ class BacklogTest {
 
     @Test
     void aBacklogReadUnevenlyGivesTheRecordOfALiveRun() throws Exception {
-        Assumptions.assumeFalse(System.getProperty("os.name").startsWith("Windows"), "freezing a process needs signals");
+        boolean signals = !System.getProperty("os.name").startsWith("Windows");
+        Assumptions.assumeTrue(signals, "freezing a process needs signals");
         AttackedSite attacked = new AttackedSite(folder);
         attacked.createTopics();
         Path file = attacked.withSlowSensors();
@@ -69,7 +70,8 @@ class BacklogTest {
                 () -> offsets(attacked).stream().allMatch(offset -> offset > 0), () -> offsets(attacked).toString());
     }
 
-    private static void awaitOneReadToItsEnd(AttackedSite attacked, OperatorProcess awake) throws InterruptedException {
+    private static void awaitOneReadToItsEnd(AttackedSite attacked, OperatorProcess awake)
+            throws InterruptedException {
         Waiting.until("one partition read to its end", PATIENCE, () -> read(attacked).contains(true), awake::text);
     }
 
@@ -85,7 +87,8 @@ class BacklogTest {
     }
 
     private static void finished(
-            AttackedSite attacked, Site site, OperatorProcess awake, OperatorProcess frozen) throws InterruptedException {
+            AttackedSite attacked, Site site, OperatorProcess awake, OperatorProcess frozen)
+            throws InterruptedException {
         Undisturbed undisturbed = new Undisturbed(List.of(site), attacked.names().detections());
         Waiting.untilComplete(awake, attacked.names().counts(), undisturbed.outputs().number("counts"));
         assertThat(awake.stop()).as(awake.text()).isZero();

@@ -21,7 +21,7 @@ import org.sweeptally.stream.ClientSettings;
 /** The broker that the attacked operators run beside, one for all tests of a virtual machine. */
 final class Bus {
 
-    /** Short, so that a killed operator is missed soon. The same hold for the operators and for the tests' own clients. */
+    /** Short, so that a killed operator is missed soon. They hold for the operators and the tests' own clients. */
     static final Map<String, String> SHORT_TIMES = Map.of(
             "consumer.session.timeout.ms", "1500",
             "consumer.heartbeat.interval.ms", "400",

@@ -106,9 +106,6 @@ class OperatorKillTest {
                 assertThat(operator.isAlive()).as(operator.text()).isTrue();
                 operator.kill();
                 tally.add(operator);
-                if (Boolean.getBoolean("sweeptally.verbose")) {
-                    System.out.println(operator.text());
-                }
             }
             if (i % 2 == 1) {
                 delete(state);

@@ -19,7 +19,7 @@ import org.sweeptally.event.Track;
 import org.sweeptally.region.MachineOutputs;
 import org.sweeptally.region.wire.Wire;
 
-/** Everything that was put out, as bytes: by kind and key, each in its order. Of rejects and appends, the order is sorted. */
+/** Everything that was put out, as bytes: by kind and key, each in its order; rejects and appends as sets. */
 final class Outputs {
 
     /** The record that must reproduce, from any log with the same events. */

@@ -25,7 +25,8 @@ final class PictureCheck {
     /** As above, but for the rejects of parts that no region has heard. */
     static void followsFromItsLog(Committed committed) {
         for (String kind : OF_THE_LOG) {
-            assertThat(committed.published().differenceFrom(committed.folded(), kind)).as(kind).isEqualTo(Optional.empty());
+            assertThat(committed.published().differenceFrom(committed.folded(), kind)).as(kind)
+                    .isEqualTo(Optional.empty());
         }
         assertThat(committed.snapshotsCompared()).as("snapshots compared").isEqualTo(committed.snapshots());
     }
