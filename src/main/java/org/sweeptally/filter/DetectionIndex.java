@@ -4,7 +4,7 @@ import java.util.Arrays;
 import java.util.List;
 import org.ejml.data.DMatrix4x4;
 import org.sweeptally.model.Gaussian;
-import org.sweeptally.model.PositionMeasurement;
+import org.sweeptally.model.Measurement;
 
 /**
  * Finds the measurements that may lie in a density's gate without looking at all of them: a raster of buckets over the
@@ -49,7 +49,7 @@ final class DetectionIndex {
                 wideOnes++;
                 continue;
             }
-            PositionMeasurement z = observations.get(j).measurement();
+            Measurement z = observations.get(j).measurement();
             west = Math.min(west, z.east());
             east = Math.max(east, z.east());
             south = Math.min(south, z.north());
@@ -83,7 +83,7 @@ final class DetectionIndex {
             if (isWide[j]) {
                 wide[wideOnes++] = j;
             } else {
-                PositionMeasurement z = observations.get(j).measurement();
+                Measurement z = observations.get(j).measurement();
                 bucket[j] = row(z.north()) * columns + column(z.east());
                 bucketStart[bucket[j] + 1]++;
             }
@@ -114,7 +114,7 @@ final class DetectionIndex {
         return wide;
     }
 
-    private static double largestVariance(PositionMeasurement z) {
+    private static double largestVariance(Measurement z) {
         return Math.max(z.varEast(), z.varNorth());
     }
 

@@ -1,6 +1,6 @@
 package org.sweeptally.filter;
 
-import org.sweeptally.model.PositionMeasurement;
+import org.sweeptally.model.Measurement;
 
 /**
  * One detection as the filter takes it.
@@ -11,4 +11,4 @@ import org.sweeptally.model.PositionMeasurement;
  * @param id          the sender's own name for it, or null
  * @param declared    what the object calls itself, or null
  */
-public record Observation(PositionMeasurement measurement, int part, int index, String id, String declared) {}
+public record Observation(Measurement measurement, int part, int index, String id, String declared) {}

@@ -10,8 +10,8 @@ import org.sweeptally.filter.association.AssociationProblem;
 import org.sweeptally.filter.association.AssociationMarginals;
 import org.sweeptally.model.Gaussian;
 import org.sweeptally.model.Look;
-import org.sweeptally.model.PositionMeasurement;
-import org.sweeptally.model.PositionUpdate;
+import org.sweeptally.model.Measurement;
+import org.sweeptally.model.MeasurementUpdate;
 
 /**
  * Which component may have caused which observation of a scan, how probable each pair is in the light of all others, and
@@ -43,7 +43,7 @@ final class ScanHypotheses {
     /** Probability of each observation that some component caused it, summed so that small ones stay exact. */
     private final double[] somebodys;
 
-    private final PositionUpdate update = new PositionUpdate();
+    private final MeasurementUpdate update = new MeasurementUpdate();
     private final Mixture mixture = new Mixture();
     private final double[] step = new double[4];
 
@@ -102,7 +102,7 @@ final class ScanHypotheses {
         int candidates = index.query(density, settings.gateSigmas());
         for (int c = 0; c < candidates; c++) {
             int j = index.found(c);
-            PositionMeasurement z = scan.observations().get(j).measurement();
+            Measurement z = scan.observations().get(j).measurement();
             if (!update.measure(z)) {
                 counters.add(Counters.Name.INNOVATIONS_NOT_POSITIVE, 1);
             } else if (update.distanceSquared() <= gate) {

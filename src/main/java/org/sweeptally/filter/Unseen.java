@@ -11,8 +11,8 @@ import org.sweeptally.geo.PlaneArea;
 import org.sweeptally.model.Gaussian;
 import org.sweeptally.model.Look;
 import org.sweeptally.model.NearlyConstantVelocity;
-import org.sweeptally.model.PositionMeasurement;
-import org.sweeptally.model.PositionUpdate;
+import org.sweeptally.model.Measurement;
+import org.sweeptally.model.MeasurementUpdate;
 
 /**
  * The Poisson part: the intensity of objects that no component stands for. Never detected ones are in the grid; what is
@@ -24,7 +24,7 @@ final class Unseen {
     private final PlaneArea core;
     private double apronMetres;
     private final Counters counters;
-    private final PositionUpdate update = new PositionUpdate();
+    private final MeasurementUpdate update = new MeasurementUpdate();
     private final Mixture mixture = new Mixture();
     private final double[] step = new double[4];
 
@@ -77,7 +77,7 @@ final class Unseen {
         List<Observation> observations = scan.observations();
         UnseenEvidence evidence = new UnseenEvidence(observations.size());
         for (int j = 0; j < observations.size(); j++) {
-            PositionMeasurement z = observations.get(j).measurement();
+            Measurement z = observations.get(j).measurement();
             double detection = scan.look().probabilityOfDetection(z.east(), z.north());
             evidence.addGrid(j, detection > 0 ? detection * grid.density(z.east(), z.north()) : 0);
         }
@@ -94,7 +94,7 @@ final class Unseen {
             update.prior(term.density);
             for (int c = 0; c < candidates; c++) {
                 int j = index.found(c);
-                PositionMeasurement z = observations.get(j).measurement();
+                Measurement z = observations.get(j).measurement();
                 if (!update.measure(z)) {
                     counters.add(Counters.Name.INNOVATIONS_NOT_POSITIVE, 1);
                 } else if (update.distanceSquared() <= gate) {
@@ -116,7 +116,7 @@ final class Unseen {
 
     /** The density of an object first seen by an observation: the unseen part, updated by it. */
     Gaussian firstSeen(Scan scan, UnseenEvidence evidence, int j) {
-        PositionMeasurement z = scan.observations().get(j).measurement();
+        Measurement z = scan.observations().get(j).measurement();
         mixture.reset(z.east(), z.north(), 0, 0);
         if (evidence.fromGrid(j) > 0) {
             step[0] = step[1] = step[2] = step[3] = 0;
@@ -137,7 +137,7 @@ final class Unseen {
     }
 
     /** An object from the grid, seen some time ago at z: since then it moved on with its unknown velocity. */
-    private Gaussian fromGrid(PositionMeasurement z) {
+    private Gaussian fromGrid(Measurement z) {
         Gaussian density = Gaussian.atRest(
                 z.east(), z.north(), z.varEast(), z.covEastNorth(), z.varNorth(), settings.speedSigma());
         DMatrix4x4 p = density.covariance;
@@ -209,7 +209,7 @@ final class Unseen {
             double existence,
             ObjectHistory fresh,
             SortedSet<Identity> alive) {
-        PositionMeasurement z = scan.observations().get(j).measurement();
+        Measurement z = scan.observations().get(j).measurement();
         double perEvidence = existence / evidence.total(j);
         double fromGrid = perEvidence * evidence.fromGrid(j);
         if (isHeavy(fromGrid, z)) {
@@ -232,7 +232,7 @@ final class Unseen {
     }
 
     /** Whether it is worth a term; else it goes to the grid at once. */
-    private boolean isHeavy(double weight, PositionMeasurement z) {
+    private boolean isHeavy(double weight, Measurement z) {
         if (weight >= settings.leastTermWeight()) {
             return true;
         }

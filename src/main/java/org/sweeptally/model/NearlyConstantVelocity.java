@@ -17,9 +17,9 @@ import org.ejml.data.DMatrix4x4;
  *
  * @param accelerationNoise spectral density q, square metres a second cubed
  */
-public record NearlyConstantVelocity(double accelerationNoise) {
+public record NearlyConstantVelocity(double accelerationNoise) implements MotionModel {
 
-    /** Predicts a density over a number of seconds, 0 or more, in place. */
+    @Override
     public void predict(Gaussian density, double seconds) {
         DMatrix4 x = density.mean;
         x.a1 += seconds * x.a3;

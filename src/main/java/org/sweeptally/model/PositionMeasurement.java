@@ -12,7 +12,8 @@ package org.sweeptally.model;
  *                     position - lag * velocity
  */
 public record PositionMeasurement(
-        double east, double north, double varEast, double covEastNorth, double varNorth, double lagSeconds) {
+        double east, double north, double varEast, double covEastNorth, double varNorth, double lagSeconds)
+        implements Measurement {
 
     /** With an error of no direction, seen at the time of the state. */
     public static PositionMeasurement at(double east, double north, double sigmaMetres) {

@@ -9,6 +9,7 @@ import org.ejml.dense.fixed.CommonOps_DDF4;
 import org.sweeptally.filter.Component;
 import org.sweeptally.filter.Observation;
 import org.sweeptally.model.Gaussian;
+import org.sweeptally.model.Measurement;
 import org.sweeptally.model.PositionMeasurement;
 
 /**
@@ -47,7 +48,7 @@ final class BareUpdates {
         PositionMeasurement[] measurements = new PositionMeasurement[updates];
         for (int i = 0; i < updates; i++) {
             Gaussian density = components.get(i % components.size()).density();
-            PositionMeasurement z = observations.get(i % observations.size()).measurement();
+            Measurement z = observations.get(i % observations.size()).measurement();
             double off = Math.sqrt(z.varEast());
             priors[i] = density.copy();
             measurements[i] = new PositionMeasurement(

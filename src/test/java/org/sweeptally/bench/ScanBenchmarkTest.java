@@ -9,7 +9,7 @@ import org.sweeptally.filter.Counters;
 import org.sweeptally.filter.ObjectFilter;
 import org.sweeptally.model.Gaussian;
 import org.sweeptally.model.PositionMeasurement;
-import org.sweeptally.model.PositionUpdate;
+import org.sweeptally.model.MeasurementUpdate;
 
 /** Keeps {@link ScanBenchmark} from rotting: it runs, small, and what comes out is printed and looked at. */
 class ScanBenchmarkTest {
@@ -34,7 +34,7 @@ class ScanBenchmarkTest {
         Gaussian prior = scene.filter().components().get(0).density();
         BareUpdates bare = BareUpdates.of(scene.filter().components().subList(0, 1), scene.scan().observations(), 1);
         bare.run();
-        PositionUpdate update = new PositionUpdate();
+        MeasurementUpdate update = new MeasurementUpdate();
         update.prior(prior);
         update.measure(PositionMeasurement.at(prior.east() + 15, prior.north() - 15, 15));
         Gaussian expected = update.updated();

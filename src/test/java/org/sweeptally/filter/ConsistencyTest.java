@@ -17,7 +17,7 @@ import org.junit.jupiter.params.provider.CsvSource;
 import org.sweeptally.model.Gaussian;
 import org.sweeptally.model.Look;
 import org.sweeptally.model.PositionMeasurement;
-import org.sweeptally.model.PositionUpdate;
+import org.sweeptally.model.MeasurementUpdate;
 
 /**
  * Gates hold what they should, errors are as large as the filter says, and existence adds up evidence as a sequential
@@ -84,7 +84,7 @@ class ConsistencyTest {
     void distancesInsideAGateAreShorterByItsTruncation(double level, double expected) {
         double gate = -2 * StrictMath.log(1 - level);
         SplittableRandom random = new SplittableRandom(41);
-        PositionUpdate update = new PositionUpdate();
+        MeasurementUpdate update = new MeasurementUpdate();
         update.prior(new Gaussian(new DMatrix4(0, 0, 0, 0), WIDE));
         double sum = 0;
         double squares = 0;
@@ -135,7 +135,7 @@ class ConsistencyTest {
         Gaussian prior = Gaussian.atRest(0, 0, 400, 0, 400, 5);
         ObjectFilter filter = Begun.with(Begun.undisturbed(0.05, 9), prior, Double.POSITIVE_INFINITY);
         Look look = Begun.SCENE.look(0.9, 0);
-        PositionUpdate update = new PositionUpdate();
+        MeasurementUpdate update = new MeasurementUpdate();
         for (int k = 1; k <= 30; k++) {
             double kick = Math.sqrt(0.05 * 2.5);
             for (int axis = 0; axis < 2; axis++) {

@@ -10,7 +10,7 @@ import org.ejml.data.DMatrix4x4;
 import org.junit.jupiter.api.Test;
 import org.sweeptally.model.Gaussian;
 import org.sweeptally.model.PositionMeasurement;
-import org.sweeptally.model.PositionUpdate;
+import org.sweeptally.model.MeasurementUpdate;
 
 class DetectionIndexTest {
 
@@ -50,7 +50,7 @@ class DetectionIndexTest {
     }
 
     private static List<Integer> inGate(Gaussian density, List<Observation> observations, double gate) {
-        PositionUpdate update = new PositionUpdate();
+        MeasurementUpdate update = new MeasurementUpdate();
         update.prior(density);
         List<Integer> inside = new ArrayList<>();
         for (int j = 0; j < observations.size(); j++) {

@@ -66,7 +66,7 @@ class OutsideChecksTest {
         double[] z = {21, 39, 62};
         for (int k = 0; k < 3; k++) {
             motion.predict(density, 2);
-            PositionUpdate update = new PositionUpdate();
+            MeasurementUpdate update = new MeasurementUpdate();
             update.prior(density);
             // The north axis sees exactly what it expects; its part of the density is 1 / sqrt(2 pi S), with the same S.
             update.measure(new PositionMeasurement(z[k], 0, 4, 0, 4, 0));
@@ -127,7 +127,7 @@ class OutsideChecksTest {
             PositionMeasurement z = new PositionMeasurement(
                     20 * random.nextDouble(), 20 * random.nextDouble(), 4 + random.nextDouble(), random.nextDouble(),
                     3 + random.nextDouble(), lag);
-            PositionUpdate update = new PositionUpdate();
+            MeasurementUpdate update = new MeasurementUpdate();
             update.prior(prior);
             assertThat(update.measure(z)).isTrue();
             Gaussian ours = update.updated();
@@ -180,7 +180,7 @@ class OutsideChecksTest {
         Gaussian prior = new Gaussian(new DMatrix4(), diagonal(9, 16, 1, 1));
         int inside = 0;
         int draws = 200_000;
-        PositionUpdate update = new PositionUpdate();
+        MeasurementUpdate update = new MeasurementUpdate();
         update.prior(prior);
         for (int i = 0; i < draws; i++) {
             double radius = Math.sqrt(-2 * StrictMath.log(1 - random.nextDouble()));
@@ -202,7 +202,7 @@ class OutsideChecksTest {
     }
 
     private static Gaussian updated(Gaussian density, double east, double north, double variance) {
-        PositionUpdate update = new PositionUpdate();
+        MeasurementUpdate update = new MeasurementUpdate();
         update.prior(density);
         update.measure(new PositionMeasurement(east, north, variance, 0, variance, 0));
         return update.updated();

@@ -37,7 +37,7 @@ class ScanConversionTest {
 
     private static PositionMeasurement only(Scan scan) {
         assertThat(scan.observations()).hasSize(1);
-        return scan.observations().get(0).measurement();
+        return (PositionMeasurement) scan.observations().get(0).measurement();
     }
 
     @Test

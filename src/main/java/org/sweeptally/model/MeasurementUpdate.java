@@ -11,7 +11,7 @@ import org.ejml.data.DMatrix4x4;
  * <p>With H = [I, -lag I]: innovation covariance S = H P H' + R, gain K = P H' S^-1, updated covariance P - K S K'.
  * Use: {@link #prior}, then for each measurement {@link #measure} and the accessors.
  */
-public final class PositionUpdate {
+public final class MeasurementUpdate {
 
     private Gaussian prior;
     private PositionMeasurement gainOf;
@@ -55,7 +55,8 @@ public final class PositionUpdate {
     }
 
     /** Takes one measurement; false where the innovation covariance is not positive definite, and then nothing may be read. */
-    public boolean measure(PositionMeasurement z) {
+    public boolean measure(Measurement measurement) {
+        PositionMeasurement z = (PositionMeasurement) measurement;
         if (gainOf == null || !z.sharesGainWith(gainOf)) {
             if (!gain(z)) {
                 gainOf = null;
