@@ -1,7 +1,6 @@
 package org.sweeptally.stream;
 
 import java.time.Duration;
-import java.util.Collection;
 import java.util.List;
 import java.util.Map;
 import java.util.OptionalLong;
@@ -9,6 +8,7 @@ import java.util.Set;
 import java.util.concurrent.ConcurrentHashMap;
 import java.util.concurrent.atomic.AtomicLong;
 import org.apache.kafka.clients.consumer.CloseOptions;
+import org.apache.kafka.clients.consumer.Consumer;
 import org.apache.kafka.clients.consumer.ConsumerConfig;
 import org.apache.kafka.clients.consumer.KafkaConsumer;
 import org.apache.kafka.clients.consumer.OffsetAndMetadata;
@@ -36,16 +36,38 @@ final class KafkaReadingWatch implements ReadingWatch, AutoCloseable {
     private static final long UNKNOWN = -1;
 
     private final String topic;
-    private final KafkaConsumer<byte[], byte[]> consumer;
-    private final Map<Integer, Reading> readings = new ConcurrentHashMap<>();
+    private final Consumer<byte[], byte[]> consumer;
+    private final Set<KafkaReading> readings = ConcurrentHashMap.newKeySet();
     private final Thread thread;
     private volatile int partitions;
     private volatile boolean closing;
 
-    /** Offset of the next record to route, by the router, and the last answer of the bus. */
-    private static final class Reading {
+    /** Offset of the next record to route, by its router, and the last answer of the bus. */
+    private final class KafkaReading implements Reading {
+        private final int partition;
         private final AtomicLong next = new AtomicLong(UNKNOWN);
         private volatile Answer answer;
+
+        private KafkaReading(int partition) {
+            this.partition = partition;
+        }
+
+        @Override
+        public void routed(long offset) {
+            next.set(offset + 1);
+        }
+
+        @Override
+        public OptionalLong readToEndAt() {
+            Answer latest = answer;
+            boolean reached = latest != null && latest.isReachedBy(next.get());
+            return reached ? OptionalLong.of(latest.askedMicros()) : OptionalLong.empty();
+        }
+
+        @Override
+        public void ends() {
+            readings.remove(this);
+        }
     }
 
     /**
@@ -63,16 +85,24 @@ final class KafkaReadingWatch implements ReadingWatch, AutoCloseable {
     }
 
     KafkaReadingWatch(ClientSettings clients, TopicNames names, int partitions) {
+        this(new KafkaConsumer<>(settings(clients, names)), names, partitions);
+    }
+
+    KafkaReadingWatch(Consumer<byte[], byte[]> consumer, TopicNames names, int partitions) {
         this.topic = names.detections();
         this.partitions = partitions;
+        this.consumer = consumer;
+        this.thread = new Thread(this::run, "reading-watch");
+        this.thread.setDaemon(true);
+    }
+
+    private static Map<String, Object> settings(ClientSettings clients, TopicNames names) {
         Map<String, Object> settings = clients.consumer(names.applicationId() + "-reading-watch");
         // In the group only to ask what it has committed; it never joins.
         settings.put(ConsumerConfig.GROUP_ID_CONFIG, names.applicationId());
         settings.put(ConsumerConfig.MAX_POLL_RECORDS_CONFIG, "1");
         settings.put(ConsumerConfig.MAX_PARTITION_FETCH_BYTES_CONFIG, Integer.toString(64 * 1024));
-        this.consumer = new KafkaConsumer<>(settings);
-        this.thread = new Thread(this::run, "reading-watch");
-        this.thread.setDaemon(true);
+        return settings;
     }
 
     void start() {
@@ -80,26 +110,10 @@ final class KafkaReadingWatch implements ReadingWatch, AutoCloseable {
     }
 
     @Override
-    public void begins(int partition) {
-        readings.put(partition, new Reading());
-    }
-
-    @Override
-    public void routed(int partition, long offset) {
-        readings.get(partition).next.set(offset + 1);
-    }
-
-    @Override
-    public void ends(int partition) {
-        readings.remove(partition);
-    }
-
-    @Override
-    public OptionalLong readToEndAt(int partition) {
-        Reading reading = readings.get(partition);
-        Answer answer = reading == null ? null : reading.answer;
-        boolean reached = answer != null && answer.isReachedBy(reading.next.get());
-        return reached ? OptionalLong.of(answer.askedMicros()) : OptionalLong.empty();
+    public Reading begins(int partition) {
+        KafkaReading reading = new KafkaReading(partition);
+        readings.add(reading);
+        return reading;
     }
 
     @Override
@@ -131,43 +145,50 @@ final class KafkaReadingWatch implements ReadingWatch, AutoCloseable {
         }
     }
 
-    private void ask() {
-        List<TopicPartition> ours = readings.keySet().stream().map(p -> new TopicPartition(topic, p)).toList();
-        if (ours.isEmpty()) {
+    /** Asks once. */
+    void ask() {
+        List<KafkaReading> asked = List.copyOf(readings);
+        if (asked.isEmpty()) {
             return;
         }
-        begin(ours);
+        asked.forEach(this::begin);
+        List<TopicPartition> ours = asked.stream().map(this::partition).distinct().toList();
         long askedMicros = System.currentTimeMillis() * 1000;
         Map<TopicPartition, Long> ends = consumer.endOffsets(ours);
-        for (TopicPartition partition : ours) {
-            Reading reading = readings.get(partition.partition());
-            if (reading != null) {
-                long end = ends.get(partition);
-                long next = reading.next.get();
-                long emptyFrom = next == UNKNOWN || next >= end || !isEmpty(partition, next, end) ? end : next;
-                reading.answer = new Answer(askedMicros, end, emptyFrom);
-            }
+        for (KafkaReading reading : asked) {
+            long end = ends.get(partition(reading));
+            long next = reading.next.get();
+            long emptyFrom = next == UNKNOWN || next >= end || !isEmpty(partition(reading), next, end) ? end : next;
+            reading.answer = new Answer(askedMicros, end, emptyFrom);
         }
     }
 
-    /** Finds where partitions begin of which nothing has been routed here. */
-    private void begin(Collection<TopicPartition> ours) {
-        for (TopicPartition partition : ours) {
-            Reading reading = readings.get(partition.partition());
-            if (reading != null && reading.next.get() == UNKNOWN) {
-                OffsetAndMetadata committed = consumer.committed(Set.of(partition)).get(partition);
-                long begin = committed == null
-                        ? consumer.beginningOffsets(List.of(partition)).get(partition)
-                        : committed.offset();
-                // The router may have routed something meanwhile, and knows better.
-                reading.next.compareAndSet(UNKNOWN, begin);
-            }
-        }
+    private TopicPartition partition(KafkaReading reading) {
+        return new TopicPartition(topic, reading.partition);
     }
 
+    /** Finds where a partition begins of which nothing has been routed here. */
+    private void begin(KafkaReading reading) {
+        if (reading.next.get() != UNKNOWN) {
+            return;
+        }
+        TopicPartition partition = partition(reading);
+        OffsetAndMetadata committed = consumer.committed(Set.of(partition)).get(partition);
+        long begin = committed == null
+                ? consumer.beginningOffsets(List.of(partition)).get(partition)
+                : committed.offset();
+        // The router may have routed something meanwhile, and knows better.
+        reading.next.compareAndSet(UNKNOWN, begin);
+    }
+
+    /** What the owner of the detections has deleted unread is no longer left to read. */
     private boolean isEmpty(TopicPartition partition, long from, long end) {
         consumer.assign(List.of(partition));
-        consumer.seek(partition, from);
+        long begin = consumer.beginningOffsets(List.of(partition)).get(partition);
+        if (begin >= end) {
+            return true;
+        }
+        consumer.seek(partition, Math.max(from, begin));
         long until = System.nanoTime() + LOOK.toNanos();
         while (consumer.position(partition) < end && System.nanoTime() < until) {
             if (!consumer.poll(Duration.ofMillis(50)).isEmpty()) {

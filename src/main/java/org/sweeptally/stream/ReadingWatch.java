@@ -8,20 +8,27 @@ import java.util.OptionalLong;
  */
 public interface ReadingWatch {
 
-    /** A partition is read here from now on; from where is not known yet. */
-    void begins(int partition);
-
-    /** The record at an offset of a partition has been routed. */
-    void routed(int partition, long offset);
-
-    /** A partition is no longer read here. */
-    void ends(int partition);
-
     /**
-     * The latest moment known at which everything that the partition held had been routed by now, microseconds since
-     * 1970-01-01T00:00:00Z.
+     * One router's reading of one partition. Two may be there of one partition for a while: a thread that lost it learns
+     * of that later than the thread that has it now begins.
      */
-    OptionalLong readToEndAt(int partition);
+    interface Reading {
+
+        /** The record at an offset has been routed. */
+        void routed(long offset);
+
+        /**
+         * The latest moment known at which everything that the partition held had been routed by now, microseconds since
+         * 1970-01-01T00:00:00Z.
+         */
+        OptionalLong readToEndAt();
+
+        /** The partition is no longer read by this router. */
+        void ends();
+    }
+
+    /** A partition is read here from now on; from where is not known yet. */
+    Reading begins(int partition);
 
     /** How many partitions the detections have. */
     int partitions();

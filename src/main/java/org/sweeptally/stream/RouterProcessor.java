@@ -34,18 +34,21 @@ final class RouterProcessor implements Processor<byte[], byte[], byte[], byte[]>
     private RouterSites sites;
     private int sitesVersion;
     private int partition;
+    private ReadingWatch.Reading reading;
 
     RouterProcessor(RouterPlan plan) {
         this.plan = plan;
     }
 
+    /** May be called again on the same object. */
     @Override
     public void init(ProcessorContext<byte[], byte[]> taskContext) {
+        close();
         context = taskContext;
         forwarding = new Forwarding(taskContext, NAME);
         sites = null;
         partition = taskContext.taskId().partition();
-        plan.watch().begins(partition);
+        reading = plan.watch().begins(partition);
         taskContext.schedule(MARK, PunctuationType.WALL_CLOCK_TIME, this::mark);
     }
 
@@ -58,7 +61,7 @@ final class RouterProcessor implements Processor<byte[], byte[], byte[], byte[]>
         RouterSites.Read read = sites().read(record.value(), source);
         read.intake().reject().ifPresent(this::reject);
         read.intake().body().ifPresent(body -> route(body, read.router(), source, record));
-        plan.watch().routed(at.partition(), at.offset());
+        reading.routed(at.offset());
     }
 
     /** Made anew when a new revision has been written: the next part is the first that is read by it. */
@@ -99,7 +102,7 @@ final class RouterProcessor implements Processor<byte[], byte[], byte[], byte[]>
 
     /** As with ticks, no exception of the bus may leave from here. */
     private void mark(long wallMillis) {
-        OptionalLong read = plan.watch().readToEndAt(partition);
+        OptionalLong read = reading.readToEndAt();
         if (read.isEmpty()) {
             return;
         }
@@ -117,6 +120,8 @@ final class RouterProcessor implements Processor<byte[], byte[], byte[], byte[]>
 
     @Override
     public void close() {
-        plan.watch().ends(partition);
+        if (reading != null) {
+            reading.ends();
+        }
     }
 }

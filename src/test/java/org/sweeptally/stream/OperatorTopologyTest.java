@@ -48,20 +48,22 @@ class OperatorTopologyTest {
     private final Revisions revisions = new Revisions(List.of(Revision.of(site)));
 
     /** All that came has been read, always. */
-    private static final class AllRead implements ReadingWatch {
+    private static final class AllRead implements ReadingWatch, ReadingWatch.Reading {
         @Override
-        public void begins(int partition) {}
+        public Reading begins(int partition) {
+            return this;
+        }
 
         @Override
-        public void routed(int partition, long offset) {}
+        public void routed(long offset) {}
 
         @Override
-        public void ends(int partition) {}
-
-        @Override
-        public OptionalLong readToEndAt(int partition) {
+        public OptionalLong readToEndAt() {
             return OptionalLong.of(BEGIN.toEpochMilli() * 1000);
         }
+
+        @Override
+        public void ends() {}
 
         @Override
         public int partitions() {
