@@ -13,6 +13,7 @@ package org.sweeptally.site;
  * @param waitingBytes         what may wait in a region for its horizon
  * @param clockAheadSeconds    how far ahead of the horizon a sensor's clock may run before it is a finding
  * @param snapshotScans        scans between two snapshots of a region
+ * @param snapshotSeconds      time by the ticks of a region between two snapshots, where scans are fewer or wait
  * @param leastTermWeight      expected objects below which a weak new object goes to the grid at once
  * @param gatedPairs           pairs of a scan's detections with the components, and with the unseen terms, in whose gates
  *                             they lie
@@ -27,5 +28,6 @@ public record BoundSettings(
         long waitingBytes,
         double clockAheadSeconds,
         int snapshotScans,
+        double snapshotSeconds,
         double leastTermWeight,
         int gatedPairs) {}

@@ -16,6 +16,7 @@ final class BoundsReader {
                 fields.whole("waitingBytes", 1 << 20, 1L << 40, 64L << 20),
                 fields.number("clockAheadSeconds", Allowed.moreThanZero(31_536_000), 60),
                 (int) fields.whole("snapshotScans", 1, 1_000_000, 200),
+                fields.number("snapshotSeconds", Allowed.from(1, 600), 30),
                 fields.number("leastTermWeight", Allowed.from(1e-12, 0.05), 1e-5),
                 (int) fields.whole("gatedPairs", 1000, 100_000_000, 2_000_000));
         fields.end();

@@ -102,6 +102,7 @@ public final class EffectiveSettings {
         line(1, "waitingBytes", Long.toString(bounds.waitingBytes()));
         line(1, "clockAheadSeconds", bounds.clockAheadSeconds());
         line(1, "snapshotScans", Integer.toString(bounds.snapshotScans()));
+        line(1, "snapshotSeconds", bounds.snapshotSeconds());
         line(1, "leastTermWeight", bounds.leastTermWeight());
         line(1, "gatedPairs", Integer.toString(bounds.gatedPairs()));
     }

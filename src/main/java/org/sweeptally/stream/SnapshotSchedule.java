@@ -12,9 +12,6 @@ import org.sweeptally.site.Site;
  */
 record SnapshotSchedule(int scans, long tickMicros, long workNanos) {
 
-    /** By the ticks a region is written out this often even while all of its entries wait. */
-    private static final long USUAL_TICK_MICROS = 30_000_000;
-
     /**
      * The schedule for a site.
      *
@@ -24,7 +21,7 @@ record SnapshotSchedule(int scans, long tickMicros, long workNanos) {
         long quarterNanos = transactionTimeoutMillis * 1_000_000L / 4;
         return new SnapshotSchedule(
                 site.bounds().snapshotScans(),
-                USUAL_TICK_MICROS,
+                Math.round(site.bounds().snapshotSeconds() * 1e6),
                 quarterNanos / Math.max(1, site.regions().size()));
     }
 

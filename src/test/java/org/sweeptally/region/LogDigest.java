@@ -48,7 +48,8 @@ public final class LogDigest {
         log.sort(Comparator.comparingLong(entry -> ScanParts.partOf(entry).getScanTimeMicros()));
         Site site = TestSites.withBounds(TestSites.site(1, NORTH, PILOT), b -> new BoundSettings(
                 b.gateSigmas(), b.components(), b.unseenTerms(), exactSteps, b.propagationSweeps(),
-                b.detectionsPerPart(), b.waitingBytes(), b.clockAheadSeconds(), b.snapshotScans(), b.leastTermWeight(), b.gatedPairs()));
+                b.detectionsPerPart(), b.waitingBytes(), b.clockAheadSeconds(), b.snapshotScans(), b.snapshotSeconds(),
+                b.leastTermWeight(), b.gatedPairs()));
         Rig rig = Rig.with(site);
         rig.applyAll(log);
         rig.apply(Entries.endOfInput());

@@ -157,7 +157,8 @@ class PublishingTest {
     void whoIsPushedOutByTheBoundOnComponentsIsEndedForThatAndTheBoundIsAFinding() {
         Rig rig = Rig.with(TestSites.withBounds(TestSites.site(1, NORTH), b -> new BoundSettings(
                 b.gateSigmas(), 1, b.unseenTerms(), b.exactAssociationSteps(), b.propagationSweeps(),
-                b.detectionsPerPart(), b.waitingBytes(), b.clockAheadSeconds(), b.snapshotScans(), b.leastTermWeight(), b.gatedPairs())));
+                b.detectionsPerPart(), b.waitingBytes(), b.clockAheadSeconds(), b.snapshotScans(), b.snapshotSeconds(),
+                b.leastTermWeight(), b.gatedPairs())));
         seen(rig, 1, 6, 300, -400);
         seen(rig, 7, 20, -900, 800);
         assertThat(rig.out.ends).hasSize(1);

@@ -143,7 +143,7 @@ final class TestSites {
                 600,
                 new UnseenSettings(5, 1, 1),
                 new ThresholdSettings(0.7, 0.3),
-                new BoundSettings(5, 20_000, 50_000, 200_000, 1000, 20_000, 64L << 20, 60, 200, 1e-5, 2_000_000),
+                new BoundSettings(5, 20_000, 50_000, 200_000, 1000, 20_000, 64L << 20, 60, 200, 30, 1e-5, 2_000_000),
                 false);
     }
 

@@ -63,7 +63,7 @@ class EffectiveSettingsTest {
         assertThat(site.rejectOutside()).isFalse();
         assertThat(site.fromMicros()).isEmpty();
         assertThat(site.bounds())
-                .isEqualTo(new BoundSettings(5, 20_000, 50_000, 1_000_000, 1000, 20_000, 64L << 20, 60, 200, 1e-5, 2_000_000));
+                .isEqualTo(new BoundSettings(5, 20_000, 50_000, 1_000_000, 1000, 20_000, 64L << 20, 60, 200, 30, 1e-5, 2_000_000));
         assertThat(site.sensors())
                 .extracting(SensorSettings::name)
                 .containsExactly("north-shore", "pilot-house", "south-shore");
@@ -140,6 +140,7 @@ class EffectiveSettingsTest {
                         random.nextLong(1 << 20, 1L << 39),
                         random.nextDouble(1, 99),
                         random.nextInt(1, 999),
+                        random.nextDouble(1, 600),
                         random.nextDouble(1e-9, .01),
                         random.nextInt(1000, 99_999_999)),
                 random.nextBoolean());

@@ -83,7 +83,7 @@ final class TestSite {
         return with(site, site.name(), site.revision(), site.fromMicros(), site.regions(), site.thresholds(),
                 new BoundSettings(b.gateSigmas(), b.components(), b.unseenTerms(), b.exactAssociationSteps(),
                         b.propagationSweeps(), b.detectionsPerPart(), b.waitingBytes(), b.clockAheadSeconds(), scans,
-                        b.leastTermWeight(), b.gatedPairs()));
+                        b.snapshotSeconds(), b.leastTermWeight(), b.gatedPairs()));
     }
 
     private static Site with(
