@@ -24,7 +24,7 @@ final class Findings {
     Finding back(String sensor, long horizonMicros, long promiseMicros) {
         double behind = promiseMicros == Micros.BEFORE_ALL || horizonMicros == Micros.BEFORE_ALL
                 ? 0
-                : Micros.toSeconds(horizonMicros) - Micros.toSeconds(promiseMicros);
+                : Micros.toSeconds(horizonMicros - promiseMicros);
         return finding(FindingKind.SENSOR_BACK, sensor, horizonMicros, Math.max(0, behind), "sensor " + sensor
                 + " is back: the picture waits for it again, and has come to " + Micros.text(horizonMicros));
     }
@@ -42,10 +42,11 @@ final class Findings {
     }
 
     Finding clockAhead(String sensor, long latestScanMicros, long horizonMicros, String waitsFor) {
-        double seconds = Micros.toSeconds(latestScanMicros) - Micros.toSeconds(horizonMicros);
+        long ahead = latestScanMicros - horizonMicros;
+        double seconds = Micros.toSeconds(ahead);
         return finding(FindingKind.CLOCK_AHEAD, sensor, latestScanMicros, seconds, "the clock of sensor " + sensor
-                + " seems to run ahead: its latest scan is " + seconds
-                + " s ahead of the picture, which waits for sensor " + waitsFor);
+                + " seems to run ahead: its latest scan is " + Micros.secondsText(ahead)
+                + " ahead of the picture, which waits for sensor " + waitsFor);
     }
 
     Finding waitingBound(String sensor, long horizonMicros, long bytes, long bound) {

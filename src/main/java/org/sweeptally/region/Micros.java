@@ -1,7 +1,7 @@
 package org.sweeptally.region;
 
 import java.math.BigDecimal;
-import java.time.Instant;
+import org.sweeptally.region.intake.Times;
 
 /** Times in microseconds since 1970-01-01T00:00:00Z, with one before all others and one after all others. */
 final class Micros {
@@ -41,8 +41,7 @@ final class Micros {
         if (micros == AFTER_ALL) {
             return "the end";
         }
-        return Instant.ofEpochSecond(Math.floorDiv(micros, SECOND), Math.floorMod(micros, SECOND) * 1000)
-                .toString();
+        return Times.text(micros);
     }
 
     /** A time as a record holds it: null at either end. */

@@ -152,7 +152,8 @@ class SilenceTest {
         Site site = TestSites.site(1, NORTH, SOUTH);
         Rig rig = Rig.with(TestSites.withBounds(site, b -> new BoundSettings(
                 b.gateSigmas(), b.components(), b.unseenTerms(), b.exactAssociationSteps(), b.propagationSweeps(),
-                b.detectionsPerPart(), 2000, b.clockAheadSeconds(), b.snapshotScans(), b.leastTermWeight(), b.gatedPairs())));
+                b.detectionsPerPart(), 2000, b.clockAheadSeconds(), b.snapshotScans(), b.snapshotSeconds(),
+                b.leastTermWeight(), b.gatedPairs())));
         int sent = 0;
         while (rig.out.appended.isEmpty() && sent < 100) {
             assertThat(rig.heartbeat(0).getWaitingBytes()).isLessThanOrEqualTo(2000);
@@ -175,6 +176,7 @@ class SilenceTest {
         assertThat(rig.out.findingKinds()).containsExactly(FindingKind.CLOCK_AHEAD);
         assertThat(rig.out.findings.get(0).getSubject()).isEqualTo("north-shore");
         assertThat(rig.out.findings.get(0).getAmount()).isBetween(3598.0, 3599.0);
+        assertThat(rig.out.findings.get(0).getSentence()).contains("its latest scan is 3598.999999 s ahead of");
         assertThat(rig.effects()).containsExactly(1.0);
         rig.apply(part("south-shore", 3590)).apply(tick(3)).apply(part("north-shore", 9000)).apply(tick(4), tick(5));
         assertThat(rig.out.findingKinds()).containsExactly(FindingKind.CLOCK_AHEAD, FindingKind.CLOCK_AHEAD);
