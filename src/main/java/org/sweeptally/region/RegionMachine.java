@@ -69,7 +69,7 @@ public final class RegionMachine {
      * Takes in the next entry of the region's log.
      *
      * @throws NewerMachineVersionException if settings were written for a newer machine
-     * @throws IllegalStateException        if settings contradict others, or move the region
+     * @throws IllegalStateException        if settings contradict others, move the region, or do not come
      */
     public void apply(LogEntry entry, MachineOutputs out) {
         state.counters.add(RegionCounters.Name.ENTRIES);
@@ -81,7 +81,7 @@ public final class RegionMachine {
         } else if (body instanceof ProgressMarkBody mark) {
             state.marks.mark(mark);
         } else if (state.timeline == null) {
-            state.raw.add(entry);
+            waitForSettings(entry);
         } else {
             take(entry, out);
         }
@@ -112,6 +112,15 @@ public final class RegionMachine {
     }
 
     // Settings.
+
+    /** The entry stays in the log: once settings stand before it there, it can be taken in. */
+    private void waitForSettings(LogEntry entry) {
+        if (!state.raw.add(entry)) {
+            throw new IllegalStateException("the log of region " + state.region + " holds no settings, and "
+                    + state.raw.size() + " entries of " + state.raw.bytes() + " bytes wait for them, of at most "
+                    + RawEntries.LARGEST_BYTES + " bytes that may: settings have to stand at the log's beginning");
+        }
+    }
 
     private void settings(LogEntry entry, SettingsBody body, MachineOutputs out) {
         if (body.getMachineVersion() > MACHINE_VERSION) {

@@ -8,6 +8,7 @@ import java.util.List;
 import org.junit.jupiter.api.Test;
 import org.sweeptally.event.Count;
 import org.sweeptally.event.LogEntry;
+import org.sweeptally.event.PartBody;
 import org.sweeptally.event.RejectReason;
 import org.sweeptally.event.SettingsBody;
 import org.sweeptally.site.SensorSettings;
@@ -31,6 +32,20 @@ class SettingsEntriesTest {
         rig.apply(rig.settings(TestSites.site(1, NORTH), 1000));
         assertThat(rig.effects()).as("the first settings hold from the beginning").containsExactly(1.0, 2.0);
         assertThat(rig.out.reasons()).containsExactly(RejectReason.LATE);
+    }
+
+    @Test
+    void aLogWithoutSettingsStopsBeforeItFillsTheMemory() {
+        Rig rig = new Rig();
+        LogEntry large = part("north-shore", 1).entry();
+        ((PartBody) large.getBody()).getPart().setSensor("n".repeat(4 << 20));
+        for (int i = 0; i < 15; i++) {
+            rig.apply(large);
+        }
+        assertThatThrownBy(() -> rig.apply(large))
+                .isInstanceOf(IllegalStateException.class)
+                .hasMessageContaining("the log of region " + TestSites.REGION + " holds no settings, and 15 entries of ")
+                .hasMessageContaining("at most 67108864 bytes");
     }
 
     @Test
