@@ -10,6 +10,7 @@ import java.util.TreeMap;
 import org.apache.kafka.clients.admin.AdminClientConfig;
 import org.apache.kafka.clients.consumer.ConsumerConfig;
 import org.apache.kafka.clients.producer.ProducerConfig;
+import org.apache.kafka.common.config.ConfigException;
 import org.apache.kafka.common.serialization.ByteArrayDeserializer;
 import org.apache.kafka.common.serialization.ByteArraySerializer;
 import org.apache.kafka.streams.StreamsConfig;
@@ -23,6 +24,8 @@ public final class ClientSettings {
 
     /** Where the bus is looked for unless the user says otherwise. */
     public static final String USUAL_BUS = "localhost:9092";
+
+    private static final String READ_COMMITTED = "read_committed";
 
     private static final String CONSUMER = "consumer.";
     private static final String PRODUCER = "producer.";
@@ -40,6 +43,8 @@ public final class ClientSettings {
     public ClientSettings(Map<String, String> given) {
         this.given = Collections.unmodifiableNavigableMap(new TreeMap<>(given));
         refuseWhatBreaksPromises();
+        refuseWhatIsNotOursToChoose();
+        refuseWhatKafkaRefuses();
     }
 
     private void refuseWhatBreaksPromises() {
@@ -53,6 +58,37 @@ public final class ClientSettings {
                 throw new SettingsRefusedException(name + " may not be set: an entry of the region log that is passed"
                         + " over would part the picture from its log");
             }
+            if (name.endsWith(ConsumerConfig.ISOLATION_LEVEL_CONFIG) && !given.get(name).equals(READ_COMMITTED)) {
+                throw new SettingsRefusedException(name + " is " + given.get(name) + ": only " + READ_COMMITTED
+                        + " is allowed, or what is undone would be read");
+            }
+        }
+    }
+
+    private void refuseWhatIsNotOursToChoose() {
+        Map<String, String> chosen = new TreeMap<>();
+        chosen.put(StreamsConfig.APPLICATION_ID_CONFIG, "the site's name makes it");
+        chosen.put(StreamsConfig.STATE_DIR_CONFIG, "--state says it");
+        chosen.put(ProducerConfig.TRANSACTIONAL_ID_CONFIG, "every writer has its own");
+        for (String name : given.keySet()) {
+            chosen.forEach((refused, why) -> {
+                if (name.equals(refused) || name.endsWith("." + refused)) {
+                    throw new SettingsRefusedException(name + " may not be set: " + why);
+                }
+            });
+        }
+    }
+
+    /** Before anything begins, and with the property's name; the rest is told by the client that meets it. */
+    private void refuseWhatKafkaRefuses() {
+        try {
+            new StreamsConfig(streams("check", "."));
+            new ConsumerConfig(consumer("check"));
+            new ProducerConfig(producer("check"));
+            new AdminClientConfig(admin("check"));
+            transactionTimeoutMillis();
+        } catch (ConfigException | IllegalArgumentException e) {
+            throw new SettingsRefusedException("Kafka refuses its properties: " + e.getMessage());
         }
     }
 
@@ -106,7 +142,7 @@ public final class ClientSettings {
         settings.remove(ConsumerConfig.GROUP_PROTOCOL_CONFIG);
         settings.remove(ConsumerConfig.SESSION_TIMEOUT_MS_CONFIG);
         settings.remove(ConsumerConfig.HEARTBEAT_INTERVAL_MS_CONFIG);
-        settings.put(ConsumerConfig.ISOLATION_LEVEL_CONFIG, "read_committed");
+        settings.put(ConsumerConfig.ISOLATION_LEVEL_CONFIG, READ_COMMITTED);
         settings.put(ConsumerConfig.AUTO_OFFSET_RESET_CONFIG, "none");
         settings.put(ConsumerConfig.ENABLE_AUTO_COMMIT_CONFIG, "false");
         settings.put(ConsumerConfig.ALLOW_AUTO_CREATE_TOPICS_CONFIG, "false");
@@ -115,11 +151,17 @@ public final class ClientSettings {
         return settings;
     }
 
-    /** Settings of a producer of raw bytes that are written once each and in order. */
+    /**
+     * Settings of a producer of raw bytes that are written once each and in order. One request is under way at a time: a
+     * broker that does not know the producer yet takes any of its batches for the first. Where a topic has just been
+     * created, the first may be turned away because the broker has not heard of the topic, and the second be taken; then
+     * the first could never follow (out of order sequence), or would follow in the wrong place.
+     */
     public Map<String, Object> producer(String clientId) {
         Map<String, Object> settings = client(PRODUCER, ProducerConfig.configNames(), clientId);
         settings.put(ProducerConfig.ACKS_CONFIG, "all");
         settings.put(ProducerConfig.ENABLE_IDEMPOTENCE_CONFIG, "true");
+        settings.put(ProducerConfig.MAX_IN_FLIGHT_REQUESTS_PER_CONNECTION, "1");
         settings.put(ProducerConfig.KEY_SERIALIZER_CLASS_CONFIG, ByteArraySerializer.class.getName());
         settings.put(ProducerConfig.VALUE_SERIALIZER_CLASS_CONFIG, ByteArraySerializer.class.getName());
         return settings;

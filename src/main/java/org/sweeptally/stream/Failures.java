@@ -31,8 +31,8 @@ final class Failures {
             replacedNanos.removeFirst();
         }
         if (replacedNanos.size() == REPLACEMENTS) {
-            return Optional.of(REPLACEMENTS + " threads failed within " + WITHIN.toMinutes() + " minutes, the last: "
-                    + words(thrown));
+            return Optional.of(REPLACEMENTS + " failed threads were replaced within " + WITHIN.toMinutes()
+                    + " minutes, and one more failed: " + words(thrown));
         }
         replacedNanos.addLast(now);
         return Optional.empty();

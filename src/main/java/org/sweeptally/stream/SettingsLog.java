@@ -10,6 +10,7 @@ import org.apache.kafka.clients.consumer.ConsumerRecord;
 import org.apache.kafka.clients.consumer.KafkaConsumer;
 import org.apache.kafka.common.KafkaException;
 import org.apache.kafka.common.TopicPartition;
+import org.apache.kafka.common.errors.InterruptException;
 
 /** Reads the compacted settings topic, which has one partition, from its beginning, as far as it is committed. */
 final class SettingsLog implements AutoCloseable {
@@ -46,6 +47,8 @@ final class SettingsLog implements AutoCloseable {
                             + PATIENCE.toSeconds() + " s");
                 }
             }
+        } catch (InterruptException e) {
+            throw e;
         } catch (KafkaException e) {
             throw new OperatorStoppedException("topic " + topic + " cannot be read: " + e.getMessage(), e);
         }
