@@ -4,6 +4,7 @@ import java.util.ArrayList;
 import java.util.List;
 import java.util.Map;
 import java.util.Optional;
+import java.util.OptionalLong;
 import java.util.function.Consumer;
 import org.apache.kafka.clients.producer.KafkaProducer;
 import org.apache.kafka.clients.producer.ProducerConfig;
@@ -12,6 +13,7 @@ import org.apache.kafka.common.KafkaException;
 import org.apache.kafka.common.errors.InvalidProducerEpochException;
 import org.apache.kafka.common.errors.ProducerFencedException;
 import org.sweeptally.region.RegionMachine;
+import org.sweeptally.region.intake.Times;
 import org.sweeptally.region.wire.Wire;
 
 /**
@@ -81,10 +83,12 @@ final class SettingsAgreement {
             known = new ArrayList<>(log.news());
         }
         Optional<Revision> latest = known.stream().reduce((a, b) -> b.number() >= a.number() ? b : a);
+        latest.ifPresent(this::checkLog);
         if (latest.isPresent() && !isNew(ours, latest.get())) {
             says.accept("settings revision " + ours.number() + " hold already");
             return known;
         }
+        latest.ifPresentOrElse(before -> checkFrom(ours), () -> sayFrom(ours));
         write(ours, producer);
         says.accept("settings revision " + ours.number() + " written to " + names.settings() + " and to the log of "
                 + regions.regions().size() + " regions");
@@ -117,6 +121,47 @@ final class SettingsAgreement {
             throw new SettingsRefusedException("the site file has other regions than those that run with revision "
                     + latest.number() + ": " + difference
                     + "; running regions stay as they are, so a site with others needs another name");
+        }
+    }
+
+    /** Settings go to both in one transaction. */
+    private void checkLog(Revision latest) {
+        try (LogTail log = new LogTail(clients, names.regionLog())) {
+            for (String region : regions.regions()) {
+                int partition = regions.partition(region, partitions);
+                if (log.isNew(partition)) {
+                    throw new OperatorStoppedException("topic " + names.settings() + " holds revision "
+                            + latest.number() + ", and partition " + partition + " of " + names.regionLog()
+                            + ", the log of region " + region + ", has nothing in it: it has been made anew, without"
+                            + " its settings. Delete topic " + names.settings()
+                            + " too, and the command topics creates it for a new beginning");
+                }
+            }
+        }
+    }
+
+    /** A part is judged when it arrives, by the settings that hold at its time as far as they are known then. */
+    private void checkFrom(Revision ours) {
+        Long from = ours.entry().getLogTimeMicros();
+        if (from == null) {
+            return;
+        }
+        try (LogTail log = new LogTail(clients, names.regionLog())) {
+            for (int partition = 0; partition < partitions; partition++) {
+                OptionalLong latest = log.latestScanMicros(partition);
+                if (latest.isPresent() && latest.getAsLong() >= from) {
+                    throw new SettingsRefusedException("the site file's settings hold from " + Times.text(from)
+                            + " (from), and the log holds a part of a scan of " + Times.text(latest.getAsLong())
+                            + " already: settings must be written ahead of their time; choose a later one, or leave"
+                            + " from out, and they hold from where each region meets them");
+                }
+            }
+        }
+    }
+
+    private void sayFrom(Revision ours) {
+        if (ours.entry().getLogTimeMicros() != null) {
+            says.accept("from has no effect on the first settings of a site: they hold from the beginning");
         }
     }
 
