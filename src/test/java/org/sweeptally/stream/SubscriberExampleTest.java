@@ -23,7 +23,6 @@ import org.sweeptally.region.wire.Wire;
 import org.sweeptally.site.Site;
 
 /** The subscriber that the README shows, run as it stands there. */
-@Tag("long")
 class SubscriberExampleTest {
 
     private static final Duration PATIENCE = Duration.ofSeconds(90);
@@ -53,6 +52,7 @@ class SubscriberExampleTest {
     }
 
     @Test
+    @Tag("long")
     void itReadsEveryCountOfTheRecording() {
         Site site = TestSite.estuary();
         List<Part> parts = TestSite.recording(site);
