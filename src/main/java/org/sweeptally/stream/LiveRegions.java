@@ -73,6 +73,11 @@ final class LiveRegions {
         applied = Math.max(applied, offset);
     }
 
+    /** Offset of the last entry applied, -1 before the first. */
+    long applied() {
+        return applied;
+    }
+
     /** How far the partition has been applied, and from where it would have to be applied again. */
     Progress progress() {
         long tailStart = applied + 1;

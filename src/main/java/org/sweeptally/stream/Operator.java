@@ -8,8 +8,8 @@ import java.util.concurrent.TimeUnit;
 import java.util.concurrent.atomic.AtomicReference;
 import java.util.function.Consumer;
 import org.apache.kafka.streams.CloseOptions;
+import org.apache.kafka.common.KafkaException;
 import org.apache.kafka.streams.KafkaStreams;
-import org.apache.kafka.streams.errors.StreamsException;
 import org.apache.kafka.streams.errors.StreamsUncaughtExceptionHandler.StreamThreadExceptionResponse;
 import org.slf4j.Logger;
 import org.slf4j.LoggerFactory;
@@ -68,7 +68,9 @@ public final class Operator implements AutoCloseable {
                 new RouterPlan(regions, revisions, readingWatch, found.appendTimes()),
                 new RegionPlan(regions, found.logPartitions(), LocalSite::readSettings,
                         SnapshotSchedule.of(site, clients.transactionTimeoutMillis()),
-                        new KafkaLogReader(clients, names.regionLog())),
+                        new KafkaLogReader(clients, names.regionLog()),
+                        new KafkaFreshStart(clients, names),
+                        Duration.ofMillis(clients.transactionTimeoutMillis() / 2)),
                 OperatorStores.onDisk(),
                 says);
         run(topology);
@@ -76,7 +78,9 @@ public final class Operator implements AutoCloseable {
 
     private Preflight.Found preflight() {
         try (Topics topics = new Topics(settings.clients())) {
-            return new Preflight(topics, settings.topics()).check();
+            Preflight.Found found = new Preflight(topics, settings.topics()).check();
+            new GroupOffsets(settings.clients(), settings.topics()).check(topics, found.logPartitions());
+            return found;
         }
     }
 
@@ -89,7 +93,7 @@ public final class Operator implements AutoCloseable {
             readingWatch.start();
             settingsWatch.start();
             streams.start();
-        } catch (StreamsException e) {
+        } catch (KafkaException | IllegalArgumentException e) {
             close();
             throw new OperatorStoppedException("the operator cannot begin: " + Failures.words(e), e);
         }

@@ -25,8 +25,4 @@ record Progress(long applied, long tailStart, long entries) {
         ByteBuffer in = ByteBuffer.wrap(bytes);
         return new Progress(in.getLong(), in.getLong(), in.getLong());
     }
-
-    boolean hasTail() {
-        return tailStart <= applied;
-    }
 }

@@ -9,8 +9,8 @@ import java.util.OptionalLong;
 public interface ReadingWatch {
 
     /**
-     * One router's reading of one partition. Two may be there of one partition for a while: a thread that lost it learns
-     * of that later than the thread that has it now begins.
+     * One router's reading of one partition. Two may be there of one partition for a while: a thread that lost it
+     * learns of that later than the thread that has it now begins.
      */
     interface Reading {
 
@@ -18,8 +18,8 @@ public interface ReadingWatch {
         void routed(long offset);
 
         /**
-         * The latest moment known at which everything that the partition held had been routed by now, microseconds since
-         * 1970-01-01T00:00:00Z.
+         * The latest moment known at which everything that the partition held had been routed by now, microseconds
+         * since 1970-01-01T00:00:00Z.
          */
         OptionalLong readToEndAt();
 

@@ -40,7 +40,7 @@ final class Recovery {
         for (Snapshot snapshot : snapshots) {
             restore(live, snapshot, progress.get());
         }
-        long again = progress.get().hasTail() ? tail(live, progress.get()) : 0;
+        long again = tail(live, progress.get());
         check(live, progress.get());
         return new Recovered(live, again);
     }
@@ -58,6 +58,7 @@ final class Recovery {
         live.restore(snapshot);
     }
 
+    /** Without a tail the reader still finds whether the log goes on where it was left. */
     private long tail(LiveRegions live, Progress progress) {
         long[] again = new long[1];
         reader.read(live.partition(), progress.tailStart(), progress.applied(), (offset, key, value) -> {

@@ -1,5 +1,6 @@
 package org.sweeptally.stream;
 
+import java.time.Duration;
 import java.util.function.Function;
 import org.sweeptally.site.Site;
 
@@ -11,13 +12,17 @@ import org.sweeptally.site.Site;
  * @param settingsReader reads the text of a settings entry
  * @param schedule       when states are written out
  * @param reader         of the region log's tail
+ * @param freshStart     says whether regions without state may begin from nothing
+ * @param longestTail    what recovery may take: after as much again the bus ends the thread's transaction
  */
 record RegionPlan(
         RegionPartitions regions,
         int partitions,
         Function<String, Site> settingsReader,
         SnapshotSchedule schedule,
-        LogReader reader) {
+        LogReader reader,
+        FreshStart freshStart,
+        Duration longestTail) {
 
     /** The regions of a partition at the beginning of their log. */
     LiveRegions begin(int partition) {

@@ -56,6 +56,11 @@ final class RegionProcessor implements Processor<byte[], byte[], byte[], byte[]>
         long begin = System.nanoTime();
         Recovery recovery = new Recovery(() -> plan.begin(partition), plan.reader());
         Optional<Progress> applied = Optional.ofNullable(progress.get(PROGRESS_KEY)).map(Progress::of);
+        if (applied.isEmpty()) {
+            plan.freshStart().refusal(partition).ifPresent(why -> {
+                throw new OperatorStoppedException("partition " + partition + " of the region log: " + why);
+            });
+        }
         Recovery.Recovered recovered;
         try {
             recovered = recovery.recover(snapshots.all(), applied);
@@ -68,6 +73,11 @@ final class RegionProcessor implements Processor<byte[], byte[], byte[], byte[]>
             says.accept("partition " + partition + " is back: regions " + recovered.regions().names() + ", "
                     + recovered.entriesAgain() + " of " + applied.get().entries() + " entries applied again in "
                     + millis + " ms");
+            if (millis > plan.longestTail().toMillis()) {
+                says.accept("partition " + partition + " took longer than half the transaction timeout to come back"
+                        + " (" + millis + " ms, of " + plan.longestTail().toMillis() + " ms): lower snapshotScans, or"
+                        + " give the process fewer regions");
+            }
         }
         return recovered.regions();
     }
@@ -77,6 +87,7 @@ final class RegionProcessor implements Processor<byte[], byte[], byte[], byte[]>
         long offset = context.recordMetadata()
                 .orElseThrow(() -> new IllegalStateException("an entry of the region log comes from nowhere"))
                 .offset();
+        checkIsNext(offset);
         LogRecord entry = LogRecord.of(live, offset, record.key(), record.value());
         forwarding.of(record.key(), record.timestamp());
         try {
@@ -92,6 +103,16 @@ final class RegionProcessor implements Processor<byte[], byte[], byte[], byte[]>
             forwarding.snapshot(snapshot);
         }
         progress.put(PROGRESS_KEY, live.progress().toBytes());
+    }
+
+    /** Offset and state are committed together, so only somebody else can set the group back. */
+    private void checkIsNext(long offset) {
+        if (offset <= live.applied()) {
+            throw new OperatorStoppedException("offset " + offset + " of partition " + live.partition()
+                    + " of the region log comes again, it was applied up to " + live.applied() + ": the offsets of"
+                    + " the operator's group have been set back or deleted; set them to " + (live.applied() + 1)
+                    + "; nothing was used twice");
+        }
     }
 
     /**

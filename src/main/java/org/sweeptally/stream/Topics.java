@@ -7,7 +7,9 @@ import java.util.List;
 import java.util.Map;
 import java.util.NavigableMap;
 import java.util.Optional;
+import java.util.Set;
 import java.util.TreeMap;
+import java.util.TreeSet;
 import java.util.concurrent.ExecutionException;
 import java.util.concurrent.TimeUnit;
 import java.util.concurrent.TimeoutException;
@@ -15,6 +17,7 @@ import java.util.concurrent.locks.LockSupport;
 import org.apache.kafka.clients.admin.Admin;
 import org.apache.kafka.clients.admin.Config;
 import org.apache.kafka.clients.admin.ConfigEntry;
+import org.apache.kafka.clients.admin.ListConsumerGroupOffsetsOptions;
 import org.apache.kafka.clients.admin.NewTopic;
 import org.apache.kafka.clients.admin.TopicDescription;
 import org.apache.kafka.common.KafkaFuture;
@@ -57,6 +60,25 @@ public final class Topics implements AutoCloseable {
     /** How many partitions a topic has, empty where there is no such topic. */
     public Optional<Integer> partitions(String topic) {
         return existing(admin.describeTopics(List.of(topic)).topicNameValues().get(topic), topic);
+    }
+
+    /**
+     * The partitions of a topic on which a group has committed offsets.
+     *
+     * @param settled whether to wait for what is being committed
+     */
+    Set<Integer> committed(String group, String topic, boolean settled) {
+        var offsets = get(
+                admin.listConsumerGroupOffsets(group, new ListConsumerGroupOffsetsOptions().requireStable(settled))
+                        .partitionsToOffsetAndMetadata(group),
+                "asking for the offsets of group " + group);
+        Set<Integer> partitions = new TreeSet<>();
+        offsets.forEach((partition, offset) -> {
+            if (partition.topic().equals(topic) && offset != null) {
+                partitions.add(partition.partition());
+            }
+        });
+        return partitions;
     }
 
     /**

@@ -8,6 +8,7 @@ import java.time.Duration;
 import java.time.Instant;
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Optional;
 import java.util.OptionalLong;
 import java.util.Properties;
 import java.util.Set;
@@ -44,6 +45,8 @@ class OperatorTopologyTest {
     private final TreeMap<Bytes, byte[]> snapshots = new TreeMap<>();
     private final TreeMap<Bytes, byte[]> progress = new TreeMap<>();
     private final List<KeyValue<byte[], byte[]>> log = new ArrayList<>();
+    private String refusal;
+    private Duration longestTail = Duration.ofMinutes(1);
     private final List<String> said = new ArrayList<>();
     private final Revisions revisions = new Revisions(List.of(Revision.of(site)));
 
@@ -82,7 +85,8 @@ class OperatorTopologyTest {
         return new OperatorTopology(
                         names,
                         new RouterPlan(regions, revisions, new AllRead(), true),
-                        new RegionPlan(regions, 1, LocalSite::readSettings, SnapshotSchedule.of(site, 10_000), reader),
+                        new RegionPlan(regions, 1, LocalSite::readSettings, SnapshotSchedule.of(site, 10_000), reader,
+                                partition -> Optional.ofNullable(refusal), longestTail),
                         new OperatorStores(MapStore.over(RegionProcessor.SNAPSHOTS, snapshots),
                                 MapStore.over(RegionProcessor.PROGRESS, progress)),
                         said::add)
@@ -216,6 +220,29 @@ class OperatorTopologyTest {
     }
 
     @Test
+    void regionsWithoutStateBeginOnlyWhereTheyMay() {
+        refusal = "its state has been deleted";
+        assertThatThrownBy(this::driver)
+                .rootCause()
+                .isInstanceOf(OperatorStoppedException.class)
+                .hasMessage("partition 0 of the region log: its state has been deleted");
+    }
+
+    @Test
+    void anEntryThatComesAgainStopsTheOperator() {
+        try (TopologyTestDriver driver = driver()) {
+            settings(driver);
+        }
+        try (TopologyTestDriver setBack = driver()) {
+            assertThatThrownBy(() -> settings(setBack))
+                    .rootCause()
+                    .isInstanceOf(OperatorStoppedException.class)
+                    .hasMessageContaining("offset 0 of partition 0 of the region log comes again")
+                    .hasMessageContaining("set them to 2");
+        }
+    }
+
+    @Test
     void aSecondDriverRecoversWhatTheFirstOneHad() {
         try (TopologyTestDriver driver = driver()) {
             settings(driver);
@@ -230,6 +257,9 @@ class OperatorTopologyTest {
         assertThat(before.applied()).isEqualTo(log.size() - 1);
         driver().close();
         assertThat(said).singleElement().asString().contains("of " + log.size() + " entries applied again");
+        longestTail = Duration.ZERO.minusMillis(1);
+        driver().close();
+        assertThat(said).last().asString().contains("longer than half the transaction timeout");
         progress.replaceAll((key, value) ->
                 new Progress(before.applied(), before.tailStart(), before.entries() - 1).toBytes());
         assertThatThrownBy(this::driver).rootCause().hasMessageContaining("entries were brought back");

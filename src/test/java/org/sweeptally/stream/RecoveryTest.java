@@ -80,7 +80,7 @@ class RecoveryTest {
 
     private LogReader reader(List<Long> read) {
         return (partition, from, to, sink) -> {
-            log.subMap(from, true, to, true).forEach((offset, row) -> {
+            log.subMap(from, true, Math.max(from, to + 1), false).forEach((offset, row) -> {
                 read.add(offset);
                 sink.entry(offset, RegionPartitions.key(row.region), row.value);
             });
@@ -136,7 +136,6 @@ class RecoveryTest {
         assertThat(live.progress()).isEqualTo(new Progress(first, first, 1));
         live.region(row.region).snapshot(2, first);
         assertThat(live.progress()).isEqualTo(new Progress(first, first + 1, 1));
-        assertThat(live.progress().hasTail()).isFalse();
     }
 
     @Test
