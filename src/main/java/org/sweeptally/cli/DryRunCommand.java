@@ -59,6 +59,9 @@ final class DryRunCommand implements Callable<Integer> {
         if (site.isEmpty()) {
             return Main.USAGE;
         }
+        if (site.get().fromMicros().isPresent()) {
+            terminal.err().println("from has no effect here: the settings are the first, and hold from the beginning");
+        }
         try (InputStream in = open(); RecordFiles files = new RecordFiles(out, recording())) {
             DryRun run = new DryRun(site.get(), files);
             run.readAll(in, size(), terminal);

@@ -82,7 +82,9 @@ public final class ClientSettings {
     /** Before anything begins, and with the property's name; the rest is told by the client that meets it. */
     private void refuseWhatKafkaRefuses() {
         try {
-            new StreamsConfig(streams("check", "."));
+            StreamsConfig streams = new StreamsConfig(streams("check", "."));
+            new ConsumerConfig(decoded(streams.getMainConsumerConfigs("check", "check", 0)));
+            new ProducerConfig(encoded(streams.getProducerConfigs("check")));
             new ConsumerConfig(consumer("check"));
             new ProducerConfig(producer("check"));
             new AdminClientConfig(admin("check"));
@@ -146,6 +148,10 @@ public final class ClientSettings {
         settings.put(ConsumerConfig.AUTO_OFFSET_RESET_CONFIG, "none");
         settings.put(ConsumerConfig.ENABLE_AUTO_COMMIT_CONFIG, "false");
         settings.put(ConsumerConfig.ALLOW_AUTO_CREATE_TOPICS_CONFIG, "false");
+        return decoded(settings);
+    }
+
+    private static Map<String, Object> decoded(Map<String, Object> settings) {
         settings.put(ConsumerConfig.KEY_DESERIALIZER_CLASS_CONFIG, ByteArrayDeserializer.class.getName());
         settings.put(ConsumerConfig.VALUE_DESERIALIZER_CLASS_CONFIG, ByteArrayDeserializer.class.getName());
         return settings;
@@ -162,6 +168,10 @@ public final class ClientSettings {
         settings.put(ProducerConfig.ACKS_CONFIG, "all");
         settings.put(ProducerConfig.ENABLE_IDEMPOTENCE_CONFIG, "true");
         settings.put(ProducerConfig.MAX_IN_FLIGHT_REQUESTS_PER_CONNECTION, "1");
+        return encoded(settings);
+    }
+
+    private static Map<String, Object> encoded(Map<String, Object> settings) {
         settings.put(ProducerConfig.KEY_SERIALIZER_CLASS_CONFIG, ByteArraySerializer.class.getName());
         settings.put(ProducerConfig.VALUE_SERIALIZER_CLASS_CONFIG, ByteArraySerializer.class.getName());
         return settings;

@@ -34,6 +34,7 @@ public final class Operator implements AutoCloseable {
     private final AtomicReference<String> failure = new AtomicReference<>();
     private KafkaStreams streams;
     private KafkaReadingWatch readingWatch;
+    private RetentionWatch retentionWatch;
     private SettingsWatch settingsWatch;
     private boolean closed;
 
@@ -62,6 +63,7 @@ public final class Operator implements AutoCloseable {
                 .agree(Revision.of(site));
         Revisions revisions = new Revisions(known);
         readingWatch = new KafkaReadingWatch(clients, names, found.detectionPartitions());
+        retentionWatch = new RetentionWatch(clients, names.regionLog(), says);
         settingsWatch = new SettingsWatch(clients, names.settings(), revisions, says);
         OperatorTopology topology = new OperatorTopology(
                 names,
@@ -70,6 +72,7 @@ public final class Operator implements AutoCloseable {
                         SnapshotSchedule.of(site, clients.transactionTimeoutMillis()),
                         new KafkaLogReader(clients, names.regionLog()),
                         new KafkaFreshStart(clients, names),
+                        retentionWatch,
                         Duration.ofMillis(clients.transactionTimeoutMillis() / 2)),
                 OperatorStores.onDisk(),
                 says);
@@ -91,6 +94,7 @@ public final class Operator implements AutoCloseable {
             streams.setUncaughtExceptionHandler(this::uncaught);
             streams.setStateListener((now, before) -> state(now));
             readingWatch.start();
+            retentionWatch.start();
             settingsWatch.start();
             streams.start();
         } catch (KafkaException | IllegalArgumentException e) {
@@ -155,6 +159,9 @@ public final class Operator implements AutoCloseable {
         }
         if (settingsWatch != null) {
             settingsWatch.close();
+        }
+        if (retentionWatch != null) {
+            retentionWatch.close();
         }
         if (readingWatch != null) {
             readingWatch.close();

@@ -13,6 +13,7 @@ import org.sweeptally.site.Site;
  * @param schedule       when states are written out
  * @param reader         of the region log's tail
  * @param freshStart     says whether regions without state may begin from nothing
+ * @param tailStarts     hears from where the partition would have to be applied again
  * @param longestTail    what recovery may take: after as much again the bus ends the thread's transaction
  */
 record RegionPlan(
@@ -22,6 +23,7 @@ record RegionPlan(
         SnapshotSchedule schedule,
         LogReader reader,
         FreshStart freshStart,
+        TailStarts tailStarts,
         Duration longestTail) {
 
     /** The regions of a partition at the beginning of their log. */

@@ -120,6 +120,7 @@ final class RegionProcessor implements Processor<byte[], byte[], byte[], byte[]>
      * leave from here: the bus's library would commit what it should abort.
      */
     private void tick(long wallMillis) {
+        plan.tailStarts().startsAt(live.partition(), live.progress().tailStart());
         try {
             byte[] tick = Wire.encode(OperatorEntries.tick(wallMillis * 1000));
             for (String region : live.names()) {
@@ -133,6 +134,9 @@ final class RegionProcessor implements Processor<byte[], byte[], byte[], byte[]>
 
     @Override
     public void close() {
+        if (live != null) {
+            plan.tailStarts().ends(live.partition());
+        }
         live = null;
     }
 }

@@ -11,6 +11,7 @@ import java.util.Arrays;
 import java.util.List;
 import java.util.TreeMap;
 import java.util.function.UnaryOperator;
+import org.apache.kafka.clients.admin.Admin;
 import org.junit.jupiter.api.Tag;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
@@ -135,6 +136,46 @@ class OperatorFaultsTest {
             assertThat(again.await()).isPresent();
         }
         assertThat(reader.published().all()).isEqualTo(expected.all());
+    }
+
+    /** Runs the recording through, and stops. */
+    private void runOnce() throws InterruptedException {
+        TestBus.createTopics(site, 1, 2);
+        List<Part> parts = TestSite.recording(site);
+        TestBus.publish(site, parts);
+        BusReader reader = new BusReader(names);
+        long expected = DryRunOf.of(site, parts).counts();
+        try (Operator operator = operator()) {
+            operator.start();
+            Waiting.until("counts", PATIENCE, () -> reader.counts() >= expected);
+        }
+    }
+
+    @Test
+    void regionsWhoseStateWasDeletedDoNotBeginAnewInTheMiddleOfTheirLog() throws Exception {
+        runOnce();
+        long counts = new BusReader(names).counts();
+        try (Admin admin = Admin.create(TestBus.clients().admin("test"))) {
+            admin.deleteTopics(List.of(names.changelog("progress"), names.changelog("snapshots"))).all().get();
+        }
+        try (Operator again = new Operator(
+                new OperatorSettings(site, names, TestBus.clients(), folder.resolve("new")), said -> { })) {
+            again.start();
+            assertThat(again.await()).hasValueSatisfying(sentence -> assertThat(sentence)
+                    .contains("of the region log: group " + names.applicationId() + " has taken it in from offset 0")
+                    .contains("the state made from it is not there (" + names.changelog("progress")));
+        }
+        assertThat(new BusReader(names).counts()).isEqualTo(counts);
+    }
+
+    @Test
+    void aGroupWhoseOffsetsWereForgottenDoesNotReadAllPartsAgain() throws Exception {
+        runOnce();
+        try (Admin admin = Admin.create(TestBus.clients().admin("test"))) {
+            admin.deleteConsumerGroups(List.of(names.applicationId())).all().get();
+        }
+        assertRefuses("group " + names.applicationId() + " has no offsets on partitions [0, 1] of "
+                + names.regionLog(), "all parts would be read again");
     }
 
     @Test

@@ -21,9 +21,17 @@ final class OperatorProcess implements AutoCloseable {
     }
 
     static OperatorProcess start(Site site, Path folder, String name) throws IOException {
+        return start(site, folder, name, classPath());
+    }
+
+    /** The class path of the tests. */
+    static String classPath() {
+        return System.getProperty("surefire.test.class.path", System.getProperty("java.class.path"));
+    }
+
+    static OperatorProcess start(Site site, Path folder, String name, String classPath) throws IOException {
         Path siteFile = Files.writeString(folder.resolve(name + ".yaml"), EffectiveSettings.text(site));
         Path output = folder.resolve(name + ".txt");
-        String classPath = System.getProperty("surefire.test.class.path", System.getProperty("java.class.path"));
         List<String> command = new ArrayList<>(List.of(
                 Path.of(System.getProperty("java.home"), "bin", "java").toString(),
                 "-Xmx512m", "-XX:TieredStopAtLevel=1", "-XX:+UseSerialGC", "-cp", classPath,

@@ -8,6 +8,7 @@ import java.time.Duration;
 import java.time.Instant;
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Map;
 import java.util.Optional;
 import java.util.OptionalLong;
 import java.util.Properties;
@@ -46,6 +47,7 @@ class OperatorTopologyTest {
     private final TreeMap<Bytes, byte[]> progress = new TreeMap<>();
     private final List<KeyValue<byte[], byte[]>> log = new ArrayList<>();
     private String refusal;
+    private final TreeMap<Integer, Long> tails = new TreeMap<>();
     private Duration longestTail = Duration.ofMinutes(1);
     private final List<String> said = new ArrayList<>();
     private final Revisions revisions = new Revisions(List.of(Revision.of(site)));
@@ -74,6 +76,18 @@ class OperatorTopologyTest {
         }
     }
 
+    private final TailStarts tailStarts = new TailStarts() {
+        @Override
+        public void startsAt(int partition, long offset) {
+            tails.put(partition, offset);
+        }
+
+        @Override
+        public void ends(int partition) {
+            tails.remove(partition);
+        }
+    };
+
     private Topology topology() {
         RegionPartitions regions = new RegionPartitions(site.regions().stream().map(region -> region.name()).toList());
         LogReader reader = (partition, from, to, sink) -> {
@@ -86,7 +100,7 @@ class OperatorTopologyTest {
                         names,
                         new RouterPlan(regions, revisions, new AllRead(), true),
                         new RegionPlan(regions, 1, LocalSite::readSettings, SnapshotSchedule.of(site, 10_000), reader,
-                                partition -> Optional.ofNullable(refusal), longestTail),
+                                partition -> Optional.ofNullable(refusal), tailStarts, longestTail),
                         new OperatorStores(MapStore.over(RegionProcessor.SNAPSHOTS, snapshots),
                                 MapStore.over(RegionProcessor.PROGRESS, progress)),
                         said::add)
@@ -217,6 +231,16 @@ class OperatorTopologyTest {
                     Wire.decode(r.value, Reject.class).getReasons().get(0).getReason())
                     .isEqualTo(RejectReason.UNKNOWN_SENSOR));
         }
+    }
+
+    @Test
+    void whereTheTailStartsIsToldWithEveryTickWhileThePartitionIsHere() {
+        try (TopologyTestDriver driver = driver()) {
+            settings(driver);
+            driver.advanceWallClockTime(Duration.ofSeconds(1));
+            assertThat(tails).as("no snapshot yet").containsExactlyEntriesOf(new TreeMap<>(Map.of(0, 0L)));
+        }
+        assertThat(tails).isEmpty();
     }
 
     @Test
