@@ -27,6 +27,20 @@ class EstuaryDryRunTest {
     }
 
     @Test
+    void aTimeOfTheOnlySettingsIsSaidToHaveNoEffect() throws IOException {
+        Path folderOfSite = Files.createDirectory(folder.resolve("site"));
+        Path site = folderOfSite.resolve("site.yaml");
+        String text = Files.readString(EstuaryRecording.FILE.resolveSibling("site.yaml"));
+        Files.writeString(site, text + "\nfrom: 2031-05-01T04:00:30Z\n");
+        Files.copy(EstuaryRecording.FILE.resolveSibling("regions.geojson"), folderOfSite.resolve("regions.geojson"));
+        CliRun run = CliRun.of("dry-run", "--site", site.toString(), "--parts", EstuaryRecording.FILE.toString(),
+                "--out", folder.resolve("out").toString());
+        assertThat(run.exitCode()).isZero();
+        assertThat(run.err()).isEqualTo(
+                "from has no effect here: the settings are the first, and hold from the beginning\n");
+    }
+
+    @Test
     void sixVesselsAreBornAndTheOneThatLeavesEnds() throws IOException {
         DryRunOf run = DryRunOf.estuary(folder, Files.readAllBytes(EstuaryRecording.FILE));
         assertThat(run.births()).hasSize(6).noneMatch(birth -> birth.get("again").asBoolean());
