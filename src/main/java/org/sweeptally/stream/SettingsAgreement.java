@@ -91,7 +91,7 @@ final class SettingsAgreement {
         latest.ifPresentOrElse(before -> checkFrom(ours), () -> sayFrom(ours));
         write(ours, producer);
         says.accept("settings revision " + ours.number() + " written to " + names.settings() + " and to the log of "
-                + regions.regions().size() + " regions");
+                + (regions.regions().size() == 1 ? "the region" : regions.regions().size() + " regions"));
         known.add(ours);
         return known;
     }

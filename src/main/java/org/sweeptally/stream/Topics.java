@@ -144,6 +144,11 @@ public final class Topics implements AutoCloseable {
             if (e.getCause() instanceof TopicExistsException exists) {
                 throw exists;
             }
+            if (e.getCause() instanceof org.apache.kafka.common.errors.TimeoutException) {
+                throw new OperatorStoppedException(
+                        "the bus at " + bus + " does not answer: " + doing + ": " + e.getCause().getMessage(),
+                        e.getCause());
+            }
             throw new OperatorStoppedException(
                     "the bus at " + bus + " refuses: " + doing + ": " + e.getCause().getMessage(), e.getCause());
         } catch (TimeoutException e) {

@@ -56,8 +56,8 @@ class SensorOrderTest {
         assertThat(reject.getRegion()).isEqualTo(TestSites.REGION);
         assertThat(reject.getReasons().get(0).getIndexes()).containsExactly(0);
         assertThat(reject.getSentence())
-                .isEqualTo("part 0 of scan 2031-05-01T04:00:01.000000Z of sensor north-shore came before with other content,"
-                        + " and the first stands");
+                .isEqualTo("part 0 of scan 2031-05-01T04:00:01.000000Z of sensor north-shore came before with other"
+                        + " content, and the first stands");
     }
 
     @Test

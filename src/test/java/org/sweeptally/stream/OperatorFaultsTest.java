@@ -102,7 +102,7 @@ class OperatorFaultsTest {
         try (Operator operator = new Operator(new OperatorSettings(site, names, nowhere, folder), said -> { })) {
             assertThatThrownBy(operator::start)
                     .isInstanceOf(OperatorStoppedException.class)
-                    .hasMessageContaining("127.0.0.1:1");
+                    .hasMessageContaining("the bus at 127.0.0.1:1 does not answer");
         }
     }
 
