@@ -19,14 +19,30 @@ public final class Component {
     public record Use(int part, int index, String id, double probability) {}
 
     ObjectHistory history;
-    Gaussian density;
+    Bank bank;
+    Detectability detectability;
     double logOdds;
     boolean confirmed;
+
+    /** Probability that it moves, and whether it counts as moving; of no account where nothing stands still. */
+    double moving = 1;
+
+    boolean movingShown = true;
     List<Use> used;
 
-    Component(ObjectHistory history, Gaussian density, double logOdds, boolean confirmed, List<Use> used) {
+    /** Who it may really be; null where that is certain. */
+    Lineage lineage;
+
+    Component(
+            ObjectHistory history,
+            Bank bank,
+            Detectability detectability,
+            double logOdds,
+            boolean confirmed,
+            List<Use> used) {
         this.history = history;
-        this.density = density;
+        this.bank = bank;
+        this.detectability = detectability;
         this.logOdds = logOdds;
         this.confirmed = confirmed;
         this.used = used;
@@ -38,7 +54,32 @@ public final class Component {
 
     /** Over [east, north, east velocity, north velocity] in the region's plane; not to be changed. */
     public Gaussian density() {
-        return density;
+        return bank.overall();
+    }
+
+    /** Probability that it moves, if it exists. */
+    public double movingProbability() {
+        return moving;
+    }
+
+    /** Whether it counts as moving: with hysteresis, so that it does not change to and fro. */
+    public boolean isMoving() {
+        return movingShown;
+    }
+
+    /**
+     * Probability that it is the object that began under its identity: below 1 where it came so close to another that
+     * detections could not tell the two apart.
+     */
+    public double identityProbability() {
+        return lineage == null ? 1 : lineage.probabilityOf(identity());
+    }
+
+    /** Other identities that it may have, most probable first. */
+    public List<Lineage.Share> otherIdentities() {
+        return lineage == null
+                ? List.of()
+                : lineage.shares().stream().filter(share -> !share.identity().equals(identity())).toList();
     }
 
     /** Natural log-odds of existence. */

@@ -7,7 +7,7 @@ import org.sweeptally.model.Gaussian;
 import org.sweeptally.model.Measurement;
 
 /**
- * Finds the measurements that may lie in a density's gate without looking at all of them: a raster of buckets over the
+ * Finds the measurements that may lie in a bank's gates without looking at all of them: a raster of buckets over the
  * scan, about one measurement in each. Building costs O(m), a query what it finds.
  */
 final class DetectionIndex {
@@ -33,6 +33,13 @@ final class DetectionIndex {
     private final double greatestLag;
 
     private int[] found = new int[64];
+
+    /** Of the query at hand. */
+    private double boxWest;
+
+    private double boxEast;
+    private double boxSouth;
+    private double boxNorth;
 
     DetectionIndex(List<Observation> observations) {
         boolean[] isWide = wide(observations);
@@ -119,11 +126,11 @@ final class DetectionIndex {
     }
 
     /**
-     * Finds all measurements within a box around the gate of a density; some may lie outside the gate itself.
+     * Finds all measurements within a box around the gates of a bank's modes; some may lie outside the gates themselves.
      *
      * @return how many; {@link #found} names them, in order of the scan
      */
-    int query(Gaussian density, double gateSigmas) {
+    int query(Bank bank, double gateSigmas) {
         if (wide.length > found.length) {
             found = Arrays.copyOf(found, 2 * wide.length);
         }
@@ -132,18 +139,11 @@ final class DetectionIndex {
         if (sorted.length == 0) {
             return count;
         }
-        DMatrix4x4 p = density.covariance;
-        double lag = Math.max(Math.abs(leastLag), Math.abs(greatestLag));
-        double reachEast = gateSigmas * (Math.sqrt(p.a11) + lag * Math.sqrt(p.a33) + largestSigma);
-        double reachNorth = gateSigmas * (Math.sqrt(p.a22) + lag * Math.sqrt(p.a44) + largestSigma);
-        double east1 = density.mean.a1 - leastLag * density.mean.a3;
-        double east2 = density.mean.a1 - greatestLag * density.mean.a3;
-        double north1 = density.mean.a2 - leastLag * density.mean.a4;
-        double north2 = density.mean.a2 - greatestLag * density.mean.a4;
-        int firstColumn = column(Math.min(east1, east2) - reachEast);
-        int lastColumn = column(Math.max(east1, east2) + reachEast);
-        int firstRow = row(Math.min(north1, north2) - reachNorth);
-        int lastRow = row(Math.max(north1, north2) + reachNorth);
+        box(bank, gateSigmas);
+        int firstColumn = column(boxWest);
+        int lastColumn = column(boxEast);
+        int firstRow = row(boxSouth);
+        int lastRow = row(boxNorth);
         for (int row = firstRow; row <= lastRow; row++) {
             int from = bucketStart[row * columns + firstColumn];
             int to = bucketStart[row * columns + lastColumn + 1];
@@ -155,6 +155,30 @@ final class DetectionIndex {
         }
         Arrays.sort(found, 0, count);
         return count;
+    }
+
+    private void box(Bank bank, double gateSigmas) {
+        boxWest = Double.POSITIVE_INFINITY;
+        boxEast = Double.NEGATIVE_INFINITY;
+        boxSouth = Double.POSITIVE_INFINITY;
+        boxNorth = Double.NEGATIVE_INFINITY;
+        double lag = Math.max(Math.abs(leastLag), Math.abs(greatestLag));
+        for (int m = 0; m < bank.modes(); m++) {
+            if (bank.weights[m] > 0) {
+                Gaussian density = bank.densities[m];
+                DMatrix4x4 p = density.covariance;
+                double reachEast = gateSigmas * (Math.sqrt(p.a11) + lag * Math.sqrt(p.a33) + largestSigma);
+                double reachNorth = gateSigmas * (Math.sqrt(p.a22) + lag * Math.sqrt(p.a44) + largestSigma);
+                double east1 = density.mean.a1 - leastLag * density.mean.a3;
+                double east2 = density.mean.a1 - greatestLag * density.mean.a3;
+                double north1 = density.mean.a2 - leastLag * density.mean.a4;
+                double north2 = density.mean.a2 - greatestLag * density.mean.a4;
+                boxWest = Math.min(boxWest, Math.min(east1, east2) - reachEast);
+                boxEast = Math.max(boxEast, Math.max(east1, east2) + reachEast);
+                boxSouth = Math.min(boxSouth, Math.min(north1, north2) - reachNorth);
+                boxNorth = Math.max(boxNorth, Math.max(north1, north2) + reachNorth);
+            }
+        }
     }
 
     /** A measurement's place in the scan, of those that the last query found. */

@@ -1,11 +1,12 @@
 package org.sweeptally.filter;
 
+import java.util.List;
+import org.sweeptally.model.MotionProfile;
+
 /**
  * What the recursion needs to know of a site.
  *
- * @param accelerationNoise              spectral density of the acceleration, square metres a second cubed
- * @param speedSigma                     standard deviation of the velocity of unseen objects along each axis, metres a second
- * @param lifetimeSeconds                mean lifetime of an object
+ * @param profiles                       kinds of objects, by how they move and how long they stay
  * @param birthsPerSquareMetrePerSecond  objects that come into being
  * @param outsidePerSquareMetre          density of objects beyond open borders
  * @param initialPerSquareMetre          density of unseen objects at the beginning
@@ -22,9 +23,7 @@ package org.sweeptally.filter;
  * @param gatedPairs                     bound on pairs of a scan's observations with components, and with terms
  */
 public record FilterSettings(
-        double accelerationNoise,
-        double speedSigma,
-        double lifetimeSeconds,
+        List<MotionProfile> profiles,
         double birthsPerSquareMetrePerSecond,
         double outsidePerSquareMetre,
         double initialPerSquareMetre,
@@ -39,6 +38,10 @@ public record FilterSettings(
         int propagationSweeps,
         double leastTermWeight,
         int gatedPairs) {
+
+    public FilterSettings {
+        profiles = List.copyOf(profiles);
+    }
 
     /** Existence below which a component is better kept as part of the unseen; common practice, no source. */
     public static final double RECYCLING_BELOW = 0.1;

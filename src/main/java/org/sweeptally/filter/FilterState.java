@@ -20,42 +20,135 @@ final class FilterState {
         out.writeInt(components.size());
         for (Component component : components) {
             writeHistory(out, component.history);
-            writeDensity(out, component.density);
+            writeBank(out, component.bank);
+            writeDetectability(out, component.detectability);
             out.writeDouble(component.logOdds);
             out.writeBoolean(component.confirmed);
+            out.writeDouble(component.moving);
+            out.writeBoolean(component.movingShown);
+            writeLineage(out, component.lineage);
             writeUses(out, component.used);
         }
         out.writeInt(unseen.terms().size());
         for (UnseenTerm term : unseen.terms()) {
             writeHistory(out, term.tag);
-            writeDensity(out, term.density);
+            writeBank(out, term.bank);
+            writeDetectability(out, term.detectability);
             out.writeDouble(term.weight);
         }
-        unseen.grid().write(out);
+        for (UnseenGrid grid : unseen.grids()) {
+            grid.write(out);
+        }
         counters.write(out);
     }
 
-    static void read(DataInput in, List<Component> components, Unseen unseen, Counters counters) throws IOException {
+    static void read(DataInput in, int modes, List<Component> components, Unseen unseen, Counters counters)
+            throws IOException {
         int size = in.readInt();
         for (int i = 0; i < size; i++) {
-            components.add(new Component(
-                    readHistory(in), readDensity(in), in.readDouble(), in.readBoolean(), readUses(in)));
+            components.add(readComponent(in, modes));
         }
         int terms = in.readInt();
         for (int i = 0; i < terms; i++) {
             ObjectHistory tag = readHistory(in);
-            Gaussian density = readDensity(in);
-            unseen.terms().add(new UnseenTerm(in.readDouble(), density, tag));
+            Bank bank = readBank(in, modes);
+            Detectability detectability = readDetectability(in);
+            unseen.terms().add(new UnseenTerm(in.readDouble(), bank, detectability, tag));
         }
-        unseen.grid().read(in);
+        for (UnseenGrid grid : unseen.grids()) {
+            grid.read(in);
+        }
         counters.read(in);
     }
 
+    private static Component readComponent(DataInput in, int modes) throws IOException {
+        ObjectHistory history = readHistory(in);
+        Bank bank = readBank(in, modes);
+        Detectability detectability = readDetectability(in);
+        double logOdds = in.readDouble();
+        boolean confirmed = in.readBoolean();
+        double moving = in.readDouble();
+        boolean movingShown = in.readBoolean();
+        Lineage lineage = readLineage(in);
+        Component component = new Component(history, bank, detectability, logOdds, confirmed, readUses(in));
+        component.moving = moving;
+        component.movingShown = movingShown;
+        component.lineage = lineage;
+        return component;
+    }
+
+    private static void writeBank(DataOutput out, Bank bank) throws IOException {
+        for (int m = 0; m < bank.modes(); m++) {
+            out.writeDouble(bank.weights[m]);
+            if (bank.weights[m] > 0) {
+                writeDensity(out, bank.densities[m]);
+            }
+        }
+    }
+
+    private static Bank readBank(DataInput in, int modes) throws IOException {
+        double[] weights = new double[modes];
+        Gaussian[] densities = new Gaussian[modes];
+        for (int m = 0; m < modes; m++) {
+            weights[m] = in.readDouble();
+            densities[m] = weights[m] > 0 ? readDensity(in) : null;
+        }
+        return new Bank(weights, densities);
+    }
+
+    private static void writeDetectability(DataOutput out, Detectability detectability) throws IOException {
+        out.writeInt(detectability.size());
+        for (int i = 0; i < detectability.size(); i++) {
+            writeText(out, detectability.sensor(i));
+            out.writeDouble(detectability.probability(i));
+            out.writeLong(detectability.timeMicros(i));
+        }
+    }
+
+    private static Detectability readDetectability(DataInput in) throws IOException {
+        Detectability detectability = Detectability.UNKNOWN;
+        int size = in.readInt();
+        for (int i = 0; i < size; i++) {
+            detectability = detectability.with(readText(in), in.readDouble(), in.readLong());
+        }
+        return detectability;
+    }
+
+    private static void writeLineage(DataOutput out, Lineage lineage) throws IOException {
+        out.writeInt(lineage == null ? -1 : lineage.shares().size());
+        if (lineage != null) {
+            for (Lineage.Share share : lineage.shares()) {
+                writeIdentity(out, share.identity());
+                out.writeDouble(share.probability());
+            }
+        }
+    }
+
+    private static Lineage readLineage(DataInput in) throws IOException {
+        int size = in.readInt();
+        if (size < 0) {
+            return null;
+        }
+        List<Lineage.Share> shares = new ArrayList<>();
+        for (int i = 0; i < size; i++) {
+            shares.add(new Lineage.Share(readIdentity(in), in.readDouble()));
+        }
+        return new Lineage(shares);
+    }
+
+    private static void writeIdentity(DataOutput out, Identity identity) throws IOException {
+        writeText(out, identity.sensor());
+        out.writeLong(identity.scanTimeMicros());
+        out.writeInt(identity.part());
+        out.writeInt(identity.index());
+    }
+
+    private static Identity readIdentity(DataInput in) throws IOException {
+        return new Identity(readText(in), in.readLong(), in.readInt(), in.readInt());
+    }
+
     private static void writeHistory(DataOutput out, ObjectHistory history) throws IOException {
-        writeText(out, history.identity().sensor());
-        out.writeLong(history.identity().scanTimeMicros());
-        out.writeInt(history.identity().part());
-        out.writeInt(history.identity().index());
+        writeIdentity(out, history.identity());
         out.writeLong(history.firstSeenMicros());
         out.writeLong(history.lastDetectedMicros());
         out.writeBoolean(history.bornBefore());
@@ -64,7 +157,7 @@ final class FilterState {
     }
 
     private static ObjectHistory readHistory(DataInput in) throws IOException {
-        Identity identity = new Identity(readText(in), in.readLong(), in.readInt(), in.readInt());
+        Identity identity = readIdentity(in);
         return new ObjectHistory(
                 identity, in.readLong(), in.readLong(), in.readBoolean(), readText(in), in.readDouble());
     }

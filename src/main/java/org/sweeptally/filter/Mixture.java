@@ -11,6 +11,9 @@ import org.sweeptally.model.Gaussian;
  */
 final class Mixture {
 
+    private static final double[] NO_STEP = new double[4];
+
+    private final double[] scratch = new double[4];
     private final double[] reference = new double[4];
     private double weight;
     private final double[] first = new double[4];
@@ -56,6 +59,20 @@ final class Mixture {
         second[7] += w * (p.a33 + s3 * s3);
         second[8] += w * (p.a34 + s3 * s4);
         second[9] += w * (p.a44 + s4 * s4);
+    }
+
+    /** Adds a density. */
+    void add(double termWeight, Gaussian density) {
+        add(termWeight, density.mean, NO_STEP, density.covariance);
+    }
+
+    /** Adds a term whose mean is a prior mean plus a step. */
+    void add(double termWeight, DMatrix4 prior, double[] step, DMatrix4x4 covariance) {
+        scratch[0] = step[0] + (prior.a1 - reference[0]);
+        scratch[1] = step[1] + (prior.a2 - reference[1]);
+        scratch[2] = step[2] + (prior.a3 - reference[2]);
+        scratch[3] = step[3] + (prior.a4 - reference[3]);
+        add(termWeight, scratch, 0, covariance);
     }
 
     /** The Gaussian with the mean and the covariance of the terms; their weight must be more than 0. */

@@ -19,6 +19,7 @@ final class NewComponents {
     private final long logTimeMicros;
     private final Unseen unseen;
     private final UnseenEvidence evidence;
+    private final double[] clutter;
     private final double recyclingBelow;
     private final Counters counters;
     private final SortedSet<Identity> alive = new TreeSet<>();
@@ -28,6 +29,7 @@ final class NewComponents {
             long logTimeMicros,
             Unseen unseen,
             UnseenEvidence evidence,
+            double[] clutter,
             List<Component> components,
             FilterSettings settings,
             Counters counters) {
@@ -35,6 +37,7 @@ final class NewComponents {
         this.logTimeMicros = logTimeMicros;
         this.unseen = unseen;
         this.evidence = evidence;
+        this.clutter = clutter;
         this.recyclingBelow = settings.recyclingBelow();
         this.counters = counters;
         for (Component component : components) {
@@ -47,7 +50,7 @@ final class NewComponents {
         List<Component> begun = new ArrayList<>();
         for (int j = 0; j < scan.observations().size(); j++) {
             double existence = existence(hypotheses, j);
-            if (existence >= recyclingBelow) {
+            if (existence > 0 && existence >= recyclingBelow) {
                 begun.add(component(hypotheses, j, heirs));
             } else if (existence > 0) {
                 unseen.seen(scan, logTimeMicros, evidence, j, existence, fresh(scan.observations().get(j)), alive);
@@ -78,23 +81,29 @@ final class NewComponents {
 
     private double existence(ScanHypotheses hypotheses, int j) {
         double e = evidence.total(j);
-        return e > 0 ? hypotheses.nobodys(j) * (e / (scan.look().clutterPerSquareMetre() + e)) : 0;
+        return e > 0 ? hypotheses.nobodys(j) * (e / (clutter[j] + e)) : 0;
     }
 
     private Component component(ScanHypotheses hypotheses, int j, SortedMap<Identity, Integer> heirs) {
         Observation observation = scan.observations().get(j);
         double e = evidence.total(j);
-        double clutter = scan.look().clutterPerSquareMetre();
-        double logOdds = LogOdds.ofRatio(hypotheses.nobodys(j) * e, clutter + e * hypotheses.somebodys(j));
+        double logOdds = LogOdds.ofRatio(hypotheses.nobodys(j) * e, clutter[j] + e * hypotheses.somebodys(j));
         Component.Use use = new Component.Use(observation.part(), observation.index(), observation.id(), 1);
+        Heir heir = unseen.heir(evidence, j);
+        boolean inherits = heir != null && Integer.valueOf(j).equals(heirs.get(heir.tag().identity()));
         return new Component(
-                history(j, observation, heirs), unseen.firstSeen(scan, evidence, j), logOdds, false, List.of(use));
+                history(observation, inherits ? heir : null),
+                unseen.firstSeen(scan, evidence, j),
+                Unseen.detected(
+                        inherits ? heir.detectability() : Detectability.UNKNOWN, scan, logTimeMicros),
+                logOdds,
+                false,
+                List.of(use));
     }
 
-    private ObjectHistory history(int j, Observation observation, SortedMap<Identity, Integer> heirs) {
-        Heir heir = unseen.heir(evidence, j);
+    private ObjectHistory history(Observation observation, Heir heir) {
         ObjectHistory history;
-        if (heir != null && Integer.valueOf(j).equals(heirs.get(heir.tag().identity()))) {
+        if (heir != null) {
             history = heir.tag().detected(logTimeMicros);
             counters.add(Counters.Name.IDENTITIES_RETURNED, 1);
         } else {

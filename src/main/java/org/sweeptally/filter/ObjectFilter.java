@@ -4,15 +4,16 @@ import java.io.DataInput;
 import java.io.DataOutput;
 import java.io.IOException;
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.Collections;
 import java.util.Comparator;
 import java.util.List;
+import java.util.Optional;
 import org.sweeptally.filter.association.Association;
 import org.sweeptally.filter.association.AssociationProblem;
 import org.sweeptally.filter.count.NumberDistribution;
 import org.sweeptally.filter.count.PoissonBinomial;
 import org.sweeptally.geo.PlaneArea;
-import org.sweeptally.model.NearlyConstantVelocity;
 
 /**
  * The recursion of one region: a Poisson multi-Bernoulli filter. Objects that some detection speaks for are Bernoulli
@@ -26,6 +27,11 @@ import org.sweeptally.model.NearlyConstantVelocity;
  */
 public final class ObjectFilter {
 
+    /** Probability of moving below which a moving object counts as still, and from which a still one counts as moving. */
+    private static final double STOPPED = 0.3;
+
+    private static final double STARTED = 0.7;
+
     private final PlaneArea core;
     private double apronMetres;
     private final Counters counters = new Counters();
@@ -34,7 +40,7 @@ public final class ObjectFilter {
     private final Unseen unseen;
 
     private FilterSettings settings;
-    private NearlyConstantVelocity motion;
+    private Modes modes;
     private List<Component> components = new ArrayList<>();
 
     /**
@@ -45,16 +51,22 @@ public final class ObjectFilter {
         this.settings = settings;
         this.core = core;
         this.apronMetres = apronMetres;
-        this.motion = new NearlyConstantVelocity(settings.accelerationNoise());
-        this.unseen = new Unseen(settings, core, apronMetres, counters);
+        this.modes = new Modes(settings.profiles());
+        this.unseen = new Unseen(settings, modes, core, apronMetres, counters);
     }
 
     /** Goes on with other settings, and perhaps with another apron. */
     public void settings(FilterSettings changed, double changedApronMetres) {
-        unseen.settings(changed, changedApronMetres);
+        Modes changedModes = new Modes(changed.profiles());
+        unseen.settings(changed, changedModes, changedApronMetres);
+        if (!changedModes.isLaidOutAs(modes)) {
+            for (Component component : components) {
+                component.bank = changedModes.begin(component.density());
+            }
+        }
         settings = changed;
         apronMetres = changedApronMetres;
-        motion = new NearlyConstantVelocity(changed.accelerationNoise());
+        modes = changedModes;
     }
 
     /** The live components: those that were there in their old order, then new ones in the order of the scan. */
@@ -68,12 +80,12 @@ public final class ObjectFilter {
 
     /** Lets time pass, 0 seconds or more: survival, motion, births, inflow. */
     public void predict(double seconds) {
-        double survival = StrictMath.exp(-seconds / settings.lifetimeSeconds());
+        double[] survival = modes.survival(seconds);
         for (Component component : components) {
-            component.logOdds = LogOdds.survive(component.logOdds, survival);
-            motion.predict(component.density, seconds);
+            component.logOdds = LogOdds.survive(component.logOdds, modes.survive(component.bank, survival));
+            modes.move(component.bank, seconds);
         }
-        unseen.predict(motion, survival, seconds);
+        unseen.predict(survival, seconds);
     }
 
     /**
@@ -85,16 +97,16 @@ public final class ObjectFilter {
         counters.add(Counters.Name.SCANS, 1);
         counters.add(Counters.Name.OBSERVATIONS, scan.observations().size());
         DetectionIndex index = new DetectionIndex(scan.observations());
-        UnseenEvidence evidence = unseen.evidence(scan, index);
+        double[] clutter = clutterOf(scan);
+        UnseenEvidence evidence = unseen.evidence(scan, logTimeMicros, index);
         ScanHypotheses hypotheses = new ScanHypotheses(
-                components, scan, index, evidence, settings, counters, association, problem);
+                components, scan, logTimeMicros, index, clutter, evidence, settings, modes.count(), counters, association,
+                problem);
 
         List<Component> begun = new NewComponents(
-                        scan, logTimeMicros, unseen, evidence, components, settings, counters)
+                        scan, logTimeMicros, unseen, evidence, clutter, components, settings, counters)
                 .begin(hypotheses);
-        for (int i = 0; i < components.size(); i++) {
-            hypotheses.update(components.get(i), i, logTimeMicros);
-        }
+        new Posteriors(hypotheses, modes, logTimeMicros).update();
         unseen.missed(scan.look());
 
         counters.add(Counters.Name.COMPONENTS_BEGUN, begun.size());
@@ -102,6 +114,13 @@ public final class ObjectFilter {
         ScanResult result = sortOut();
         unseen.tidy();
         return result;
+    }
+
+    /** Density of false detections at each observation, per square metre. */
+    private static double[] clutterOf(Scan scan) {
+        double[] clutter = new double[scan.observations().size()];
+        Arrays.fill(clutter, scan.look().clutterPerSquareMetre());
+        return clutter;
     }
 
     /** Confirms, recycles and lets go. */
@@ -114,6 +133,10 @@ public final class ObjectFilter {
         List<Component> gone = new ArrayList<>();
         for (Component component : components) {
             component.confirmed = component.logOdds >= (component.confirmed ? ending : confirming);
+            if (modes.tellStill()) {
+                component.moving = modes.moving(component.bank);
+                component.movingShown = component.moving >= (component.movingShown ? STOPPED : STARTED);
+            }
             if (isGone(component)) {
                 gone.add(component);
             } else if (component.logOdds < recycling) {
@@ -128,7 +151,7 @@ public final class ObjectFilter {
             kept = surest(kept, recycled);
         }
         for (Component component : recycled) {
-            unseen.recycle(component.existence(), component.density, component.history);
+            unseen.recycle(component);
         }
         components = kept;
         return new ScanResult(recycled, gone);
@@ -136,7 +159,7 @@ public final class ObjectFilter {
 
     /** Beyond what the region hears it can only guess; whoever comes back from there comes as inflow. */
     private boolean isGone(Component component) {
-        return !core.isAtLeast(-apronMetres, component.density.east(), component.density.north());
+        return !core.isAtLeast(-apronMetres, component.density().east(), component.density().north());
     }
 
     /** As many as the bound allows, in their order; the others are recycled. */
@@ -161,9 +184,27 @@ public final class ObjectFilter {
         double[] probabilities = new double[components.size()];
         for (int i = 0; i < probabilities.length; i++) {
             Component component = components.get(i);
-            probabilities[i] = component.existence() * InsideShare.of(component.density, core);
+            probabilities[i] = component.existence() * InsideShare.of(component.density(), core);
         }
         return PoissonBinomial.of(probabilities);
+    }
+
+    /** The same of moving objects alone; empty where the site does not tell them from still ones. */
+    public Optional<NumberDistribution> countMoving() {
+        if (!modes.tellStill()) {
+            return Optional.empty();
+        }
+        double[] probabilities = new double[components.size()];
+        for (int i = 0; i < probabilities.length; i++) {
+            Component component = components.get(i);
+            probabilities[i] = component.existence() * component.moving * InsideShare.of(component.density(), core);
+        }
+        return Optional.of(PoissonBinomial.of(probabilities));
+    }
+
+    /** Whether the site tells still objects from moving ones. */
+    public boolean tellsStill() {
+        return modes.tellStill();
     }
 
     /** Expected number of objects in the core that no component stands for. */
@@ -184,7 +225,7 @@ public final class ObjectFilter {
     public static ObjectFilter read(DataInput in, FilterSettings settings, PlaneArea core, double apronMetres)
             throws IOException {
         ObjectFilter filter = new ObjectFilter(settings, core, apronMetres);
-        FilterState.read(in, filter.components, filter.unseen, filter.counters);
+        FilterState.read(in, filter.modes.count(), filter.components, filter.unseen, filter.counters);
         return filter;
     }
 }

@@ -1,73 +1,82 @@
 package org.sweeptally.filter;
 
-import java.util.ArrayList;
 import java.util.Arrays;
 import java.util.List;
 import org.sweeptally.filter.association.Association;
 import org.sweeptally.filter.association.AssociationBounds;
 import org.sweeptally.filter.association.AssociationCounts;
-import org.sweeptally.filter.association.AssociationProblem;
 import org.sweeptally.filter.association.AssociationMarginals;
-import org.sweeptally.model.Gaussian;
+import org.sweeptally.filter.association.AssociationProblem;
 import org.sweeptally.model.Look;
 import org.sweeptally.model.Measurement;
-import org.sweeptally.model.MeasurementUpdate;
+import org.sweeptally.model.MissRuns;
 
 /**
- * Which component may have caused which observation of a scan, how probable each pair is in the light of all others, and
- * what that makes of a component.
+ * Which component may have caused which observation of a scan, and how probable each pair is in the light of all others.
  *
  * <p>With existence r, probability of detection pd and likelihood l: a pair weighs r pd l(z), a missed component
  * 1 - r pd, an observation of nobody's clutter + e (Williams 2015). The marginal probabilities of one-to-one associations
- * with these weights come from {@link Association}.
+ * with these weights come from {@link Association}; what they make of the components is up to {@link Posteriors}.
  */
 final class ScanHypotheses {
 
-    /** Detections used with less than this probability are not named in what is published. */
-    private static final double LEAST_USE = 0.01;
-
+    private final List<Component> components;
     private final Scan scan;
+    private final long logTimeMicros;
     private final FilterSettings settings;
     private final Counters counters;
     private final AssociationProblem problem;
     private final AssociationMarginals marginals;
+    private final BankGate gate = new BankGate();
+    private final int modes;
 
     /** Existence of each component before the scan, and its complement. */
     private final double[] existence;
 
     private final double[] absence;
 
-    /** Probability of detection of each component, averaged over its density. */
+    /** Probability that the scan detects each component, if it exists: averaged over its density and its detectability. */
     private final double[] detection;
+
+    /** Probability that a look detects each component if it is detectable; 0 where misses have no runs here. */
+    private final double[] whenDetectable;
+
+    /** Probabilities of the modes given a pair, modes of one pair side by side. */
+    private double[] modeShares = new double[64];
 
     /** Probability of each observation that some component caused it, summed so that small ones stay exact. */
     private final double[] somebodys;
 
-    private final MeasurementUpdate update = new MeasurementUpdate();
-    private final Mixture mixture = new Mixture();
-    private final double[] step = new double[4];
-
-    /** @param association solves the problem, in storage that both keep for the next scan */
+    /**
+     * @param clutter     density of false detections at each observation, per square metre
+     * @param association solves the problem, in storage that both keep for the next scan
+     */
     ScanHypotheses(
             List<Component> components,
             Scan scan,
+            long logTimeMicros,
             DetectionIndex index,
+            double[] clutter,
             UnseenEvidence evidence,
             FilterSettings settings,
+            int modes,
             Counters counters,
             Association association,
             AssociationProblem problem) {
+        this.components = components;
         this.scan = scan;
+        this.logTimeMicros = logTimeMicros;
         this.settings = settings;
+        this.modes = modes;
         this.counters = counters;
         this.problem = problem;
         existence = new double[components.size()];
         absence = new double[components.size()];
         detection = new double[components.size()];
+        whenDetectable = new double[components.size()];
         problem.clear();
-        double clutter = scan.look().clutterPerSquareMetre();
         for (int j = 0; j < scan.observations().size(); j++) {
-            problem.addColumn(clutter + evidence.total(j));
+            problem.addColumn(clutter[j] + evidence.total(j));
         }
         for (int i = 0; i < detection.length; i++) {
             gate(components.get(i), i, index);
@@ -88,32 +97,47 @@ final class ScanHypotheses {
      */
     private void gate(Component component, int i, DetectionIndex index) {
         Look look = scan.look();
-        Gaussian density = component.density;
-        double constant = look.constantOver(density);
+        double constant = look.constantOver(component.density());
         existence[i] = component.existence();
         absence[i] = LogOdds.complement(component.logOdds);
-        detection[i] = Double.isNaN(constant) ? look.averageOver(density) : constant;
+        double atPlace = Double.isNaN(constant) ? look.averageOver(component.density()) : constant;
+        double times = timesAsDetectable(component, i, atPlace);
+        detection[i] = atPlace * times;
         problem.addRow(absence[i] + existence[i] * (1 - detection[i]));
         if (detection[i] == 0) {
             return;
         }
-        update.prior(density);
-        double gate = settings.gateSigmas() * settings.gateSigmas();
-        int candidates = index.query(density, settings.gateSigmas());
-        for (int c = 0; c < candidates; c++) {
-            int j = index.found(c);
-            Measurement z = scan.observations().get(j).measurement();
-            if (!update.measure(z)) {
-                counters.add(Counters.Name.INNOVATIONS_NOT_POSITIVE, 1);
-            } else if (update.distanceSquared() <= gate) {
-                if (problem.pairs() == settings.gatedPairs()) {
-                    counters.add(Counters.Name.PAIRS_OVER_BOUND, 1);
-                    continue;
-                }
-                double there = Double.isNaN(constant) ? look.probabilityOfDetection(z.east(), z.north()) : constant;
-                problem.addPair(j, existence[i] * there * update.likelihood());
+        gate.open(component.bank, scan, index, settings.gateSigmas(), counters);
+        for (int c = 0; c < gate.count(); c++) {
+            if (problem.pairs() == settings.gatedPairs()) {
+                counters.add(Counters.Name.PAIRS_OVER_BOUND, 1);
+                continue;
             }
+            int j = gate.observation(c);
+            double there = constant;
+            if (Double.isNaN(constant)) {
+                Measurement z = scan.observations().get(j).measurement();
+                there = look.probabilityOfDetection(z.east(), z.north());
+            }
+            there = times == 1 ? there : Math.min(1, there * times);
+            int at = problem.pairs() * modes;
+            if (at + modes > modeShares.length) {
+                modeShares = Arrays.copyOf(modeShares, 2 * (at + modes));
+            }
+            gate.modeShares(c, modeShares, at);
+            problem.addPair(j, existence[i] * there * gate.likelihood(c));
         }
+    }
+
+    /** How many times as probable as usual detection is, by what is known of the component's detectability. */
+    private double timesAsDetectable(Component component, int i, double probabilityOfDetection) {
+        MissRuns runs = scan.look().sensor().misses();
+        if (runs.hiddenSeconds() == 0 || probabilityOfDetection == 0) {
+            return 1;
+        }
+        whenDetectable[i] = Detectability.whenDetectable(runs, probabilityOfDetection);
+        double share = Detectability.share(runs, probabilityOfDetection);
+        return component.detectability.at(scan.sensor(), logTimeMicros, share, runs) / share;
     }
 
     private void count(AssociationCounts counts) {
@@ -126,6 +150,14 @@ final class ScanHypotheses {
         counters.add(Counters.Name.CLUSTERS_UNDERFLOWED, counts.underflows());
     }
 
+    Scan scan() {
+        return scan;
+    }
+
+    List<Component> components() {
+        return components;
+    }
+
     /** Marginal probability that no component caused an observation. */
     double nobodys(int j) {
         return marginals.nobody(j);
@@ -136,55 +168,57 @@ final class ScanHypotheses {
         return somebodys[j];
     }
 
-    /**
-     * Existence and density of component i after the scan. Existence is what the associations leave of it: detected by
-     * some observation, or missed and there all the same. The density is the Gaussian with the moments of the mixture.
-     */
-    void update(Component component, int i, long logTimeMicros) {
-        double absent = absence[i];
-        double hidden = existence[i] * (1 - detection[i]);
-        double missed = marginals.missed(i);
-        double missedThere = absent + hidden > 0 ? missed * (hidden / (absent + hidden)) : 0;
-        double missedAbsent = absent + hidden > 0 ? missed * (absent / (absent + hidden)) : missed;
-
-        Gaussian prior = component.density;
-        mixture.reset(prior.mean.a1, prior.mean.a2, prior.mean.a3, prior.mean.a4);
-        Arrays.fill(step, 0);
-        mixture.add(missedThere, step, 0, prior.covariance);
-        update.prior(prior);
-        double detected = 0;
-        for (int pair = problem.rowStart(i); pair < problem.rowStart(i + 1); pair++) {
-            double probability = marginals.pair(pair);
-            detected += probability;
-            update.measure(scan.observations().get(problem.column(pair)).measurement());
-            update.step(step, 0);
-            mixture.add(probability, step, 0, update.updatedCovariance());
-        }
-        double there = mixture.weight();
-        component.logOdds = LogOdds.ofRatio(there, missedAbsent);
-        component.used = List.of();
-        if (there > 0) {
-            component.density = mixture.matched();
-            use(component, i, there);
-            if (detected > 0.5 * there) {
-                component.history = component.history.detected(logTimeMicros);
-            }
-        }
+    /** First pair of component i; the pairs of i end where those of i + 1 start. */
+    int firstPair(int i) {
+        return problem.rowStart(i);
     }
 
-    private void use(Component component, int i, double there) {
-        List<Component.Use> used = new ArrayList<>();
-        for (int pair = problem.rowStart(i); pair < problem.rowStart(i + 1); pair++) {
-            double probability = marginals.pair(pair) / there;
-            if (probability >= LEAST_USE) {
-                Observation observation = scan.observations().get(problem.column(pair));
-                used.add(new Component.Use(
-                        observation.part(), observation.index(), observation.id(), Math.min(1, probability)));
-                if (observation.declared() != null) {
-                    component.history = component.history.declaredAs(observation.declared(), Math.min(1, probability));
-                }
-            }
-        }
-        component.used = List.copyOf(used);
+    int endPair(int i) {
+        return problem.rowStart(i + 1);
+    }
+
+    /** The observation of a pair. */
+    int observationOf(int pair) {
+        return problem.column(pair);
+    }
+
+    Measurement measurementOf(int pair) {
+        return scan.observations().get(problem.column(pair)).measurement();
+    }
+
+    /** Marginal probability of a pair. */
+    double probability(int pair) {
+        return marginals.pair(pair);
+    }
+
+    /** Probability of a mode given a pair. */
+    double modeShare(int pair, int mode) {
+        return modeShares[pair * modes + mode];
+    }
+
+    /** Marginal probability that component i exists and was missed. */
+    double missedThere(int i) {
+        double hidden = existence[i] * (1 - detection[i]);
+        return absence[i] + hidden > 0 ? marginals.missed(i) * (hidden / (absence[i] + hidden)) : 0;
+    }
+
+    /** Marginal probability that component i does not exist. */
+    double missedAbsent(int i) {
+        double hidden = existence[i] * (1 - detection[i]);
+        return absence[i] + hidden > 0
+                ? marginals.missed(i) * (absence[i] / (absence[i] + hidden))
+                : marginals.missed(i);
+    }
+
+    /** Whether the scan tells anything of component i's detectability. */
+    boolean tellsDetectability(int i) {
+        return whenDetectable[i] > 0;
+    }
+
+    /** Probability that component i is detectable, given that it exists and was missed. */
+    double detectableThoughMissed(int i) {
+        double before = detection[i] / whenDetectable[i];
+        double missed = 1 - detection[i];
+        return missed > 0 ? before * (1 - whenDetectable[i]) / missed : 0;
     }
 }

@@ -10,13 +10,14 @@ import org.ejml.data.DMatrix4x4;
 import org.sweeptally.geo.PlaneArea;
 import org.sweeptally.model.Gaussian;
 import org.sweeptally.model.Look;
-import org.sweeptally.model.NearlyConstantVelocity;
 import org.sweeptally.model.Measurement;
 import org.sweeptally.model.MeasurementUpdate;
+import org.sweeptally.model.MissRuns;
+import org.sweeptally.model.MotionProfile;
 
 /**
  * The Poisson part: the intensity of objects that no component stands for. Never detected ones are in the grid; what is
- * left of components whose existence fell low are Gaussian terms, each tagged with who it was ("recycling", Williams
+ * left of components whose existence fell low are terms, each tagged with who it was ("recycling", Williams
  * 2012, "Hybrid Poisson and multi-Bernoulli filters"). Mass only moves between the two, or out of the area heard.
  */
 final class Unseen {
@@ -25,121 +26,202 @@ final class Unseen {
     private double apronMetres;
     private final Counters counters;
     private final MeasurementUpdate update = new MeasurementUpdate();
-    private final Mixture mixture = new Mixture();
-    private final double[] step = new double[4];
+    private final BankGate gate = new BankGate();
 
     private FilterSettings settings;
-    private UnseenGrid grid;
+    private Modes modes;
+    private BankSum sum;
+
+    /** By profile. */
+    private List<UnseenGrid> grids;
+
     private List<UnseenTerm> terms = new ArrayList<>();
 
     /** Terms that this scan brings; it has been counted for them already, so they are not thinned by it. */
     private final List<UnseenTerm> entering = new ArrayList<>();
 
-    Unseen(FilterSettings settings, PlaneArea core, double apronMetres, Counters counters) {
+    Unseen(FilterSettings settings, Modes modes, PlaneArea core, double apronMetres, Counters counters) {
         this.settings = settings;
+        this.modes = modes;
+        this.sum = new BankSum(modes);
         this.core = core;
         this.apronMetres = apronMetres;
         this.counters = counters;
-        grid = new UnseenGrid(settings, core, apronMetres);
-        grid.fill(settings.initialPerSquareMetre());
+        grids = grids(settings.initialPerSquareMetre());
     }
 
-    UnseenGrid grid() {
-        return grid;
+    private List<UnseenGrid> grids(double perSquareMetre) {
+        List<UnseenGrid> filled = new ArrayList<>();
+        for (MotionProfile profile : modes.profiles()) {
+            UnseenGrid grid = new UnseenGrid(settings, core, apronMetres);
+            grid.fill(profile.share() * perSquareMetre);
+            filled.add(grid);
+        }
+        return filled;
+    }
+
+    List<UnseenGrid> grids() {
+        return grids;
     }
 
     List<UnseenTerm> terms() {
         return terms;
     }
 
-    void settings(FilterSettings changed, double changedApronMetres) {
-        if (changed.unseenCellMetres() != settings.unseenCellMetres() || changedApronMetres != apronMetres) {
-            UnseenGrid other = new UnseenGrid(changed, core, changedApronMetres);
-            other.fill(changed.outsidePerSquareMetre());
-            other.takeFrom(grid);
-            grid = other;
-        }
+    /** Goes on with other settings; the mass of all kinds stays, and is shared out anew where the kinds are others. */
+    void settings(FilterSettings changed, Modes changedModes, double changedApronMetres) {
+        boolean otherRaster = changed.unseenCellMetres() != settings.unseenCellMetres()
+                || changedApronMetres != apronMetres;
+        boolean otherKinds = !changedModes.isLaidOutAs(modes);
+        List<UnseenGrid> before = grids;
         settings = changed;
         apronMetres = changedApronMetres;
+        modes = changedModes;
+        sum = new BankSum(modes);
+        if (otherKinds) {
+            UnseenGrid all = before.get(0);
+            before.subList(1, before.size()).forEach(all::add);
+            grids = grids(changed.outsidePerSquareMetre());
+            for (int p = 0; p < grids.size(); p++) {
+                grids.get(p).takeFrom(all, modes.profiles().get(p).share());
+            }
+            terms.replaceAll(term -> new UnseenTerm(
+                    term.weight, modes.begin(term.density()), term.detectability, term.tag));
+        } else if (otherRaster) {
+            grids = grids(changed.outsidePerSquareMetre());
+            for (int p = 0; p < grids.size(); p++) {
+                grids.get(p).takeFrom(before.get(p), 1);
+            }
+        }
     }
 
-    void predict(NearlyConstantVelocity motion, double survival, double seconds) {
-        grid.predict(settings, seconds);
+    void predict(double[] survival, double seconds) {
+        for (int p = 0; p < grids.size(); p++) {
+            grids.get(p).predict(settings, modes.profiles().get(p), seconds);
+        }
         for (UnseenTerm term : terms) {
-            term.weight *= survival;
-            motion.predict(term.density, seconds);
-            term.sigmaMetres = term.density.largestPositionSigma();
+            term.weight *= modes.survive(term.bank, survival);
+            modes.move(term.bank, seconds);
+            term.sigmaMetres = term.density().largestPositionSigma();
         }
     }
 
     /** What the unseen part says of each observation. */
-    UnseenEvidence evidence(Scan scan, DetectionIndex index) {
+    UnseenEvidence evidence(Scan scan, long logTimeMicros, DetectionIndex index) {
         List<Observation> observations = scan.observations();
-        UnseenEvidence evidence = new UnseenEvidence(observations.size());
+        UnseenEvidence evidence = new UnseenEvidence(observations.size(), grids.size());
         for (int j = 0; j < observations.size(); j++) {
             Measurement z = observations.get(j).measurement();
             double detection = scan.look().probabilityOfDetection(z.east(), z.north());
-            evidence.addGrid(j, detection > 0 ? detection * grid.density(z.east(), z.north()) : 0);
+            for (int p = 0; p < grids.size(); p++) {
+                double density = detection > 0 ? detection * grids.get(p).density(z.east(), z.north()) : 0;
+                evidence.addGrid(j, p, density);
+            }
         }
-        double gate = settings.gateSigmas() * settings.gateSigmas();
         for (int t = 0; t < terms.size(); t++) {
-            UnseenTerm term = terms.get(t);
-            double everywhere =
-                    scan.look().constantNear(term.density.east(), term.density.north(), term.sigmaMetres);
-            term.detection = Double.isNaN(everywhere) ? scan.look().averageOver(term.density) : everywhere;
-            int candidates = term.detection > 0 ? index.query(term.density, settings.gateSigmas()) : 0;
-            if (candidates == 0) {
-                continue;
-            }
-            update.prior(term.density);
-            for (int c = 0; c < candidates; c++) {
-                int j = index.found(c);
-                Measurement z = observations.get(j).measurement();
-                if (!update.measure(z)) {
-                    counters.add(Counters.Name.INNOVATIONS_NOT_POSITIVE, 1);
-                } else if (update.distanceSquared() <= gate) {
-                    if (evidence.pairs() == settings.gatedPairs()) {
-                        counters.add(Counters.Name.PAIRS_OVER_BOUND, 1);
-                        continue;
-                    }
-                    double detection = Double.isNaN(everywhere)
-                            ? scan.look().probabilityOfDetection(z.east(), z.north())
-                            : everywhere;
-                    evidence.addTerm(j, t, term.weight * detection * update.likelihood());
-                }
-            }
+            evidence(evidence, scan, logTimeMicros, index, t);
         }
         counters.add(Counters.Name.GATED_TERM_PAIRS, evidence.pairs());
         evidence.sort();
         return evidence;
     }
 
-    /** The density of an object first seen by an observation: the unseen part, updated by it. */
-    Gaussian firstSeen(Scan scan, UnseenEvidence evidence, int j) {
+    private void evidence(UnseenEvidence evidence, Scan scan, long logTimeMicros, DetectionIndex index, int t) {
+        UnseenTerm term = terms.get(t);
+        Gaussian density = term.density();
+        double everywhere = scan.look().constantNear(density.east(), density.north(), term.sigmaMetres);
+        double atPlace = Double.isNaN(everywhere) ? scan.look().averageOver(density) : everywhere;
+        double times = timesAsDetectable(term, scan, logTimeMicros, atPlace);
+        term.detection = atPlace * times;
+        if (term.detection == 0) {
+            return;
+        }
+        gate.open(term.bank, scan, index, settings.gateSigmas(), counters);
+        for (int c = 0; c < gate.count(); c++) {
+            if (evidence.pairs() == settings.gatedPairs()) {
+                counters.add(Counters.Name.PAIRS_OVER_BOUND, 1);
+                continue;
+            }
+            double detection = everywhere;
+            if (Double.isNaN(everywhere)) {
+                Measurement z = scan.observations().get(gate.observation(c)).measurement();
+                detection = scan.look().probabilityOfDetection(z.east(), z.north());
+            }
+            detection = times == 1 ? detection : Math.min(1, detection * times);
+            evidence.addTerm(gate.observation(c), t, term.weight * detection * gate.likelihood(c));
+        }
+    }
+
+    /** How many times as probable as usual detection is, by what is known of the term's detectability. */
+    private static double timesAsDetectable(UnseenTerm term, Scan scan, long logTimeMicros, double atPlace) {
+        MissRuns runs = scan.look().sensor().misses();
+        term.thoughMissed = null;
+        if (runs.hiddenSeconds() == 0 || atPlace == 0) {
+            return 1;
+        }
+        double share = Detectability.share(runs, atPlace);
+        double detectable = term.detectability.at(scan.sensor(), logTimeMicros, share, runs);
+        double when = Detectability.whenDetectable(runs, atPlace);
+        double missed = 1 - detectable * when;
+        double thoughMissed = missed > 0 ? detectable * (1 - when) / missed : 0;
+        term.thoughMissed = term.detectability.with(scan.sensor(), thoughMissed, logTimeMicros);
+        return detectable / share;
+    }
+
+    /** The bank of an object first seen by an observation: the unseen part, updated by it. */
+    Bank firstSeen(Scan scan, UnseenEvidence evidence, int j) {
         Measurement z = scan.observations().get(j).measurement();
-        mixture.reset(z.east(), z.north(), 0, 0);
-        if (evidence.fromGrid(j) > 0) {
-            step[0] = step[1] = step[2] = step[3] = 0;
-            mixture.add(evidence.fromGrid(j), step, 0, fromGrid(z).covariance);
+        sum.reset(z);
+        for (int p = 0; p < grids.size(); p++) {
+            addFromGrid(evidence.fromGrid(j, p), p, z);
         }
         for (int pair = evidence.firstPair(j); pair < evidence.endPair(j); pair++) {
-            Gaussian prior = terms.get(evidence.term(pair)).density;
-            update.prior(prior);
-            update.measure(z);
-            update.step(step, 0);
-            step[0] += prior.mean.a1 - z.east();
-            step[1] += prior.mean.a2 - z.north();
-            step[2] += prior.mean.a3;
-            step[3] += prior.mean.a4;
-            mixture.add(evidence.value(pair), step, 0, update.updatedCovariance());
+            addTerm(evidence.value(pair), terms.get(evidence.term(pair)), z);
         }
-        return mixture.matched();
+        return sum.matched();
+    }
+
+    private void addFromGrid(double weight, int profile, Measurement z) {
+        for (int m = modes.firstOf(profile); weight > 0 && m < modes.endOf(profile); m++) {
+            double speedSigma = modes.moves(m) ? modes.profiles().get(profile).speedSigma() : 0;
+            sum.add(weight * modes.shareInProfile(m), fromGrid(z, speedSigma), m);
+        }
+    }
+
+    /** Adds a term updated by an observation. */
+    private void addTerm(double weight, UnseenTerm term, Measurement z) {
+        double[] likelihoods = new double[modes.count()];
+        double all = 0;
+        for (int m = 0; m < likelihoods.length; m++) {
+            if (term.bank.weights[m] > 0) {
+                update.prior(term.bank.densities[m]);
+                likelihoods[m] = update.measure(z) ? term.bank.weights[m] * update.likelihood() : 0;
+                all += likelihoods[m];
+            }
+        }
+        double total = all;
+        sum.add(term.bank, new BankSum.Pairs() {
+            @Override
+            public int count() {
+                return 1;
+            }
+
+            @Override
+            public double weight(int i, int mode) {
+                return total > 0 ? weight * (likelihoods[mode] / total) : 0;
+            }
+
+            @Override
+            public Measurement measurement(int i) {
+                return z;
+            }
+        });
     }
 
     /** An object from the grid, seen some time ago at z: since then it moved on with its unknown velocity. */
-    private Gaussian fromGrid(Measurement z) {
+    private static Gaussian fromGrid(Measurement z, double speedSigma) {
         Gaussian density = Gaussian.atRest(
-                z.east(), z.north(), z.varEast(), z.covEastNorth(), z.varNorth(), settings.speedSigma());
+                z.east(), z.north(), z.varEast(), z.covEastNorth(), z.varNorth(), speedSigma);
         DMatrix4x4 p = density.covariance;
         double cross = z.lagSeconds() * p.a33;
         p.a11 += z.lagSeconds() * cross;
@@ -156,7 +238,8 @@ final class Unseen {
             ObjectHistory tag = terms.get(evidence.term(pair)).tag;
             double sum = sums.merge(tag.identity(), evidence.value(pair), Double::sum);
             if (sum > half) {
-                return new Heir(tag, share(evidence, j, tag.identity()));
+                Detectability detectability = terms.get(evidence.term(pair)).detectability;
+                return new Heir(tag, detectability, share(evidence, j, tag.identity()));
             }
         }
         return null;
@@ -173,23 +256,33 @@ final class Unseen {
     }
 
     /** A history that may go on in a new component, and the share of the component that comes from it. */
-    record Heir(ObjectHistory tag, double share) {}
+    record Heir(ObjectHistory tag, Detectability detectability, double share) {}
 
     /** Thins the unseen part by the look whose {@link #evidence} was taken, which could have detected what is in it. */
     void missed(Look look) {
-        grid.missed(look);
+        for (UnseenGrid grid : grids) {
+            grid.missed(look);
+        }
         for (UnseenTerm term : terms) {
             term.weight *= 1 - term.detection;
+            term.detectability = term.thoughMissed == null ? term.detectability : term.thoughMissed;
         }
         terms.addAll(entering);
         entering.clear();
     }
 
     /** Takes in what is left of a component. */
-    void recycle(double existence, Gaussian density, ObjectHistory history) {
+    void recycle(Component component) {
+        double existence = component.existence();
         if (existence > 0) {
-            terms.add(new UnseenTerm(existence, density, history));
+            terms.add(new UnseenTerm(existence, component.bank, component.detectability, component.history));
         }
+    }
+
+    /** What is known of the detectability of an object that a look has just detected. */
+    static Detectability detected(Detectability before, Scan scan, long logTimeMicros) {
+        boolean runs = scan.look().sensor().misses().hiddenSeconds() > 0;
+        return runs ? before.with(scan.sensor(), 1, logTimeMicros) : before;
     }
 
     /**
@@ -211,41 +304,65 @@ final class Unseen {
             SortedSet<Identity> alive) {
         Measurement z = scan.observations().get(j).measurement();
         double perEvidence = existence / evidence.total(j);
-        double fromGrid = perEvidence * evidence.fromGrid(j);
-        if (isHeavy(fromGrid, z)) {
-            entering.add(new UnseenTerm(fromGrid, fromGrid(z), fresh));
+        double fromGrid = 0;
+        for (int p = 0; p < grids.size(); p++) {
+            fromGrid += perEvidence * evidence.fromGrid(j, p);
+        }
+        if (fromGrid >= settings.leastTermWeight()) {
+            sum.reset(z);
+            for (int p = 0; p < grids.size(); p++) {
+                addFromGrid(evidence.fromGrid(j, p), p, z);
+            }
+            Detectability detectability = detected(Detectability.UNKNOWN, scan, logTimeMicros);
+            entering.add(new UnseenTerm(fromGrid, sum.matched(), detectability, fresh));
+        } else {
+            counters.add(Counters.Name.TERMS_TOO_LIGHT, 1);
+            for (int p = 0; p < grids.size(); p++) {
+                grids.get(p).deposit(z.east(), z.north(), perEvidence * evidence.fromGrid(j, p));
+            }
         }
         for (int pair = evidence.firstPair(j); pair < evidence.endPair(j); pair++) {
             double weight = perEvidence * evidence.value(pair);
+            UnseenTerm prior = terms.get(evidence.term(pair));
             if (entering.size() >= settings.unseenTerms()) {
                 counters.add(Counters.Name.TERMS_OVER_BOUND, 1);
-                grid.deposit(z.east(), z.north(), weight);
-            } else if (isHeavy(weight, z)) {
-                UnseenTerm prior = terms.get(evidence.term(pair));
+                deposit(z.east(), z.north(), weight, prior.bank);
+            } else if (weight >= settings.leastTermWeight()) {
                 boolean taken = alive.contains(prior.tag.identity());
-                update.prior(prior.density);
-                update.measure(z);
-                entering.add(new UnseenTerm(
-                        weight, update.updated(), taken ? fresh : prior.tag.detected(logTimeMicros)));
+                sum.reset(z);
+                addTerm(weight, prior, z);
+                if (sum.weight() > 0) {
+                    entering.add(new UnseenTerm(
+                            weight,
+                            sum.matched(),
+                            detected(prior.detectability, scan, logTimeMicros),
+                            taken ? fresh : prior.tag.detected(logTimeMicros)));
+                }
+            } else {
+                counters.add(Counters.Name.TERMS_TOO_LIGHT, 1);
+                deposit(z.east(), z.north(), weight, prior.bank);
             }
         }
     }
 
-    /** Whether it is worth a term; else it goes to the grid at once. */
-    private boolean isHeavy(double weight, Measurement z) {
-        if (weight >= settings.leastTermWeight()) {
-            return true;
+    /** Gives mass to the grids, to each as much as the bank is of its kind; false outside them. */
+    private boolean deposit(double east, double north, double weight, Bank bank) {
+        boolean heard = true;
+        for (int p = 0; p < grids.size(); p++) {
+            double share = 0;
+            for (int m = modes.firstOf(p); m < modes.endOf(p); m++) {
+                share += bank.weights[m];
+            }
+            heard &= grids.get(p).deposit(east, north, weight * share);
         }
-        counters.add(Counters.Name.TERMS_TOO_LIGHT, 1);
-        grid.deposit(z.east(), z.north(), weight);
-        return false;
+        return heard;
     }
 
     /** Lets go of terms that left, and gives terms back to the grid that are too wide, too faint or too many. */
     void tidy() {
         List<UnseenTerm> kept = new ArrayList<>(terms.size());
         for (UnseenTerm term : terms) {
-            if (!core.isAtLeast(-apronMetres, term.density.east(), term.density.north())) {
+            if (!core.isAtLeast(-apronMetres, term.density().east(), term.density().north())) {
                 counters.add(Counters.Name.TERMS_GONE, 1);
             } else if (term.sigmaMetres > settings.unseenCellMetres()) {
                 give(term, Counters.Name.TERMS_RETURNED_WIDE);
@@ -263,12 +380,16 @@ final class Unseen {
 
     /** Whether even at its peak it is thinner than the grid: then it can no longer decide who a new object is. */
     private boolean isFaint(UnseenTerm term) {
-        double area = 2 * StrictMath.PI * Math.sqrt(term.density.positionDeterminant());
-        return term.weight < area * grid.density(term.density.east(), term.density.north());
+        double area = 2 * StrictMath.PI * Math.sqrt(term.density().positionDeterminant());
+        double grid = 0;
+        for (UnseenGrid kind : grids) {
+            grid += kind.density(term.density().east(), term.density().north());
+        }
+        return term.weight < area * grid;
     }
 
     private void give(UnseenTerm term, Counters.Name why) {
-        boolean heard = grid.deposit(term.density.east(), term.density.north(), term.weight);
+        boolean heard = deposit(term.density().east(), term.density().north(), term.weight, term.bank);
         counters.add(heard ? why : Counters.Name.TERMS_GONE, 1);
     }
 
@@ -289,10 +410,13 @@ final class Unseen {
 
     /** Expected number of objects of the unseen part in the core. */
     double expectedInCore() {
-        double sum = grid.inCore();
-        for (UnseenTerm term : terms) {
-            sum += term.weight * InsideShare.of(term.density, core);
+        double expected = 0;
+        for (UnseenGrid grid : grids) {
+            expected += grid.inCore();
         }
-        return sum;
+        for (UnseenTerm term : terms) {
+            expected += term.weight * InsideShare.of(term.density(), core);
+        }
+        return expected;
     }
 }

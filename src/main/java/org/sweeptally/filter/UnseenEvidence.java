@@ -9,7 +9,9 @@ import java.util.Arrays;
  */
 final class UnseenEvidence {
 
-    private final double[] fromGrid;
+    /** By profile. */
+    private final double[][] fromGrid;
+
     private final double[] total;
 
     private int pairs;
@@ -21,13 +23,13 @@ final class UnseenEvidence {
     private int[] start;
     private int[] order;
 
-    UnseenEvidence(int observations) {
-        fromGrid = new double[observations];
+    UnseenEvidence(int observations, int profiles) {
+        fromGrid = new double[profiles][observations];
         total = new double[observations];
     }
 
-    void addGrid(int observation, double value) {
-        fromGrid[observation] = value;
+    void addGrid(int observation, int profile, double value) {
+        fromGrid[profile][observation] = value;
         total[observation] += value;
     }
 
@@ -64,8 +66,8 @@ final class UnseenEvidence {
         return total[observation];
     }
 
-    double fromGrid(int observation) {
-        return fromGrid[observation];
+    double fromGrid(int observation, int profile) {
+        return fromGrid[profile][observation];
     }
 
     int pairs() {

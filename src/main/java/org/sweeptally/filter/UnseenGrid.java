@@ -6,9 +6,10 @@ import java.io.IOException;
 import java.util.Arrays;
 import org.sweeptally.geo.PlaneArea;
 import org.sweeptally.model.Look;
+import org.sweeptally.model.MotionProfile;
 
 /**
- * Expected number of objects never detected so far, cell by cell, over a region's core and apron. Their velocity has
+ * Expected number of objects of one kind never detected so far, cell by cell, over a region's core and apron. Their velocity has
  * mean 0 and the standard deviation of the settings along each axis.
  *
  * <p>Between scans a cell's mass m obeys
@@ -91,16 +92,16 @@ final class UnseenGrid {
     }
 
     /** Ages the grid by a number of seconds: deaths, births, movement, inflow. */
-    void predict(FilterSettings settings, double seconds) {
+    void predict(FilterSettings settings, MotionProfile profile, double seconds) {
         if (seconds <= 0) {
             return;
         }
-        double exchange = settings.speedSigma() / (Math.sqrt(2 * StrictMath.PI) * side);
-        double rate = 4 * exchange + 1 / settings.lifetimeSeconds();
+        double exchange = profile.speedSigma() / (Math.sqrt(2 * StrictMath.PI) * side);
+        double rate = 4 * exchange + 1 / profile.lifetimeSeconds();
         double[] source = new double[mass.length];
         for (int cell = 0; cell < mass.length; cell++) {
             if (inside[cell]) {
-                source[cell] = side * side
+                source[cell] = profile.share() * side * side
                         * (settings.birthsPerSquareMetrePerSecond()
                                 + exchange * openSides[cell] * settings.outsidePerSquareMetre());
             }
@@ -228,6 +229,13 @@ final class UnseenGrid {
         return true;
     }
 
+    /** Adds another grid of the same raster. */
+    void add(UnseenGrid other) {
+        for (int cell = 0; cell < mass.length; cell++) {
+            mass[cell] += other.mass[cell];
+        }
+    }
+
     /** Expected number of objects in the grid. */
     double total() {
         double sum = 0;
@@ -247,22 +255,22 @@ final class UnseenGrid {
     }
 
     /**
-     * Takes over another grid's density wherever the other has one; elsewhere this grid keeps its own. A cell takes the mean
-     * over points spread evenly in it.
+     * Takes over a share of another grid's density wherever the other has one; elsewhere this grid keeps its own. A cell
+     * takes the mean over points spread evenly in it.
      */
-    void takeFrom(UnseenGrid other) {
+    void takeFrom(UnseenGrid other, double share) {
         for (int row = 0; row < rows; row++) {
             for (int column = 0; column < columns; column++) {
                 int cell = cell(row, column);
                 if (inside[cell]) {
-                    mass[cell] = meanMass(other, row, column);
+                    mass[cell] = meanMass(other, share, row, column);
                 }
             }
         }
     }
 
-    private double meanMass(UnseenGrid other, int row, int column) {
-        double perCell = side * side / (other.side * other.side);
+    private double meanMass(UnseenGrid other, double share, int row, int column) {
+        double perCell = share * side * side / (other.side * other.side);
         double sum = 0;
         for (int i = 0; i < SUBPOINTS; i++) {
             for (int j = 0; j < SUBPOINTS; j++) {

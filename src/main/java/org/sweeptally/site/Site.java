@@ -4,6 +4,8 @@ import java.util.List;
 import java.util.Optional;
 import java.util.OptionalLong;
 import org.sweeptally.filter.FilterSettings;
+import org.sweeptally.model.MotionProfile;
+import org.sweeptally.model.NearlyConstantVelocity;
 
 /**
  * Everything that a site file says, validated, with every default filled in.
@@ -46,9 +48,10 @@ public record Site(
         double squareMetresPerSquareKilometre = 1e6;
         double secondsPerHour = 3600;
         return new FilterSettings(
-                motion.accelerationNoise(),
-                motion.speedSigmaMetresPerSecond(),
-                lifetimeSeconds,
+                List.of(MotionProfile.single(
+                        new NearlyConstantVelocity(motion.accelerationNoise()),
+                        lifetimeSeconds,
+                        motion.speedSigmaMetresPerSecond())),
                 unseen.birthsPerSquareKilometrePerHour() / squareMetresPerSquareKilometre / secondsPerHour,
                 unseen.outsidePerSquareKilometre() / squareMetresPerSquareKilometre,
                 unseen.initialPerSquareKilometre() / squareMetresPerSquareKilometre,

@@ -111,7 +111,7 @@ final class ScanScene {
 
     private static FilterSettings withCell(FilterSettings s, double cellMetres) {
         return new FilterSettings(
-                s.accelerationNoise(), s.speedSigma(), s.lifetimeSeconds(), s.birthsPerSquareMetrePerSecond(),
+                s.profiles(), s.birthsPerSquareMetrePerSecond(),
                 s.outsidePerSquareMetre(), s.initialPerSquareMetre(), s.confirming(), s.ending(), s.recyclingBelow(),
                 s.gateSigmas(), cellMetres, s.components(), s.unseenTerms(), s.exactAssociationSteps(),
                 s.propagationSweeps(), s.leastTermWeight(), s.gatedPairs());

@@ -20,7 +20,7 @@ final class Begun {
 
     /** Nothing is born, nothing dies, nothing is recycled. */
     static FilterSettings undisturbed(double accelerationNoise, double gateSigmas) {
-        return new FilterSettings(
+        return FilterScene.oneKind(
                 accelerationNoise, 5, Double.POSITIVE_INFINITY, 0, 0, 0, 0.7, 0.3, 0, gateSigmas, 20_000, 1000, 1000,
                 1_000_000, 1000, 1e-5, 2_000_000);
     }
@@ -29,9 +29,9 @@ final class Begun {
     static ObjectFilter with(FilterSettings settings, Gaussian density, double logOdds) {
         Identity identity = new Identity("mast", -1_000_000, 0, 0);
         Component component = new Component(
-                new ObjectHistory(identity, 0, 0, false, null, 0), density.copy(), logOdds, false, List.of());
+                new ObjectHistory(identity, 0, 0, false, null, 0), Bank.of(density.copy()), Detectability.UNKNOWN, logOdds, false, List.of());
         Counters counters = new Counters();
-        Unseen unseen = new Unseen(settings, SCENE.core(), SCENE.apronMetres(), counters);
+        Unseen unseen = new Unseen(settings, new Modes(settings.profiles()), SCENE.core(), SCENE.apronMetres(), counters);
         try {
             ByteArrayOutputStream bytes = new ByteArrayOutputStream();
             FilterState.write(new DataOutputStream(bytes), List.of(component), unseen, counters);

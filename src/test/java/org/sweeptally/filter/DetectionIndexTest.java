@@ -24,7 +24,7 @@ class DetectionIndexTest {
             for (int query = 0; query < 20; query++) {
                 Gaussian density = density(random);
                 List<Integer> found = new ArrayList<>();
-                int count = index.query(density, 4);
+                int count = index.query(Bank.of(density), 4);
                 for (int i = 0; i < count; i++) {
                     found.add(index.found(i));
                 }
@@ -44,7 +44,7 @@ class DetectionIndexTest {
         observations.add(observation(1000, 0, 0, 1e6, 0));
         DetectionIndex index = new DetectionIndex(observations);
         Gaussian here = Gaussian.atRest(10_000, 10_000, 225, 0, 225, 5);
-        int count = index.query(here, 5);
+        int count = index.query(Bank.of(here), 5);
         assertThat(count).isLessThan(50);
         assertThat(index.found(count - 1)).as("the wide one").isEqualTo(1000);
     }

@@ -10,6 +10,8 @@ import org.sweeptally.geo.PlaneArea;
 import org.sweeptally.geo.PlanePoint;
 import org.sweeptally.model.DetectionProfile;
 import org.sweeptally.model.Look;
+import org.sweeptally.model.MotionProfile;
+import org.sweeptally.model.NearlyConstantVelocity;
 import org.sweeptally.model.PositionMeasurement;
 import org.sweeptally.model.SensorModel;
 
@@ -74,7 +76,20 @@ public final class FilterScene {
     /** 20 objects on 16 square kilometres, that live 600 s. */
     public static FilterSettings settings() {
         double density = 20 / 16e6;
-        return new FilterSettings(
+        return oneKind(
                 0.05, 6, 600, density / 600, density, density, 0.7, 0.3, 0.1, 5, 100, 1000, 5000, 200_000, 1000, 1e-5, 2_000_000);
+    }
+
+    /** Settings of a site whose objects are all of one kind and move in one way. */
+    public static FilterSettings oneKind(
+            double accelerationNoise, double speedSigma, double lifetimeSeconds, double births, double outside,
+            double initial, double confirming, double ending, double recyclingBelow, double gateSigmas,
+            double cellMetres, int components, int terms, long exactSteps, int sweeps, double leastTermWeight,
+            int gatedPairs) {
+        MotionProfile kind = MotionProfile.single(
+                new NearlyConstantVelocity(accelerationNoise), lifetimeSeconds, speedSigma);
+        return new FilterSettings(
+                List.of(kind), births, outside, initial, confirming, ending, recyclingBelow, gateSigmas, cellMetres,
+                components, terms, exactSteps, sweeps, leastTermWeight, gatedPairs);
     }
 }

@@ -138,7 +138,7 @@ class ObjectFilterTest {
     void boundsBiteAndAreCounted() {
         FilterSettings s = FilterScene.settings();
         FilterSettings tight = new FilterSettings(
-                s.accelerationNoise(), s.speedSigma(), s.lifetimeSeconds(), s.birthsPerSquareMetrePerSecond(),
+                s.profiles(), s.birthsPerSquareMetrePerSecond(),
                 s.outsidePerSquareMetre(), s.initialPerSquareMetre(), s.confirming(), s.ending(), s.recyclingBelow(),
                 s.gateSigmas(), s.unseenCellMetres(), 3, 5, s.exactAssociationSteps(), s.propagationSweeps(), s.leastTermWeight(), s.gatedPairs());
         ObjectFilter filter = scene.filter(tight);
@@ -188,7 +188,7 @@ class ObjectFilterTest {
     void aCrowdAtOneSpotIsBoundedAndCounted() {
         FilterSettings s = FilterScene.settings();
         ObjectFilter filter = scene.filter(new FilterSettings(
-                s.accelerationNoise(), s.speedSigma(), s.lifetimeSeconds(), s.birthsPerSquareMetrePerSecond(),
+                s.profiles(), s.birthsPerSquareMetrePerSecond(),
                 s.outsidePerSquareMetre(), s.initialPerSquareMetre(), s.confirming(), s.ending(), s.recyclingBelow(),
                 s.gateSigmas(), s.unseenCellMetres(), 100, 500, 1000, 50, s.leastTermWeight(), 5000));
         SplittableRandom random = new SplittableRandom(4);

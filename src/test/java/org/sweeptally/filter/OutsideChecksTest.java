@@ -138,9 +138,10 @@ class OutsideChecksTest {
     })
     void aNewObjectOutOfAUniformUnseenPart(double unseen, double clutter, double pd, double expected) {
         FilterSettings settings = settings(1e300, unseen);
-        Unseen part = new Unseen(settings, scene.core(), scene.apronMetres(), new Counters());
+        Unseen part = new Unseen(
+                settings, new Modes(settings.profiles()), scene.core(), scene.apronMetres(), new Counters());
         Scan scan = FilterScene.scan(0, look(pd, clutter), 120, -340);
-        double e = part.evidence(scan, new DetectionIndex(scan.observations())).total(0);
+        double e = part.evidence(scan, 0, new DetectionIndex(scan.observations())).total(0);
         assertThat(e / (clutter + e)).isCloseTo(expected, within(1e-12));
     }
 
@@ -163,7 +164,7 @@ class OutsideChecksTest {
         assertThat(evidence.total(0)).isCloseTo(5.389937310919304e-7, within(1e-16));
         assertThat(evidence.value(0) / evidence.total(0)).isCloseTo(.24674123, within(1e-8));
         Unseen part = unseen(first, second);
-        Gaussian density = part.firstSeen(scanAt(120, 30), evidence, 0);
+        Gaussian density = part.firstSeen(scanAt(120, 30), evidence, 0).overall();
         assertThat(density.east()).isCloseTo(122.02456139, within(1e-7));
         assertThat(density.north()).isCloseTo(29.05756579, within(1e-7));
         assertThat(density.covariance.a11).isCloseTo(100.23945420386794, within(1e-8));
@@ -214,30 +215,32 @@ class OutsideChecksTest {
 
     private UnseenEvidence evidence(double east, double north, UnseenTerm... terms) {
         Scan scan = scanAt(east, north);
-        return unseen(terms).evidence(scan, new DetectionIndex(scan.observations()));
+        return unseen(terms).evidence(scan, 0, new DetectionIndex(scan.observations()));
     }
 
     private Unseen unseen(UnseenTerm... terms) {
-        Unseen part = new Unseen(gated(settings(1e300, 0), 20), scene.core(), scene.apronMetres(), new Counters());
+        FilterSettings settings = gated(settings(1e300, 0), 20);
+        Modes modes = new Modes(settings.profiles());
+        Unseen part = new Unseen(settings, modes, scene.core(), scene.apronMetres(), new Counters());
         part.terms().addAll(List.of(terms));
         return part;
     }
 
     private static UnseenTerm term(double weight, double east, double sigma) {
         Gaussian density = Gaussian.atRest(east, 0, sigma * sigma, 0, sigma * sigma, 5);
-        return new UnseenTerm(weight, density, history((int) sigma));
+        return new UnseenTerm(weight, Bank.of(density), Detectability.UNKNOWN, history((int) sigma));
     }
 
     /** Nothing is recycled before it is as good as gone, so that existence can be followed all the way down. */
     private static FilterSettings settings(double lifetime, double unseen) {
         double recycling = unseen > 0.00001 ? 0.1 : 1e-9;
-        return new FilterSettings(
+        return FilterScene.oneKind(
                 0.01, 5, lifetime, 0, 0, unseen, 0.7, 0.3, recycling, 5, 500, 100, 100, 1_000_000, 1000, 1e-5, 2_000_000);
     }
 
     private static FilterSettings gated(FilterSettings s, double gate) {
         return new FilterSettings(
-                s.accelerationNoise(), s.speedSigma(), s.lifetimeSeconds(), s.birthsPerSquareMetrePerSecond(),
+                s.profiles(), s.birthsPerSquareMetrePerSecond(),
                 s.outsidePerSquareMetre(), s.initialPerSquareMetre(), s.confirming(), s.ending(), s.recyclingBelow(), gate,
                 s.unseenCellMetres(), s.components(), s.unseenTerms(), s.exactAssociationSteps(), s.propagationSweeps(), s.leastTermWeight(), s.gatedPairs());
     }
@@ -246,7 +249,8 @@ class OutsideChecksTest {
         Gaussian density = new Gaussian(
                 new DMatrix4(east, 0, 0, 0),
                 new DMatrix4x4(variance, 0, 0, 0, 0, variance, 0, 0, 0, 0, 1, 0, 0, 0, 0, 1));
-        return new Component(history(number), density, LogOdds.of(existence), false, List.of());
+        return new Component(
+                history(number), Bank.of(density), Detectability.UNKNOWN, LogOdds.of(existence), false, List.of());
     }
 
     private static ObjectHistory history(int number) {
@@ -257,7 +261,7 @@ class OutsideChecksTest {
     private ObjectFilter with(FilterSettings settings, Component... components) throws IOException {
         ByteArrayOutputStream bytes = new ByteArrayOutputStream();
         Counters counters = new Counters();
-        Unseen unseen = new Unseen(settings, scene.core(), scene.apronMetres(), counters);
+        Unseen unseen = new Unseen(settings, new Modes(settings.profiles()), scene.core(), scene.apronMetres(), counters);
         FilterState.write(new DataOutputStream(bytes), List.of(components), unseen, counters);
         DataInputStream in = new DataInputStream(new ByteArrayInputStream(bytes.toByteArray()));
         return ObjectFilter.read(in, settings, scene.core(), scene.apronMetres());

@@ -26,7 +26,7 @@ class UnseenGridTest {
         double[][] expected = {{10, 0.9516258196404}, {100, 6.3212055882856}};
         for (double[] row : expected) {
             UnseenGrid grid = new UnseenGrid(still, core, 0);
-            grid.predict(still, row[0]);
+            grid.predict(still, still.profiles().get(0), row[0]);
             assertThat(grid.total()).isCloseTo(row[1], within(1e-7));
         }
     }
@@ -43,9 +43,9 @@ class UnseenGridTest {
             two.deposit(50, 50, amount);
             double first = 10 * random.nextDouble();
             double second = (round == 0 ? 900 : 10) * random.nextDouble();
-            one.predict(moving, first + second);
-            two.predict(moving, first);
-            two.predict(moving, second);
+            one.predict(moving, moving.profiles().get(0), first + second);
+            two.predict(moving, moving.profiles().get(0), first);
+            two.predict(moving, moving.profiles().get(0), second);
             assertThat(two.total()).as("seed 5, round %s", round).isCloseTo(one.total(), within(1e-12 * one.total()));
             assertThat(two.density(120, -340)).isCloseTo(one.density(120, -340), within(1e-12 * one.density(120, -340)));
         }
@@ -57,7 +57,7 @@ class UnseenGridTest {
         FilterSettings balanced = settings(6, 400, density / 400, density);
         UnseenGrid grid = new UnseenGrid(balanced, core, 200);
         grid.fill(density);
-        grid.predict(balanced, 1234.5);
+        grid.predict(balanced, balanced.profiles().get(0), 1234.5);
         assertThat(grid.density(0, 0)).isCloseTo(density, within(1e-12 * density));
         assertThat(grid.density(990, -990)).isCloseTo(density, within(1e-12 * density));
     }
@@ -67,7 +67,7 @@ class UnseenGridTest {
         // Flux through a line = density * sigma / sqrt(2 pi) per metre and second: kinetic theory of gases, Maxwell 1860 (from memory).
         FilterSettings inflow = settings(6, 1e12, 0, 1e-6);
         UnseenGrid grid = new UnseenGrid(inflow, core, 0);
-        grid.predict(inflow, 1e-3);
+        grid.predict(inflow, inflow.profiles().get(0), 1e-3);
         double perimeter = 4 * 2000;
         assertThat(grid.total() / 1e-3).isCloseTo(1e-6 * 6 / Math.sqrt(2 * Math.PI) * perimeter, within(1e-6));
     }
@@ -96,7 +96,7 @@ class UnseenGridTest {
         Look look = scene.look(0.9, 1e-6);
         for (int k = 0; k < 50; k++) {
             grid.missed(look);
-            grid.predict(steady, 1);
+            grid.predict(steady, steady.profiles().get(0), 1);
         }
         assertThat(grid.density(0, 0) * 4e6).isCloseTo(0.110987791342953, within(1e-12));
     }
@@ -106,15 +106,15 @@ class UnseenGridTest {
         UnseenGrid coarse = new UnseenGrid(still, core, 0);
         coarse.fill(1e-6);
         coarse.deposit(10, 10, 0.5);
-        FilterSettings fine = new FilterSettings(
+        FilterSettings fine = FilterScene.oneKind(
                 0.05, 1e-9, 100, 0, 0, 0, 0.7, 0.3, 0.1, 5, 40, 1000, 5000, 200_000, 1000, 1e-5, 2_000_000);
         UnseenGrid finer = new UnseenGrid(fine, core, 0);
-        finer.takeFrom(coarse);
+        finer.takeFrom(coarse, 1);
         assertThat(finer.total()).isCloseTo(coarse.total(), within(1e-12));
     }
 
     private static FilterSettings settings(double speedSigma, double lifetime, double births, double outside) {
-        return new FilterSettings(
+        return FilterScene.oneKind(
                 0.05, speedSigma, lifetime, births, outside, 0, 0.7, 0.3, 0.1, 5, CELL, 1000, 5000, 200_000, 1000, 1e-5, 2_000_000);
     }
 }

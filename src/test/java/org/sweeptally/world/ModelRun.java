@@ -50,7 +50,7 @@ public final class ModelRun {
     /** The world's own numbers; thresholds as given, bounds so wide that none bites. */
     public static FilterSettings settings(WorldSettings world, double confirming, double ending) {
         double density = world.objectsPerSquareMetre();
-        return new FilterSettings(
+        return FilterScene.oneKind(
                 world.accelerationNoise(), world.speedSigma(), world.lifetimeSeconds(),
                 density / world.lifetimeSeconds(), density, density, confirming, ending,
                 FilterSettings.RECYCLING_BELOW, 5, 100, 100_000, 1_000_000, 1_000_000, 1000, 1e-5, 2_000_000);
