@@ -1,6 +1,6 @@
 package org.sweeptally.filter;
 
-import java.util.Arrays;
+import java.util.List;
 import org.ejml.data.DMatrix4;
 import org.ejml.data.DMatrix4x4;
 import org.ejml.dense.fixed.CommonOps_DDF4;
@@ -22,6 +22,9 @@ import org.sweeptally.model.Gaussian;
  * least: the variational best-fitting multi-Bernoulli of Williams 2015, "An efficient, variational approximation of the
  * best fitting multi-Bernoulli filter", IEEE TSP 63(1):258-273. Shares and components' moments are improved by turns, neither
  * of which can make the sum greater; the shares (a transport problem) by exchange between two components at a time.
+ *
+ * <p>Between two that sail alike only places are compared: their velocities then hold no more than the noise of earlier
+ * choices, and would go on with these. Two that cross are compared with their velocities, which keep them apart.
  */
 final class BestFit {
 
@@ -33,29 +36,57 @@ final class BestFit {
 
     private static final double SETTLED = 1e-9;
 
+    /** Velocities that differ by more than so many standard deviations tell two objects apart. */
+    private static final double ALIKE_SIGMAS = 3;
+
     private final double[] there;
     private final double[] absent;
     private final Gaussian[] densities;
     private final int members;
     private final double[][] shares;
-    private final double[][] costs;
+    private final boolean[][] alike;
+
+    /** Cost of each past to each component, by place alone and by place and velocity. */
+    private final double[][] placeCosts;
+
+    private final double[][] wholeCosts;
 
     /**
      * @param there     by past: probability of it with the object existing
      * @param absent    by past: probability of it with the object not existing
      * @param densities by past; of no account where the object cannot exist
-     * @param owners    by past: the component whose past it is, 0 to members - 1
+     * @param owners    by past: the component whose past it is, by its place in the next list
+     * @param before    the components' densities before the scan
      */
-    BestFit(double[] there, double[] absent, Gaussian[] densities, int[] owners, int members) {
+    BestFit(double[] there, double[] absent, Gaussian[] densities, int[] owners, List<Gaussian> before) {
         this.there = there;
         this.absent = absent;
         this.densities = densities;
-        this.members = members;
+        this.members = before.size();
         shares = new double[there.length][members];
-        costs = new double[there.length][members];
+        placeCosts = new double[there.length][members];
+        wholeCosts = new double[there.length][members];
+        alike = new boolean[members][members];
+        for (int a = 0; a < members; a++) {
+            for (int b = 0; b < members; b++) {
+                alike[a][b] = sailAlike(before.get(a), before.get(b));
+            }
+        }
         for (int h = 0; h < there.length; h++) {
             shares[h][owners[h]] = 1;
         }
+    }
+
+    /** Whether two velocities may be the same, as far as is known. */
+    private static boolean sailAlike(Gaussian a, Gaussian b) {
+        double east = a.mean.a3 - b.mean.a3;
+        double north = a.mean.a4 - b.mean.a4;
+        double s11 = a.covariance.a33 + b.covariance.a33;
+        double s12 = a.covariance.a34 + b.covariance.a34;
+        double s22 = a.covariance.a44 + b.covariance.a44;
+        double determinant = s11 * s22 - s12 * s12;
+        double squared = s22 * east * east - 2 * s12 * east * north + s11 * north * north;
+        return squared <= ALIKE_SIGMAS * ALIKE_SIGMAS * determinant;
     }
 
     /** Share of each past (row) that goes to each component (column); rows sum to 1. */
@@ -96,8 +127,10 @@ final class BestFit {
         double ofExistence = -StrictMath.log(bounded);
         CrossEntropy entropy = begun ? new CrossEntropy(mixture.matched()) : null;
         for (int h = 0; h < there.length; h++) {
-            double place = entropy == null || there[h] == 0 ? 0 : entropy.of(densities[h]);
-            costs[h][j] = absent[h] * ofAbsence + there[h] * (ofExistence + place);
+            boolean compares = entropy != null && there[h] > 0;
+            double existing = absent[h] * ofAbsence + there[h] * ofExistence;
+            placeCosts[h][j] = existing + (compares ? there[h] * entropy.ofPlace(densities[h]) : 0);
+            wholeCosts[h][j] = existing + (compares ? there[h] * entropy.ofAll(densities[h]) : 0);
         }
     }
 
@@ -147,6 +180,7 @@ final class BestFit {
 
     /** Insertion sort: few pasts, mostly in order, and equal ones keep theirs. */
     private void sortByAdvantage(int[] order, int count, int a, int b) {
+        double[][] costs = alike[a][b] ? placeCosts : wholeCosts;
         double[] advantage = new double[there.length];
         for (int k = 0; k < count; k++) {
             int h = order[k];
@@ -169,29 +203,39 @@ final class BestFit {
         private final DMatrix4 mean;
         private final DMatrix4x4 inverse = new DMatrix4x4();
         private final double logDeterminant;
+        private final DMatrix4x4 placeInverse = new DMatrix4x4();
+        private final double placeLogDeterminant;
 
         CrossEntropy(Gaussian g) {
             mean = g.mean;
             CommonOps_DDF4.invert(g.covariance, inverse);
             logDeterminant = StrictMath.log(CommonOps_DDF4.det(g.covariance));
+            double determinant = g.positionDeterminant();
+            placeInverse.a11 = g.covariance.a22 / determinant;
+            placeInverse.a12 = placeInverse.a21 = -g.covariance.a12 / determinant;
+            placeInverse.a22 = g.covariance.a11 / determinant;
+            placeLogDeterminant = StrictMath.log(determinant);
         }
 
-        double of(Gaussian f) {
+        double ofPlace(Gaussian f) {
+            return 0.5 * (placeLogDeterminant + trace(f, placeInverse, 2));
+        }
+
+        double ofAll(Gaussian f) {
+            return 0.5 * (logDeterminant + trace(f, inverse, 4));
+        }
+
+        private double trace(Gaussian f, DMatrix4x4 by, int size) {
             double[] d = {
                 f.mean.a1 - mean.a1, f.mean.a2 - mean.a2, f.mean.a3 - mean.a3, f.mean.a4 - mean.a4
             };
             double sum = 0;
-            for (int i = 0; i < 4; i++) {
-                for (int j = 0; j < 4; j++) {
-                    sum += inverse.get(i, j) * (f.covariance.get(i, j) + d[i] * d[j]);
+            for (int i = 0; i < size; i++) {
+                for (int j = 0; j < size; j++) {
+                    sum += by.get(i, j) * (f.covariance.get(i, j) + d[i] * d[j]);
                 }
             }
-            return 0.5 * (logDeterminant + sum);
+            return sum;
         }
-    }
-
-    @Override
-    public String toString() {
-        return Arrays.deepToString(shares);
     }
 }

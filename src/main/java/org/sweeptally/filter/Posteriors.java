@@ -142,12 +142,13 @@ final class Posteriors {
 
     private void together(int[] members) {
         Pasts pasts = new Pasts(members);
-        double[][] shares =
-                new BestFit(pasts.there, pasts.absent, pasts.densities, pasts.owners, members.length).solve();
         List<Bank> banks = new ArrayList<>();
-        for (int a = 0; a < members.length; a++) {
-            banks.add(components.get(members[a]).bank);
+        for (int member : members) {
+            banks.add(components.get(member).bank);
         }
+        List<Gaussian> before = banks.stream().map(Bank::overall).toList();
+        double[][] shares =
+                new BestFit(pasts.there, pasts.absent, pasts.densities, pasts.owners, before).solve();
         Lineage[] lineages = new Lineage[members.length];
         for (int a = 0; a < members.length; a++) {
             lineages[a] = lineage(pasts, shares, a, members);
