@@ -134,7 +134,7 @@ final class CheckForecast {
     /** How many scans one object needed, 0 if too many. */
     private int trial(ObjectFilter filter, Timetable timetable, PlanePoint place, SplittableRandom random) {
         double heading = 2 * StrictMath.PI * random.nextDouble();
-        double speed = scene.site().motion().speedSigmaMetresPerSecond();
+        double speed = scene.site().motion().typicalSpeedMetresPerSecond();
         double begin = timetable.seconds;
         int sinceFirst = 0;
         for (int scan = 0; scan < TRIAL_SCANS; scan++) {

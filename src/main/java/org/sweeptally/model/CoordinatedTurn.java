@@ -18,17 +18,19 @@ import org.ejml.data.DMatrix4x4;
  * {@link NearlyConstantVelocity}, and like it is a semigroup. Bar-Shalom, Li and Kirubarajan 2001, "Estimation with
  * Applications to Tracking and Navigation", section 11.7 (for F; section number from memory); Q integrated here.
  *
- * @param radiansPerSecond  rate of turn, positive to the left, from east over north
+ * @param degreesPerSecond  rate of turn w, in degrees as sites write it; positive to the left, from east over north
  * @param accelerationNoise spectral density q along each axis, square metres a second cubed
  */
-public record CoordinatedTurn(double radiansPerSecond, double accelerationNoise) implements MotionModel {
+public record CoordinatedTurn(double degreesPerSecond, double accelerationNoise) implements MotionModel {
+
+    private static final double RADIANS_IN_A_DEGREE = StrictMath.PI / 180;
 
     /** Below this angle the series is as exact as doubles are, and the difference of sine and angle is not. */
     private static final double SMALL_ANGLE = 0.25;
 
     @Override
     public void predict(Gaussian density, double seconds) {
-        double angle = radiansPerSecond * seconds;
+        double angle = RADIANS_IN_A_DEGREE * degreesPerSecond * seconds;
         double sine = StrictMath.sin(angle);
         double cosine = StrictMath.cos(angle);
         double along = seconds * sineOverAngle(angle);

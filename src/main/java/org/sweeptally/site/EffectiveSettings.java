@@ -6,7 +6,12 @@ import java.util.List;
 import java.util.stream.Collectors;
 import org.sweeptally.geo.GeoPolygon;
 import org.sweeptally.geo.LatLon;
+import org.sweeptally.model.CoordinatedTurn;
 import org.sweeptally.model.DetectionProfile;
+import org.sweeptally.model.MotionMode;
+import org.sweeptally.model.MotionProfile;
+import org.sweeptally.model.NearlyConstantVelocity;
+import org.sweeptally.model.StandingStill;
 
 /**
  * Writes a site's settings as one text with every default in it: the same site gives the same text, byte for byte, and
@@ -35,7 +40,7 @@ public final class EffectiveSettings {
         line(0, "rejectOutside", Boolean.toString(site.rejectOutside()));
         open(0, "sensors");
         site.sensors().forEach(this::sensor);
-        motion(site.motion());
+        motion(site);
         line(0, "lifetimeSeconds", site.lifetimeSeconds());
         open(0, "unseen");
         line(1, "birthsPerSquareKilometrePerHour", site.unseen().birthsPerSquareKilometrePerHour());
@@ -84,11 +89,60 @@ public final class EffectiveSettings {
                 .collect(Collectors.joining(", ", "[", "]"));
     }
 
-    private void motion(MotionSettings motion) {
+    /** A site whose objects are all of one kind, and move in one way, keeps the short form. */
+    private void motion(Site site) {
         open(0, "motion");
-        line(1, "accelerationNoise", motion.accelerationNoise());
-        line(1, "speedSigmaMetresPerSecond", motion.speedSigmaMetresPerSecond());
-        line(1, "largestSpeedMetresPerSecond", motion.largestSpeedMetresPerSecond());
+        MotionProfile first = site.profiles().get(0);
+        if (site.motion().equals(MotionSettings.oneWay(first, site.lifetimeSeconds()))) {
+            line(1, "accelerationNoise", noise(first.modes().get(0)));
+            speeds(1, first);
+        } else {
+            open(1, "profiles");
+            site.profiles().forEach(this::profile);
+        }
+    }
+
+    private void profile(MotionProfile profile) {
+        open(2, profile.name());
+        line(3, "share", profile.share());
+        line(3, "lifetimeSeconds", profile.lifetimeSeconds());
+        speeds(3, profile);
+        open(3, "modes");
+        for (MotionMode mode : profile.modes()) {
+            mode(mode);
+        }
+    }
+
+    private void speeds(int depth, MotionProfile profile) {
+        line(depth, "speedSigmaMetresPerSecond", profile.speedSigma());
+        line(depth, "largestSpeedMetresPerSecond", profile.largestSpeed());
+    }
+
+    /** Turns to the left and to the right are one key, with the shares of both. */
+    private void mode(MotionMode mode) {
+        if (mode.name().equals(ModeReader.RIGHT)) {
+            return;
+        }
+        boolean turns = mode.motion() instanceof CoordinatedTurn;
+        open(4, turns ? ModeReader.TURNING : mode.name());
+        line(5, "share", turns ? 2 * mode.share() : mode.share());
+        if (!Double.isInfinite(mode.dwellSeconds())) {
+            line(5, "dwellSeconds", mode.dwellSeconds());
+        }
+        line(5, mode.motion() instanceof StandingStill ? "positionNoise" : "accelerationNoise", noise(mode));
+        if (mode.motion() instanceof CoordinatedTurn turn) {
+            line(5, "degreesPerSecond", turn.degreesPerSecond());
+        }
+    }
+
+    private static double noise(MotionMode mode) {
+        if (mode.motion() instanceof StandingStill still) {
+            return still.positionNoise();
+        }
+        if (mode.motion() instanceof CoordinatedTurn turn) {
+            return turn.accelerationNoise();
+        }
+        return ((NearlyConstantVelocity) mode.motion()).accelerationNoise();
     }
 
     private void bounds(BoundSettings bounds) {

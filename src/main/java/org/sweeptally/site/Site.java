@@ -4,6 +4,7 @@ import java.util.List;
 import java.util.Optional;
 import java.util.OptionalLong;
 import org.sweeptally.filter.FilterSettings;
+import org.sweeptally.model.MotionMode;
 import org.sweeptally.model.MotionProfile;
 import org.sweeptally.model.NearlyConstantVelocity;
 
@@ -15,6 +16,7 @@ import org.sweeptally.model.NearlyConstantVelocity;
  * @param fromMicros log time from which the settings hold, microseconds since 1970-01-01T00:00:00Z
  * @param sensors    by name
  * @param regions    by name
+ * @param lifetimeSeconds mean lifetime of an object of a profile that gives none of its own
  * @param rejectOutside whether detections beyond reach or outside every region are rejected, not only counted
  */
 public record Site(
@@ -43,15 +45,20 @@ public record Site(
         return regions.stream().filter(r -> r.name().equals(regionName)).findFirst();
     }
 
+    /** The kinds of objects, by how they move; one at least. */
+    public List<MotionProfile> profiles() {
+        return motion.profiles();
+    }
+
     /** What the recursion of a region needs, in metres and seconds. */
     public FilterSettings filterSettings(RegionSettings region) {
         double squareMetresPerSquareKilometre = 1e6;
         double secondsPerHour = 3600;
+        MotionProfile first = motion.profiles().get(0);
         return new FilterSettings(
-                List.of(MotionProfile.single(
-                        new NearlyConstantVelocity(motion.accelerationNoise()),
-                        lifetimeSeconds,
-                        motion.speedSigmaMetresPerSecond())),
+                accelerationNoise(first),
+                first.speedSigma(),
+                first.lifetimeSeconds(),
                 unseen.birthsPerSquareKilometrePerHour() / squareMetresPerSquareKilometre / secondsPerHour,
                 unseen.outsidePerSquareKilometre() / squareMetresPerSquareKilometre,
                 unseen.initialPerSquareKilometre() / squareMetresPerSquareKilometre,
@@ -66,5 +73,14 @@ public record Site(
                 bounds.propagationSweeps(),
                 bounds.leastTermWeight(),
                 bounds.gatedPairs());
+    }
+
+    private static double accelerationNoise(MotionProfile profile) {
+        for (MotionMode mode : profile.modes()) {
+            if (mode.motion() instanceof NearlyConstantVelocity straight) {
+                return straight.accelerationNoise();
+            }
+        }
+        return 0;
     }
 }

@@ -17,12 +17,6 @@ final class SiteAssembly {
     static final double DEFAULT_CONFIRMING = 0.7;
     static final double DEFAULT_ENDING = 0.3;
 
-    /** Of motionless things a speed of 0 is no fault, but a spread of 0 could never be corrected. */
-    private static final Allowed SPEED = Allowed.from(0.001, 10_000);
-
-    /** How many speedSigmas the largest speed is, where it is not given. */
-    private static final double LARGEST_SPEED_SIGMAS = 4;
-
     /** The default apron lets neighbours run this far apart, at the largest speed, twice over. */
     private static final double APRON_SECONDS = 10;
 
@@ -54,10 +48,11 @@ final class SiteAssembly {
         Optional<Node> sensorsNode = fields.required("sensors", "a mapping of sensors' names to their settings");
         List<SensorSettings> sensors =
                 sensorsNode.map(sensorNode -> SensorReader.read(sensorNode, files, faults)).orElse(List.of());
-        MotionSettings motion = motion(fields.section("motion", "accelerationNoise and speedSigmaMetresPerSecond"));
-        double lifetime = fields.number("lifetimeSeconds", Allowed.moreThanZero(1e9));
+        double lifetime = fields.number("lifetimeSeconds", MotionReader.LIFETIME);
+        MotionSettings motion = MotionReader.read(
+                fields.section("motion", "accelerationNoise and speedSigmaMetresPerSecond, or profiles"), lifetime, faults);
         Fields unseenFields = fields.section("unseen", "birthsPerSquareKilometrePerHour and others");
-        UnseenSettings unseen = unseen(unseenFields, lifetime);
+        UnseenSettings unseen = unseen(unseenFields, motion.meanLifetimeSeconds());
         OptionalDouble cell = unseenFields.optionalNumber("cellMetres", RegionsReader.CELL);
         unseenFields.end();
         ThresholdSettings thresholds = thresholds(fields.optionalSection("thresholds", "confirming and ending"));
@@ -112,15 +107,6 @@ final class SiteAssembly {
                 node.get().shown(),
                 "must be a time such as 2031-05-01T05:00:00Z, at most six decimals");
         return OptionalLong.empty();
-    }
-
-    private static MotionSettings motion(Fields fields) {
-        double noise = fields.number("accelerationNoise", Allowed.from(1e-9, 1_000_000));
-        double speedSigma = fields.number("speedSigmaMetresPerSecond", SPEED);
-        double largest = fields.number(
-                "largestSpeedMetresPerSecond", SPEED, LARGEST_SPEED_SIGMAS * speedSigma);
-        fields.end();
-        return new MotionSettings(noise, speedSigma, largest);
     }
 
     private UnseenSettings unseen(Fields fields, double lifetimeSeconds) {

@@ -15,8 +15,8 @@ import org.junit.jupiter.params.provider.ValueSource;
 class MotionModelsTest {
 
     private static final MotionModel[] MODELS = {
-        new NearlyConstantVelocity(.3), new CoordinatedTurn(.15, .3), new CoordinatedTurn(-.15, .3),
-        new CoordinatedTurn(1e-7, .3), new CoordinatedTurn(0, .3), new CoordinatedTurn(2, 0), new StandingStill(.01, .1)
+        new NearlyConstantVelocity(.3), new CoordinatedTurn(9, .3), new CoordinatedTurn(-9, .3),
+        new CoordinatedTurn(1e-7, .3), new CoordinatedTurn(0, .3), new CoordinatedTurn(120, 0), new StandingStill(.01, .1)
     };
 
     /** Predicting over two steps is predicting over their sum, whatever the steps: the matrix exponential's semigroup. */
@@ -40,8 +40,9 @@ class MotionModelsTest {
 
     /** F and Q of a turn against the series of the matrix exponential of [-A, G q G'; 0, A'] (Van Loan 1978, IEEE TAC 23:395, from memory). */
     @ParameterizedTest
-    @ValueSource(doubles = {0, 1e-9, .001, .0999, .1, .1001, .157, -.157, 1, -3})
-    void aTurnIsTheMatrixExponentialOfItsEquation(double rate) {
+    @ValueSource(doubles = {0, 1e-9, .001, 1, 5.7, 5.75, 9, -9, 60, -170})
+    void aTurnIsTheMatrixExponentialOfItsEquation(double degreesPerSecond) {
+        double rate = Math.toRadians(degreesPerSecond);
         double q = .7;
         double seconds = 2.5;
         double[][] a = {{0, 0, 1, 0}, {0, 0, 0, 1}, {0, 0, 0, -rate}, {0, 0, rate, 0}};
@@ -63,7 +64,7 @@ class MotionModelsTest {
         RealMatrix expected = transition.multiply(p).multiply(transition.transpose()).add(noise);
         double[] mean = transition.operate(new double[] {
             density.mean.a1, density.mean.a2, density.mean.a3, density.mean.a4});
-        new CoordinatedTurn(rate, q).predict(density, seconds);
+        new CoordinatedTurn(degreesPerSecond, q).predict(density, seconds);
         for (int i = 0; i < 4; i++) {
             assertThat(density.mean.get(i, 0)).isCloseTo(mean[i], within(1e-11));
             for (int j = 0; j < 4; j++) {
@@ -84,9 +85,9 @@ class MotionModelsTest {
     /** A quarter turn to the left at 8 m/s in 10 s, from the north: on a circle of radius 8 m/s / w it ends to the west. */
     @Test
     void aQuarterTurnToTheLeftEndsWhereTheCircleDoes() {
-        double rate = Math.PI / 2 / 10;
+        double rate = Math.toRadians(9);
         Gaussian density = new Gaussian(new DMatrix4(0, 0, 0, 8), new DMatrix4x4());
-        new CoordinatedTurn(rate, 0).predict(density, 10);
+        new CoordinatedTurn(9, 0).predict(density, 10);
         assertThat(density.mean.a1).isCloseTo(-8 / rate, within(1e-11));
         assertThat(density.mean.a2).isCloseTo(8 / rate, within(1e-11));
         assertThat(density.mean.a3).isCloseTo(-8, within(1e-12));

@@ -139,7 +139,7 @@ final class TestSites {
                 OptionalLong.empty(),
                 sensors,
                 regions,
-                new MotionSettings(0.1, 6, 25),
+                MotionSettings.oneWay(0.1, 6, 25, 600),
                 600,
                 new UnseenSettings(5, 1, 1),
                 new ThresholdSettings(0.7, 0.3),

@@ -15,7 +15,12 @@ import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
 import org.sweeptally.geo.GeoPolygon;
 import org.sweeptally.geo.LatLon;
+import org.sweeptally.model.CoordinatedTurn;
 import org.sweeptally.model.DetectionProfile;
+import org.sweeptally.model.MotionMode;
+import org.sweeptally.model.MotionProfile;
+import org.sweeptally.model.NearlyConstantVelocity;
+import org.sweeptally.model.StandingStill;
 import org.sweeptally.site.SensorSettings.PositionNoise;
 
 class EffectiveSettingsTest {
@@ -73,6 +78,59 @@ class EffectiveSettingsTest {
                 .isEqualTo(new ThresholdSettings(0.7, 0.3));
     }
 
+    /** Shares that are not given are what is left, in equal parts; a turn of known rate is one to the left and one to the right. */
+    @Test
+    void profilesHaveTheDefaultsThatTheyAreSaidToHave() {
+        Site site = valid(SiteReader.readText(withMotion("""
+                motion:
+                  profiles:
+                    piles: {share: 0.1, lifetimeSeconds: 86400, modes: {still: {}}}
+                    craft:
+                      speedSigmaMetresPerSecond: 6
+                      modes:
+                        turning: {accelerationNoise: 1, degreesPerSecond: 9, share: 0.2}
+                        straight: {accelerationNoise: 0.05}
+                        still: {}
+                """)));
+        NearlyConstantVelocity straight = new NearlyConstantVelocity(0.05);
+        StandingStill still = new StandingStill(0.01, 0.1);
+        assertThat(site.profiles())
+                .containsExactly(
+                        new MotionProfile("craft", 0.9, 900, 6, 24, List.of(
+                                new MotionMode("still", still, 0.4, 600),
+                                new MotionMode("straight", straight, 0.4, 60),
+                                new MotionMode("turning-left", new CoordinatedTurn(9, 1), 0.1, 10),
+                                new MotionMode("turning-right", new CoordinatedTurn(-9, 1), 0.1, 10))),
+                        new MotionProfile("piles", 0.1, 86_400, 0, 0, List.of(
+                                new MotionMode("still", still, 1, Double.POSITIVE_INFINITY))));
+        assertThat(site.region("skell-mouth").orElseThrow().apronMetres()).isEqualTo(5 * 15 + 2 * 24 * 10);
+        assertThat(site.unseen().outsidePerSquareKilometre())
+                .isCloseTo(4 * (0.9 * 900 + 0.1 * 86_400) / 3600, within(1e-12));
+        assertThat(valid(SiteReader.readText(EffectiveSettings.text(site)))).isEqualTo(site);
+    }
+
+    /** The text of settings is in the log: what was one line of motion stays it, however it is written. */
+    @Test
+    void aSingleKindThatKeepsStraightIsWrittenInTheShortForm() {
+        Site shortForm = valid(SiteReader.read(ESTUARY));
+        Site longForm = valid(SiteReader.readText(withMotion("""
+                motion:
+                  profiles:
+                    object:
+                      speedSigmaMetresPerSecond: 5
+                      modes: {straight: {accelerationNoise: 0.05}}
+                """)));
+        assertThat(longForm.motion()).isEqualTo(shortForm.motion());
+        assertThat(EffectiveSettings.text(shortForm)).contains("motion:\n  accelerationNoise: 0.05\n");
+    }
+
+    /** The estuary with another section on motion, and with what follows from it left open. */
+    private static String withMotion(String motion) {
+        return EffectiveSettings.text(valid(SiteReader.read(ESTUARY)))
+                .replaceFirst("motion:\n(  .*\n)+", motion)
+                .replaceAll("    apronMetres.*\n|  (outside|initial)PerSquareKilometre.*\n", "");
+    }
+
     @Test
     void aSmallRegionHasCellsOfNoLessThan25Metres() {
         String text = EffectiveSettings.text(valid(SiteReader.read(ESTUARY)))
@@ -120,14 +178,15 @@ class EffectiveSettingsTest {
             sensors.add(randomSensor(random, "sensor-" + i, south, west));
         }
         double ending = random.nextDouble(.1, .5);
+        double lifetime = random.nextDouble(1, 1e6);
         return new Site(
                 random.nextBoolean() ? "null" : "0777",
                 random.nextInt(1, Integer.MAX_VALUE),
                 random.nextBoolean() ? OptionalLong.empty() : OptionalLong.of(random.nextLong(-1L << 50, 1L << 52)),
                 sensors,
                 regions,
-                new MotionSettings(random.nextDouble(1e-9, 1), random.nextDouble(.1, 20), random.nextDouble(1, 80)),
-                random.nextDouble(1, 1e6),
+                randomMotion(random, lifetime),
+                lifetime,
                 new UnseenSettings(random.nextDouble(0, 9), random.nextDouble(0, 9), random.nextDouble(0, 9)),
                 new ThresholdSettings(random.nextDouble(ending + .01, 1), ending),
                 new BoundSettings(
@@ -144,6 +203,43 @@ class EffectiveSettingsTest {
                         random.nextDouble(1e-9, .01),
                         random.nextInt(1000, 99_999_999)),
                 random.nextBoolean());
+    }
+
+    private static MotionSettings randomMotion(SplittableRandom random, double lifetime) {
+        if (random.nextBoolean()) {
+            return MotionSettings.oneWay(
+                    random.nextDouble(1e-9, 1), random.nextDouble(.1, 20), random.nextDouble(1, 80), lifetime);
+        }
+        double share = random.nextDouble();
+        MotionProfile craft = new MotionProfile(
+                "craft", share, random.nextBoolean() ? lifetime : random.nextDouble(1, 1e6),
+                random.nextDouble(.1, 20), random.nextDouble(1, 80), randomModes(random));
+        MotionMode still = new MotionMode(
+                "still", new StandingStill(random.nextDouble(1e-9, 1), .1), 1, Double.POSITIVE_INFINITY);
+        return new MotionSettings(List.of(
+                craft, new MotionProfile("piles", 1 - share, random.nextDouble(1, 1e6), 0, 0, List.of(still))));
+    }
+
+    private static List<MotionMode> randomModes(SplittableRandom random) {
+        double turning = random.nextDouble();
+        double rate = random.nextDouble(.1, 20);
+        double noise = random.nextDouble(.1, 20);
+        double dwell = random.nextDouble(.1, 99);
+        boolean both = random.nextBoolean();
+        List<MotionMode> modes = new ArrayList<>();
+        if (both) {
+            modes.add(new MotionMode(
+                    "straight", new NearlyConstantVelocity(random.nextDouble(1e-9, 1)), 1 - turning, random.nextDouble(1, 999)));
+        }
+        double share = both ? turning : 1;
+        if (random.nextBoolean()) {
+            modes.add(new MotionMode("turning-left", new CoordinatedTurn(rate, noise), share / 2, dwell));
+            modes.add(new MotionMode("turning-right", new CoordinatedTurn(-rate, noise), share / 2, dwell));
+        } else {
+            modes.add(new MotionMode(
+                    "turning", new NearlyConstantVelocity(noise), share, both ? dwell : Double.POSITIVE_INFINITY));
+        }
+        return modes;
     }
 
     private static GeoPolygon cell(SplittableRandom random, double south, double west, boolean mayHaveHole) {

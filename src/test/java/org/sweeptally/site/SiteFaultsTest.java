@@ -125,6 +125,42 @@ class SiteFaultsTest {
         assertThat(lines).noneMatch(line -> line.contains("Exception") || line.contains("snakeyaml"));
     }
 
+    @ParameterizedTest
+    @CsvSource(delimiter = '|', value = {
+        "{} | motion.profiles: is a mapping, must be a mapping of kinds of objects to how they move",
+        "3 | motion.profiles: is 3, must be a mapping of kinds of objects to how they move",
+        "{Craft: {modes: {still: {}}}} | motion.profiles.Craft: is 'Craft', must be a name",
+        "{a: 1} | motion.profiles.a: is 1, must be a mapping of a kind of objects",
+        "{a: {speedSigmaMetresPerSecond: 5}} | motion.profiles.a.modes: is missing, must be a mapping of still, straight or turning",
+        "{a: {modes: {}, speedSigmaMetresPerSecond: 5}} | motion.profiles.a.modes: must have at least one of still, straight and turning",
+        "{a: {modes: {stil: {}}}} | motion.profiles.a.modes.stil: is not known here, the nearest known key is still",
+        "{a: {modes: {straight: {accelerationNoise: 1}}}} | motion.profiles.a.speedSigmaMetresPerSecond: is missing",
+        "{a: {modes: {straight: {}}, speedSigmaMetresPerSecond: 5}} | motion.profiles.a.modes.straight.accelerationNoise: is missing",
+        "{a: {modes: {straight: {accelerationNoise: 0}}, speedSigmaMetresPerSecond: 5}} | straight.accelerationNoise: is 0, must be from",
+        "{a: {modes: {straight: {accelerationNoise: 1, degreesPerSecond: 1}}, speedSigmaMetresPerSecond: 5}} | straight.degreesPerSecond: is not known here",
+        "{a: {modes: {turning: {accelerationNoise: 1, degreesPerSecond: 0}}, speedSigmaMetresPerSecond: 5}} | turning.degreesPerSecond: is 0, must be more than 0, at most 90",
+        "{a: {modes: {still: {positionNoise: -1}}}} | still.positionNoise: is -1, must be from",
+        "{a: {modes: {still: {dwellSeconds: 5}}}} | still.dwellSeconds: must be absent for the only way of moving",
+        "{a: {modes: {still: {}}, speedSigmaMetresPerSecond: 5}} | motion.profiles.a.speedSigmaMetresPerSecond: is 5, must be 0 for what never moves",
+        "{a: {modes: {still: {}}, lifetimeSeconds: 0}} | motion.profiles.a.lifetimeSeconds: is 0, must be more than 0",
+        "{a: {modes: {still: {dwellSeconds: 0}, straight: {accelerationNoise: 1}}, speedSigmaMetresPerSecond: 5}} | still.dwellSeconds: is 0, must be more than 0",
+        "{a: {modes: {still: {share: .5}}}} | motion.profiles.a.modes: has shares that sum to 0.5, they must sum to 1",
+        "{a: {share: .5, modes: {still: {}}}, b: {share: .6, modes: {still: {}}}} | motion.profiles: has shares that sum to 1.1, they must sum to 1",
+        "{a: {share: 1, modes: {still: {}}}, b: {modes: {still: {}}}} | motion.profiles: has shares that sum to 1, they must sum to 1 and leave something",
+        "{a: {share: 2, modes: {still: {}}}} | motion.profiles.a.share: is 2, must be from 0 to 1",
+    })
+    void eachFaultOfAProfileNamesPlaceValueAndWhatIsAllowed(String profiles, String told) {
+        String text = SOUND.replace("{accelerationNoise: 0.05, speedSigmaMetresPerSecond: 5}", "{profiles: " + profiles + "}");
+        assertThat(lines(SiteReader.readText(text))).contains("settings:12: ").contains(told);
+    }
+
+    @Test
+    void profilesAndTheShortFormExcludeEachOther() {
+        String text = SOUND.replace("speedSigmaMetresPerSecond: 5}", "profiles: {a: {modes: {still: {}}}}}");
+        assertThat(lines(SiteReader.readText(text)))
+                .isEqualTo("settings:12: motion.accelerationNoise: must be absent where profiles are given, which say it of each kind\n");
+    }
+
     @Test
     void aSecondDocumentIsAFault() {
         assertThat(lines(SiteReader.readText(SOUND + "---\nsite: other\n"))).contains("settings:19: goes on after its end");

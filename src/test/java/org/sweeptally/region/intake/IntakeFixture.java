@@ -47,8 +47,8 @@ public final class IntakeFixture {
                         List.of(new LatLon(53.8, 8.0), new LatLon(53.8, 8.3), new LatLon(54.0, 8.3),
                                 new LatLon(54.0, 8.0)),
                         List.of()), 500, 200)),
-                new MotionSettings(0.05, 6, 30), 600, new UnseenSettings(1, 1, 1), new ThresholdSettings(0.9, 0.1),
-                new BoundSettings(4, 1000, 1000, 100_000, 200, MOST_DETECTIONS, 64 << 20, 60, 100, 30, 1e-5, 2_000_000), false);
+                MotionSettings.oneWay(0.05, 6, 30, 600), 600, new UnseenSettings(1, 1, 1), new ThresholdSettings(0.9, 0.1),
+                new BoundSettings(4, 1000, 1000, 100_000, 200, MOST_DETECTIONS, 64 << 20, 60, 100, 1e-5, 2_000_000), false);
     }
 
     /** A closing part of north-shore with detections at places. */
