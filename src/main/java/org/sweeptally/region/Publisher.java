@@ -51,7 +51,7 @@ final class Publisher {
                 published.put(component.identity(), Micros.BEFORE_ALL);
                 births++;
             }
-            track(records.track(component), component.identity(), out);
+            track(records.track(component, filter.tellsStill()), component.identity(), out);
         }
         int ends = endOthers(shown, filter, result, records, out);
         Count count = records.count(filter, shown.size(), births, ends, revision);

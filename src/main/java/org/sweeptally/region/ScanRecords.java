@@ -9,6 +9,7 @@ import org.sweeptally.event.DeclaredIdentity;
 import org.sweeptally.event.DetectionRef;
 import org.sweeptally.event.End;
 import org.sweeptally.event.EndWhy;
+import org.sweeptally.event.IdentityShare;
 import org.sweeptally.event.NumberDistribution;
 import org.sweeptally.event.Track;
 import org.sweeptally.event.UsedDetection;
@@ -57,7 +58,8 @@ final class ScanRecords {
                 .build();
     }
 
-    Track track(Component component) {
+    /** @param tellsStill whether the site tells still objects from moving ones */
+    Track track(Component component, boolean tellsStill) {
         LatLon place = placeOf(component, area);
         DMatrix4 mean = component.density().mean;
         return Track.newBuilder()
@@ -76,11 +78,20 @@ final class ScanRecords {
                 .setNorthMetresPerSecond(mean.a4)
                 .setCovariance(covariance(component))
                 .setExistence(component.existence())
+                .setMoving(tellsStill ? component.isMoving() : null)
+                .setIdentityProbability(component.identityProbability())
+                .setMayBe(mayBe(component))
                 .setFirstSeenMicros(component.firstSeenMicros())
                 .setLastDetectedMicros(component.lastDetectedMicros())
                 .setUsed(used(component))
                 .setDeclaredIdentity(declared(component))
                 .build();
+    }
+
+    private static List<IdentityShare> mayBe(Component component) {
+        return component.otherIdentities().stream()
+                .map(other -> new IdentityShare(other.identity().text(), other.probability()))
+                .toList();
     }
 
     private static List<Double> covariance(Component component) {
@@ -136,6 +147,7 @@ final class ScanRecords {
                 .setScan(number)
                 .setTimeMicros(scan.logTimeMicros())
                 .setAll(distribution(filter.count()))
+                .setMoving(filter.countMoving().map(ScanRecords::distribution).orElse(null))
                 .setExpectedUnseen(filter.expectedUnseen())
                 .setTracks(tracks)
                 .setBirths(births)

@@ -4,9 +4,7 @@ import java.util.List;
 import java.util.Optional;
 import java.util.OptionalLong;
 import org.sweeptally.filter.FilterSettings;
-import org.sweeptally.model.MotionMode;
 import org.sweeptally.model.MotionProfile;
-import org.sweeptally.model.NearlyConstantVelocity;
 
 /**
  * Everything that a site file says, validated, with every default filled in.
@@ -54,11 +52,8 @@ public record Site(
     public FilterSettings filterSettings(RegionSettings region) {
         double squareMetresPerSquareKilometre = 1e6;
         double secondsPerHour = 3600;
-        MotionProfile first = motion.profiles().get(0);
         return new FilterSettings(
-                accelerationNoise(first),
-                first.speedSigma(),
-                first.lifetimeSeconds(),
+                motion.profiles(),
                 unseen.birthsPerSquareKilometrePerHour() / squareMetresPerSquareKilometre / secondsPerHour,
                 unseen.outsidePerSquareKilometre() / squareMetresPerSquareKilometre,
                 unseen.initialPerSquareKilometre() / squareMetresPerSquareKilometre,
@@ -73,14 +68,5 @@ public record Site(
                 bounds.propagationSweeps(),
                 bounds.leastTermWeight(),
                 bounds.gatedPairs());
-    }
-
-    private static double accelerationNoise(MotionProfile profile) {
-        for (MotionMode mode : profile.modes()) {
-            if (mode.motion() instanceof NearlyConstantVelocity straight) {
-                return straight.accelerationNoise();
-            }
-        }
-        return 0;
     }
 }

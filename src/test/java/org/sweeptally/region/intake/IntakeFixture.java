@@ -48,7 +48,7 @@ public final class IntakeFixture {
                                 new LatLon(54.0, 8.0)),
                         List.of()), 500, 200)),
                 MotionSettings.oneWay(0.05, 6, 30, 600), 600, new UnseenSettings(1, 1, 1), new ThresholdSettings(0.9, 0.1),
-                new BoundSettings(4, 1000, 1000, 100_000, 200, MOST_DETECTIONS, 64 << 20, 60, 100, 1e-5, 2_000_000), false);
+                new BoundSettings(4, 1000, 1000, 100_000, 200, MOST_DETECTIONS, 64 << 20, 60, 100, 30, 1e-5, 2_000_000), false);
     }
 
     /** A closing part of north-shore with detections at places. */

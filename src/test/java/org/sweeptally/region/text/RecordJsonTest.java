@@ -19,6 +19,7 @@ import org.sweeptally.event.Count;
 import org.sweeptally.event.DeclaredIdentity;
 import org.sweeptally.event.DetectionRef;
 import org.sweeptally.event.End;
+import org.sweeptally.event.IdentityShare;
 import org.sweeptally.event.EndWhy;
 import org.sweeptally.event.NumberDistribution;
 import org.sweeptally.event.Reject;
@@ -158,7 +159,8 @@ class RecordJsonTest {
         List<Double> covariance = IntStream.range(0, 16).mapToObj(i -> i % 5 == 0 ? 4.0 : 0.0).toList();
         return new Track(OBJECT, "outer", 5L, "north-shore", SCAN_TIME, 17L, SCAN_TIME + 2_500_000, 53.91, 8.12,
                 100.5, -20.0,
-                3.0, -4.0, covariance, 0.999, null, SCAN_TIME, SCAN_TIME,
+                3.0, -4.0, covariance, 0.999, null, 0.9, List.of(new IdentityShare("north-shore-x", 0.1)), SCAN_TIME,
+                SCAN_TIME,
                 List.of(new UsedDetection(new DetectionRef("north-shore", SCAN_TIME, 0, 3), "a3", 0.75)),
                 new DeclaredIdentity("gull", 0.9));
     }
