@@ -110,7 +110,7 @@ final class ScanHypotheses {
                     counters.add(Counters.Name.PAIRS_OVER_BOUND, 1);
                     continue;
                 }
-                double there = Double.isNaN(constant) ? look.probabilityOfDetection(z.east(), z.north()) : constant;
+                double there = Double.isNaN(constant) ? look.probabilityOfDetection(z) : constant;
                 problem.addPair(j, existence[i] * there * update.likelihood());
             }
         }

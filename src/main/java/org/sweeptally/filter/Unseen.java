@@ -78,7 +78,7 @@ final class Unseen {
         UnseenEvidence evidence = new UnseenEvidence(observations.size());
         for (int j = 0; j < observations.size(); j++) {
             Measurement z = observations.get(j).measurement();
-            double detection = scan.look().probabilityOfDetection(z.east(), z.north());
+            double detection = scan.look().probabilityOfDetection(z);
             evidence.addGrid(j, detection > 0 ? detection * grid.density(z.east(), z.north()) : 0);
         }
         double gate = settings.gateSigmas() * settings.gateSigmas();
@@ -103,7 +103,7 @@ final class Unseen {
                         continue;
                     }
                     double detection = Double.isNaN(everywhere)
-                            ? scan.look().probabilityOfDetection(z.east(), z.north())
+                            ? scan.look().probabilityOfDetection(z)
                             : everywhere;
                     evidence.addTerm(j, t, term.weight * detection * update.likelihood());
                 }
