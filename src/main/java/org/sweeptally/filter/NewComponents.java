@@ -17,6 +17,7 @@ final class NewComponents {
 
     private final Scan scan;
     private final long logTimeMicros;
+    private final double[] clutter;
     private final Unseen unseen;
     private final UnseenEvidence evidence;
     private final double recyclingBelow;
@@ -26,6 +27,7 @@ final class NewComponents {
     NewComponents(
             Scan scan,
             long logTimeMicros,
+            double[] clutter,
             Unseen unseen,
             UnseenEvidence evidence,
             List<Component> components,
@@ -33,6 +35,7 @@ final class NewComponents {
             Counters counters) {
         this.scan = scan;
         this.logTimeMicros = logTimeMicros;
+        this.clutter = clutter;
         this.unseen = unseen;
         this.evidence = evidence;
         this.recyclingBelow = settings.recyclingBelow();
@@ -78,14 +81,13 @@ final class NewComponents {
 
     private double existence(ScanHypotheses hypotheses, int j) {
         double e = evidence.total(j);
-        return e > 0 ? hypotheses.nobodys(j) * (e / (scan.look().clutterPerSquareMetre() + e)) : 0;
+        return e > 0 ? hypotheses.nobodys(j) * (e / (clutter[j] + e)) : 0;
     }
 
     private Component component(ScanHypotheses hypotheses, int j, SortedMap<Identity, Integer> heirs) {
         Observation observation = scan.observations().get(j);
         double e = evidence.total(j);
-        double clutter = scan.look().clutterPerSquareMetre();
-        double logOdds = LogOdds.ofRatio(hypotheses.nobodys(j) * e, clutter + e * hypotheses.somebodys(j));
+        double logOdds = LogOdds.ofRatio(hypotheses.nobodys(j) * e, clutter[j] + e * hypotheses.somebodys(j));
         Component.Use use = new Component.Use(observation.part(), observation.index(), observation.id(), 1);
         return new Component(
                 history(j, observation, heirs), unseen.firstSeen(scan, evidence, j), logOdds, false, List.of(use));

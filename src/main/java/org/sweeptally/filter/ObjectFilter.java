@@ -32,6 +32,7 @@ public final class ObjectFilter {
     private final Association association = new Association();
     private final AssociationProblem problem = new AssociationProblem();
     private final Unseen unseen;
+    private final ClutterMap clutterMap;
 
     private FilterSettings settings;
     private NearlyConstantVelocity motion;
@@ -47,11 +48,13 @@ public final class ObjectFilter {
         this.apronMetres = apronMetres;
         this.motion = new NearlyConstantVelocity(settings.accelerationNoise());
         this.unseen = new Unseen(settings, core, apronMetres, counters);
+        this.clutterMap = new ClutterMap(core, apronMetres);
     }
 
     /** Goes on with other settings, and perhaps with another apron. */
     public void settings(FilterSettings changed, double changedApronMetres) {
         unseen.settings(changed, changedApronMetres);
+        clutterMap.apron(changedApronMetres);
         settings = changed;
         apronMetres = changedApronMetres;
         motion = new NearlyConstantVelocity(changed.accelerationNoise());
@@ -64,6 +67,11 @@ public final class ObjectFilter {
 
     public Counters counters() {
         return counters;
+    }
+
+    /** What has been learned of the density of false detections. */
+    ClutterMap clutterMap() {
+        return clutterMap;
     }
 
     /** Lets time pass, 0 seconds or more: survival, motion, births, inflow. */
@@ -86,11 +94,13 @@ public final class ObjectFilter {
         counters.add(Counters.Name.OBSERVATIONS, scan.observations().size());
         DetectionIndex index = new DetectionIndex(scan.observations());
         UnseenEvidence evidence = unseen.evidence(scan, index);
+        double[] clutter = clutterMap.clutterOf(scan);
         ScanHypotheses hypotheses = new ScanHypotheses(
-                components, scan, index, evidence, settings, counters, association, problem);
+                components, scan, clutter, index, evidence, settings, counters, association, problem);
+        clutterMap.learn(scan, j -> hypotheses.nobodys(j) * (clutter[j] / (clutter[j] + evidence.total(j))), logTimeMicros);
 
         List<Component> begun = new NewComponents(
-                        scan, logTimeMicros, unseen, evidence, components, settings, counters)
+                        scan, logTimeMicros, clutter, unseen, evidence, components, settings, counters)
                 .begin(hypotheses);
         for (int i = 0; i < components.size(); i++) {
             hypotheses.update(components.get(i), i, logTimeMicros);
@@ -174,6 +184,7 @@ public final class ObjectFilter {
     /** Writes the whole state, exact to the bit. */
     public void write(DataOutput out) throws IOException {
         FilterState.write(out, components, unseen, counters);
+        clutterMap.write(out);
     }
 
     /**
@@ -185,6 +196,7 @@ public final class ObjectFilter {
             throws IOException {
         ObjectFilter filter = new ObjectFilter(settings, core, apronMetres);
         FilterState.read(in, filter.components, filter.unseen, filter.counters);
+        filter.clutterMap.read(in);
         return filter;
     }
 }

@@ -47,10 +47,14 @@ final class ScanHypotheses {
     private final Mixture mixture = new Mixture();
     private final double[] step = new double[4];
 
-    /** @param association solves the problem, in storage that both keep for the next scan */
+    /**
+     * @param clutter     density of false detections at each observation, per square metre
+     * @param association solves the problem, in storage that both keep for the next scan
+     */
     ScanHypotheses(
             List<Component> components,
             Scan scan,
+            double[] clutter,
             DetectionIndex index,
             UnseenEvidence evidence,
             FilterSettings settings,
@@ -65,9 +69,8 @@ final class ScanHypotheses {
         absence = new double[components.size()];
         detection = new double[components.size()];
         problem.clear();
-        double clutter = scan.look().clutterPerSquareMetre();
         for (int j = 0; j < scan.observations().size(); j++) {
-            problem.addColumn(clutter + evidence.total(j));
+            problem.addColumn(clutter[j] + evidence.total(j));
         }
         for (int i = 0; i < detection.length; i++) {
             gate(components.get(i), i, index);

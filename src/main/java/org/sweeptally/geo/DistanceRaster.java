@@ -11,7 +11,7 @@ final class DistanceRaster {
     /** What is as near as this to the distance asked for is left to the edges, so that rounding decides nothing here. */
     static final double ROUNDING_METRES = 1e-3;
 
-    private static final int CELLS = 128;
+    static final int CELLS = 128;
 
     /** How far the raster goes beyond the polygon's box, as a share of its sides: around a region there is an apron. */
     private static final double BEYOND = 0.125;

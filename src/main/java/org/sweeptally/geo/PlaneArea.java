@@ -17,6 +17,9 @@ public final class PlaneArea {
     /** Halvings of an edge, for edges so long that the tolerance cannot be had. */
     private static final int HALVINGS = 12;
 
+    /** So many questions cost as much without a raster as making it does: whoever asks less has no use for it. */
+    private static final int ASKED_BEFORE_RASTER = DistanceRaster.CELLS * DistanceRaster.CELLS;
+
     // Piece k runs from its southern end (fromEast, fromNorth) by (alongEast, alongNorth), up to toNorth.
     private final double[] fromEast;
     private final double[] fromNorth;
@@ -30,8 +33,10 @@ public final class PlaneArea {
     private final double maxNorth;
     private final double areaSquareMetres;
 
-    /** Made when first asked for: the area of one look, told in its part, has no use for it. */
+    /** Made when asked for often enough to be worth it: what is seen in one look has no use for it. */
     private DistanceRaster raster;
+
+    private int asked;
 
     /**
      * The polygon in the plane.
@@ -144,6 +149,10 @@ public final class PlaneArea {
             return false;
         }
         if (raster == null) {
+            if (asked < ASKED_BEFORE_RASTER) {
+                asked++;
+                return signedDistanceMetres(east, north) >= metres;
+            }
             raster = new DistanceRaster(this);
         }
         int quick = raster.isAtLeast(metres, east, north);
