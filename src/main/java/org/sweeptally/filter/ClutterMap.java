@@ -15,10 +15,10 @@ import org.sweeptally.model.Look;
  * How dense the false detections of each sensor are, by area. What is configured stands everywhere until something else
  * is learned, which only sensors do whose settings ask for it.
  *
- * <p>In a cell the configured density is multiplied by a ratio of unknown size, the same for long: a Gamma variable of mean 1,
- * of which Poisson counts tell more, and which is forgotten exponentially (Harvey and Fernandes 1989, "Time series models
- * for count or qualitative observations", JBES 7(4):407-417, from memory). A detection counts with the probability that it
- * is false: that no component caused it, nor an object of the unseen part. Its mean is
+ * <p>In a cell the configured density is multiplied by a ratio of unknown size, the same for long: a Gamma variable of
+ * mean 1, of which Poisson counts tell more, and which is forgotten exponentially (Harvey and Fernandes 1989, "Time
+ * series models for count or qualitative observations", JBES 7(4):407-417, from memory). A detection counts with the
+ * probability that it is false: that no component caused it, nor an object of the unseen part. Its mean is
  *
  * <pre>
  *   (shape + detections counted) / (shape + detections expected as configured)

@@ -97,7 +97,8 @@ public final class ObjectFilter {
         double[] clutter = clutterMap.clutterOf(scan);
         ScanHypotheses hypotheses = new ScanHypotheses(
                 components, scan, clutter, index, evidence, settings, counters, association, problem);
-        clutterMap.learn(scan, j -> hypotheses.nobodys(j) * (clutter[j] / (clutter[j] + evidence.total(j))), logTimeMicros);
+        clutterMap.learn(
+                scan, j -> hypotheses.nobodys(j) * (clutter[j] / (clutter[j] + evidence.total(j))), logTimeMicros);
 
         List<Component> begun = new NewComponents(
                         scan, logTimeMicros, clutter, unseen, evidence, components, settings, counters)

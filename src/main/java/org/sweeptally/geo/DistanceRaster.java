@@ -1,14 +1,16 @@
 package org.sweeptally.geo;
 
 /**
- * Bounds on the distance from a polygon's nearest edge without looking at its edges: the signed distance at the
- * centres of a raster over the polygon and a little beyond. Distance changes by at most a metre a metre, so that a point's differs from
- * its cell's centre's by at most the way between them. Most questions of "far enough inside?" end here, at the
- * cost of one look-up, however many edges the polygon has.
+ * Bounds on the distance from a polygon's nearest edge without looking at its edges: the signed distance at the centres
+ * of a raster over the polygon and a little beyond. Distance changes by at most a metre a metre, so that a point's
+ * differs from its cell's centre's by at most the way between them. Most questions of "far enough inside?" end here, at
+ * the cost of one look-up, however many edges the polygon has.
  */
 final class DistanceRaster {
 
-    /** What is as near as this to the distance asked for is left to the edges, so that rounding decides nothing here. */
+    /**
+     * What is as near as this to the distance asked for is left to the edges, so that rounding decides nothing here.
+     */
     static final double ROUNDING_METRES = 1e-3;
 
     static final int CELLS = 128;
@@ -44,7 +46,8 @@ final class DistanceRaster {
     }
 
     /**
-     * Whether the signed distance at a point is at least so much: 1 for yes, -1 for no, 0 where only the edges can tell.
+     * Whether the signed distance at a point is at least so much: 1 for yes, -1 for no, 0 where only the edges can
+     * tell.
      */
     int isAtLeast(double metres, double east, double north) {
         double column = (east - west) * perEast;

@@ -10,10 +10,10 @@ import java.util.Optional;
  * rounding.
  *
  * <p>A line of sight ends where it enters an obstacle: at the nearest edge that it crosses from the outside. An
- * obstacle in which the eye itself stands is seen over up to its outline, as from a mast on a headland, and hides what a line
- * enters again behind it. Between two neighbouring directions in which corners or crossings of edges lie, the nearest
- * such edge is the same in all directions, so it is found once for each, in the direction between them.
- * Cost: directions times edges within reach.
+ * obstacle in which the eye itself stands is seen over up to its outline, as from a mast on a headland, and hides what
+ * a line enters again behind it. Between two neighbouring directions in which corners or crossings of edges lie, the
+ * nearest such edge is the same in all directions, so it is found once for each, in the direction between them. Cost:
+ * directions times edges within reach.
  */
 public final class Obstacles {
 

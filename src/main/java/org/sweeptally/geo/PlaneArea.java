@@ -59,7 +59,8 @@ public final class PlaneArea {
     }
 
     /**
-     * The rings of a polygon in the plane, the outline first: its corners, and points between them that follow its edges.
+     * The rings of a polygon in the plane, the outline first: its corners, and points between them that follow its
+     * edges.
      *
      * @throws IllegalArgumentException if a corner does not face the plane
      */

@@ -3,7 +3,8 @@ package org.sweeptally.model;
 /**
  * How the density of a sensor's false detections by area is learned.
  *
- * @param seconds    how long what was learned is remembered: after so long e-fold less counts; infinite: nothing is learned
+ * @param seconds    how long what was learned is remembered: after so long e-fold less counts; infinite: nothing
+ *                   is learned
  * @param cellMetres side of the cells that are told apart
  */
 public record ClutterLearning(double seconds, double cellMetres) {

@@ -7,8 +7,8 @@ import org.sweeptally.geo.PlanePoint;
 
 /**
  * What a sensor can see from where it is, in a region's plane: a ring, of it the sectors, and of these what no obstacle
- * hides and no shadow covers. In it there may be areas with a probability of detection of their own; the first in the list that
- * holds a place decides for it.
+ * hides and no shadow covers. In it there may be areas with a probability of detection of their own; the first in the
+ * list that holds a place decides for it.
  */
 public final class FieldOfView {
 
@@ -165,7 +165,9 @@ public final class FieldOfView {
         return profile.at(rangeMetres(east, north));
     }
 
-    /** The same for all places within a distance of one, which are all seen; NaN where they differ by more than allowed. */
+    /**
+     * The same for all places within a distance of one, which are all seen; NaN where they differ by more than allowed.
+     */
     double probabilityWithin(DetectionProfile profile, double east, double north, double metres, double allowed) {
         for (DetectionArea area : areas) {
             if (area.area().isAtLeast(metres, east, north)) {
@@ -187,8 +189,8 @@ public final class FieldOfView {
     }
 
     /**
-     * Square metres that the sensor sees, wherever the region may be: exact for ring and sectors; of what lies in shadow
-     * or behind obstacles the share of {@link #RINGS} times {@link #SPOKES} points, spread evenly.
+     * Square metres that the sensor sees, wherever the region may be: exact for ring and sectors; of what lies in
+     * shadow or behind obstacles the share of {@link #RINGS} times {@link #SPOKES} points, spread evenly.
      */
     double seenSquareMetres() {
         if (Double.isNaN(seenSquareMetres)) {
@@ -220,7 +222,10 @@ public final class FieldOfView {
         return hidden;
     }
 
-    /** Of what the sensor looks at; at least one point's, so that a sensor that is wrongly said to see nothing has clutter. */
+    /**
+     * Of what the sensor looks at; at least one point's, so that a sensor that is wrongly said to see nothing has
+     * clutter.
+     */
     private double seenShare() {
         int looked = 0;
         int seen = 0;

@@ -5,8 +5,8 @@ import org.sweeptally.geo.PlaneArea;
 import org.sweeptally.geo.PlanePoint;
 
 /**
- * One look of one sensor, as a region hears it: the probability that it detects an object at a place. That is 0 where the
- * sensor cannot see, where the look did not look, and where the region does not hear.
+ * One look of one sensor, as a region hears it: the probability that it detects an object at a place. That is 0 where
+ * the sensor cannot see, where the look did not look, and where the region does not hear.
  */
 public final class Look {
 
@@ -90,9 +90,9 @@ public final class Look {
     }
 
     /**
-     * Probability of detecting an object that the sensor measured at a place. Whether the look looked there and the region
-     * hears it was decided by the place measured; whether the object stood in shadow by where it was, so that is averaged
-     * over the error.
+     * Probability of detecting an object that the sensor measured at a place. Whether the look looked there and the
+     * region hears it was decided by the place measured; whether the object stood in shadow by where it was, so that is
+     * averaged over the error.
      */
     public double probabilityOfDetection(Measurement z) {
         if (!isReported(z.east(), z.north())) {

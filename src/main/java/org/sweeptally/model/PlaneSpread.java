@@ -4,8 +4,8 @@ import org.ejml.data.DMatrix4x4;
 
 /**
  * 48 points of equal weight that stand for a Gaussian over positions: on four rings of equal probability, each at the
- * median distance of its quarter (Rayleigh distribution), turned against each other. The share of them beyond a straight
- * edge is that of the Gaussian within 0.06, wherever the edge lies and however it runs.
+ * median distance of its quarter (Rayleigh distribution), turned against each other. The share of them beyond a
+ * straight edge is that of the Gaussian within 0.06, wherever the edge lies and however it runs.
  */
 public final class PlaneSpread {
 

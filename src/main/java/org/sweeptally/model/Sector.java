@@ -1,8 +1,8 @@
 package org.sweeptally.model;
 
 /**
- * A sector around a sensor, in a plane: all directions clockwise from one to another. Its edges are kept as unit vectors
- * [east, north], so that no question about it needs an angle.
+ * A sector around a sensor, in a plane: all directions clockwise from one to another. Its edges are kept as unit
+ * vectors [east, north], so that no question about it needs an angle.
  *
  * @param widthRadians clockwise from the first edge to the last, more than 0 and less than 2 pi
  */

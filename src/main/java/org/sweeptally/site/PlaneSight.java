@@ -15,7 +15,10 @@ import org.sweeptally.model.Sector;
 import org.sweeptally.site.SightSettings.AreaSettings;
 import org.sweeptally.site.SightSettings.SectorSettings;
 
-/** A sensor's field of view in a region's plane, from wherever it is; the last one is kept, since most sensors stand still. */
+/**
+ * A sensor's field of view in a region's plane, from wherever it is; the last one is kept, since most sensors stand
+ * still.
+ */
 public final class PlaneSight {
 
     private final SensorSettings sensor;
@@ -79,7 +82,8 @@ public final class PlaneSight {
     private FieldOfView view(LatLon position, Double headingDegrees) {
         PlanePoint eye = plane.toPlane(position);
         double reach = sensor.reachMetres();
-        Optional<PlaneArea> open = Double.isNaN(eye.eastMetres()) ? Optional.empty() : obstacles.visibleFrom(eye, reach);
+        Optional<PlaneArea> open =
+                Double.isNaN(eye.eastMetres()) ? Optional.empty() : obstacles.visibleFrom(eye, reach);
         double turned = StrictMath.toDegrees(plane.convergenceRadians(position));
         double heading = sensor.sight().sectorsFromHeading() && headingDegrees != null ? headingDegrees : 0;
         List<Sector> sectors = sensor.sight().sectors().stream()

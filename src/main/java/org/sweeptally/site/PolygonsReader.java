@@ -35,8 +35,10 @@ final class PolygonsReader {
         } else if (node instanceof Node.Sequence list && !list.items().isEmpty()) {
             list.items().forEach(item -> polygons.read(item).ifPresent(all::add));
         } else {
-            faults.add(node.at(), node.shown(), "must be the name of a GeoJSON file, or a list of polygons, each a list of"
-                    + " rings");
+            faults.add(
+                    node.at(),
+                    node.shown(),
+                    "must be the name of a GeoJSON file, or a list of polygons, each a list of rings");
         }
         check(node, all);
         return all;

@@ -59,7 +59,8 @@ final class SensorReader {
 
     private SensorSettings sensor(String name, Fields fields) {
         Optional<LatLon> position = fields.optional("position").map(this::position);
-        Optional<GeoPolygon> roams = fields.optional("roams").flatMap(node -> RegionsReader.onePolygon(node, files, faults));
+        Optional<GeoPolygon> roams =
+                fields.optional("roams").flatMap(node -> RegionsReader.onePolygon(node, files, faults));
         if (fields.has("position") && fields.has("roams")) {
             faults.add(fields.at("roams"), "", "must be absent for a sensor with a position, which does not move");
         }

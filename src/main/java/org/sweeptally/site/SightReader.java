@@ -92,14 +92,16 @@ final class SightReader {
         List<AreaSettings> areas = new ArrayList<>();
         for (Node item : list.items()) {
             Fields fields = Fields.of(item, "polygon, and factor or probability", faults);
-            Optional<GeoPolygon> polygon = fields.required("polygon", "a list of rings, or a GeoJSON file with one polygon")
+            Optional<GeoPolygon> polygon = fields.required(
+                            "polygon", "a list of rings, or a GeoJSON file with one polygon")
                     .flatMap(shape -> RegionsReader.onePolygon(shape, files, faults));
             boolean isFactor = fields.has("factor");
             if (isFactor && fields.has("probability")) {
                 faults.add(fields.at("factor"), "", "must be absent where probability is given");
             }
             fields.optional("factor");
-            double value = isFactor ? fields.number("factor", FACTOR) : fields.number("probability", Allowed.PROBABILITY);
+            double value =
+                    isFactor ? fields.number("factor", FACTOR) : fields.number("probability", Allowed.PROBABILITY);
             fields.optional("probability");
             fields.end();
             polygon.ifPresent(shape -> areas.add(new AreaSettings(shape, value, isFactor)));

@@ -8,8 +8,8 @@ import org.sweeptally.geo.GeoPolygon;
  *
  * @param leastRangeMetres   nearer than this it sees nothing
  * @param sectors            that it looks into; none for all around
- * @param sectorsFromHeading whether their azimuths count from where the platform points, where a part says so, rather than
- *                           from true north
+ * @param sectorsFromHeading whether their azimuths count from where the platform points, where a part says so, rather
+ *                           than from true north
  * @param shadows            in which it sees nothing, wherever it is
  * @param obstacles          that hide what lies behind them, seen from where it is, and themselves
  * @param areas              in which its probability of detection is another; the first that holds a place decides

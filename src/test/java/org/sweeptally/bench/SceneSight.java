@@ -22,7 +22,9 @@ public enum SceneSight {
     /** All around, with one probability of detection. */
     DISC,
 
-    /** A least range, two sectors, probability by range, 10 shadows, 5 areas and 10 islands of 12 corners, all small. */
+    /**
+     * A least range, two sectors, probability by range, 10 shadows, 5 areas and 10 islands of 12 corners, all small.
+     */
     CHARTED,
 
     /** All around, with clutter learned in cells of a twentieth of the world's side. */

@@ -34,7 +34,9 @@ final class ClutterWorld {
 
     static final List<Real> REALS = reals();
 
-    /** What came of a run: false births in the last hour, scans shown and there by object, seconds until first shown. */
+    /**
+     * What came of a run: false births in the last hour, scans shown and there by object, seconds until first shown.
+     */
     static final class Outcome {
         int falseBirthsInDense;
         int falseBirthsElsewhere;
