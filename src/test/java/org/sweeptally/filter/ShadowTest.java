@@ -20,6 +20,9 @@ class ShadowTest {
     private static final double PERIOD = 2.5;
     private static final double SPEED = 8;
 
+    /** That of {@link FilterScene#settings}. */
+    private static final double LIFETIME_SECONDS = 600;
+
     private final FilterScene scene = new FilterScene(4000, 200, 6000);
     private final FilterSettings settings = FilterScene.settings();
 
@@ -88,7 +91,7 @@ class ShadowTest {
         for (int scan = 1; scan <= 24; scan++) {
             filter.predict(PERIOD);
             filter.update(FilterScene.scan(0, look(List.of(wide)), new double[0]), 0);
-            double survived = before * Math.exp(-scan * PERIOD / settings.lifetimeSeconds());
+            double survived = before * Math.exp(-scan * PERIOD / LIFETIME_SECONDS);
             assertThat(shown(filter).existence()).isCloseTo(survived, within(1e-12));
         }
     }
@@ -98,7 +101,7 @@ class ShadowTest {
         PlaneArea half = rectangle(-2300, -2300, 0, 2300);
         // Objects that hardly move, born everywhere; none in the beginning.
         double births = 1e-9;
-        double lifetime = settings.lifetimeSeconds();
+        double lifetime = LIFETIME_SECONDS;
         FilterSettings still = still(births);
         UnseenGrid grid = new UnseenGrid(still, scene.core(), scene.apronMetres());
         Look look = look(List.of(half));
@@ -118,12 +121,10 @@ class ShadowTest {
     }
 
     /** A grid whose objects do not move. */
-    private FilterSettings still(double births) {
-        FilterSettings s = settings;
+    private static FilterSettings still(double births) {
         return new FilterSettings(
-                s.accelerationNoise(), 1e-9, s.lifetimeSeconds(), births, 0, 0, s.confirming(), s.ending(),
-                s.recyclingBelow(), s.gateSigmas(), s.unseenCellMetres(), s.components(), s.unseenTerms(),
-                s.exactAssociationSteps(), s.propagationSweeps(), s.leastTermWeight(), s.gatedPairs());
+                0.05, 1e-9, LIFETIME_SECONDS, births, 0, 0, 0.7, 0.3, 0.1, 5, 100, 1000, 5000, 200_000, 1000, 1e-5,
+                2_000_000);
     }
 
     @Test
