@@ -41,7 +41,7 @@ class SkerriesDryRunTest {
 
     /** Two craft, by where they are and how they sail: the first passes behind the skerries as the radar sees it. */
     private static final double[][] VESSELS = {
-        {-27.9985, 47.0065, 0.5, -6.5}, // longitude and latitude of the start, metres a second east and north
+        {-27.9985, 47.0073, 0.5, -9}, // longitude and latitude of the start, metres a second east and north
         {-28.0150, 47.0000, 5, -1.5},
     };
 

@@ -125,7 +125,8 @@ class ClutterMapTest {
             assertThat(inPlain).as("seed %d", seed).isBetween(0.85, 1.15);
         }
         assertThat(dense[1]).isLessThan((dense[0] + 1) / 2);
-        assertThat(elsewhere[1]).isLessThanOrEqualTo(elsewhere[0] + 2);
+        // A Poisson number of more than a hundred either way: a quarter more would be two standard errors.
+        assertThat(elsewhere[1]).isLessThan(elsewhere[0] * 5 / 4);
     }
 
     @Test

@@ -83,7 +83,7 @@ class SiteFaultsTest {
         "clutterPerScan: 20 | shadows: [] | shadows: is a list, must be the name of a GeoJSON file, or a list of polygons",
         "clutterPerScan: 20 | shadows: lee.geojson | shadows: is lee.geojson, must be written out here",
         "clutterPerScan: 20 | obstacles: [[[[-33.4, 44], [-33.3, 44], [-33.4, 44.1]]]] | obstacles[0][0]: the ring is not closed",
-        "clutterPerScan: 20 | obstacles: [[[[-33.4, 44], [-3.3, 44], [-33.4, 44.1], [-33.4, 44]]]] | obstacles: a polygon is 2384 km across, must be at most 1000 km",
+        "clutterPerScan: 20 | obstacles: [[[[-33.4, 44], [-3.3, 44], [-33.4, 44.1], [-33.4, 44]]]] | obstacles: a polygon is 2387 km across, must be at most 1000 km",
         "clutterPerScan: 20 | areas: [{factor: 0.5}] | areas[0].polygon: is missing, must be a list of rings",
         "clutterPerScan: 20 | areas: [{polygon: [[[-33.4, 44], [-33.3, 44], [-33.4, 44.1], [-33.4, 44]]], factor: 1.5}] | areas[0].factor: is 1.5, must be more than 0, at most 1",
         "clutterPerScan: 20 | areas: [{polygon: [[[-33.4, 44], [-33.3, 44], [-33.4, 44.1], [-33.4, 44]]], factor: 0.5, probability: 0.5}] | areas[0].factor: must be absent where probability is given",
