@@ -93,12 +93,13 @@ final class CheckForecast {
                 && scene.core().contains(component.density().east(), component.density().north());
     }
 
-    /** False detections of a scan, uniform over the part of the reach that the region hears. */
+    /** False detections of a scan, uniform over what the sensor sees and the region hears. */
     private List<Observation> clutter(SensorSettings sensor, SplittableRandom random) {
         PlanePoint at = scene.positionOf(sensor);
         Look look = scene.look(sensor);
         List<Observation> observations = new ArrayList<>();
-        for (int left = poisson(sensor.clutterPerScan(), random); left > 0; left--) {
+        double disc = StrictMath.PI * sensor.reachMetres() * sensor.reachMetres();
+        for (int left = poisson(look.clutterPerSquareMetre() * disc, random); left > 0; left--) {
             double range = sensor.reachMetres() * Math.sqrt(random.nextDouble());
             double angle = 2 * StrictMath.PI * random.nextDouble();
             double east = at.eastMetres() + range * StrictMath.sin(angle);

@@ -57,17 +57,24 @@ final class CheckReport {
     }
 
     private static void covering(SiteScene scene, List<SensorSettings> sensors, PrintStream out) {
-        TextTable table = new TextTable("  sensor", "reaches %", "picture waits for it s", "or if it is silent s");
+        TextTable table = new TextTable(
+                "  sensor", "reaches %", "in shadow %", "sees %", "picture waits for it s", "or if it is silent s");
         for (SensorSettings sensor : sensors) {
-            double share = 100 * scene.shareWithinReach(sensor);
+            SiteScene.Shares shares = scene.shares(sensor);
             table.row(
                     "  " + sensor.name(),
-                    (share < 1 ? "< 1" : String.format(Locale.ROOT, "%.0f", share))
-                            + (sensor.position().isPresent() ? "" : " from the middle"),
+                    percent(shares.reached()),
+                    percent(shares.hidden()),
+                    percent(shares.seen()) + (sensor.position().isPresent() ? "" : " from the middle"),
                     waiting(sensor, sensors.size() == 1),
                     number(sensor.silentSeconds()));
         }
         table.print(out);
+        out.printf("  seen by no sensor: %s %%%n", percent(scene.shareUnseen()));
+    }
+
+    private static String percent(double share) {
+        return share > 0 && share < 0.01 ? "< 1" : String.format(Locale.ROOT, "%.0f", 100 * share);
     }
 
     private static String waiting(SensorSettings sensor, boolean alone) {

@@ -1,12 +1,16 @@
 package org.sweeptally.cli;
 
 import java.util.List;
+import java.util.Map;
 import java.util.Optional;
+import java.util.TreeMap;
 import org.sweeptally.geo.LocalPlane;
 import org.sweeptally.geo.PlaneArea;
 import org.sweeptally.geo.PlanePoint;
+import org.sweeptally.model.FieldOfView;
 import org.sweeptally.model.Look;
 import org.sweeptally.region.PartRouter;
+import org.sweeptally.site.PlaneSight;
 import org.sweeptally.site.RegionSettings;
 import org.sweeptally.site.SensorSettings;
 import org.sweeptally.site.Site;
@@ -21,6 +25,7 @@ final class SiteScene {
     private final RegionSettings region;
     private final LocalPlane plane;
     private final PlaneArea core;
+    private final Map<String, PlaneSight> sights = new TreeMap<>();
 
     SiteScene(Site site, RegionSettings region) {
         this.site = site;
@@ -53,23 +58,56 @@ final class SiteScene {
         return sensor.position().map(plane::toPlane).orElse(new PlanePoint(0, 0));
     }
 
+    /** A look over all that a sensor can see; one whose sectors count from its heading is taken to head north. */
     Look look(SensorSettings sensor) {
-        return new Look(sensor.model(), positionOf(sensor), Optional.empty(), core, region.apronMetres());
+        return new Look(sensor.model(), view(sensor), Optional.empty(), core, region.apronMetres());
     }
 
-    /** Share of the core's area that a sensor reaches, 0 to 1. */
-    double shareWithinReach(SensorSettings sensor) {
-        Look look = look(sensor);
+    private FieldOfView view(SensorSettings sensor) {
+        return sights.computeIfAbsent(sensor.name(), name -> new PlaneSight(sensor, plane))
+                .from(sensor.position().orElse(plane.origin()), null);
+    }
+
+    /**
+     * Shares of the core's area, 0 to 1.
+     *
+     * @param reached within the sensor's ring and sectors
+     * @param hidden  of all, what is within them and in shadow or behind an obstacle
+     */
+    record Shares(double reached, double hidden) {
+
+        double seen() {
+            return reached - hidden;
+        }
+    }
+
+    Shares shares(SensorSettings sensor) {
+        FieldOfView view = view(sensor);
+        double reached = share(view::looksAt);
+        return new Shares(reached, reached - share(view::sees));
+    }
+
+    /** Share of the core's area that no sensor sees. */
+    double shareUnseen() {
+        List<FieldOfView> views = sensors().stream().map(this::view).toList();
+        return share((east, north) -> views.stream().noneMatch(view -> view.sees(east, north)));
+    }
+
+    private interface PlaceTest {
+        boolean holds(double east, double north);
+    }
+
+    private double share(PlaceTest test) {
         int inside = 0;
-        int reached = 0;
+        int hits = 0;
         for (int i = 0; i < RASTER * RASTER; i++) {
             PlanePoint point = rasterPoint(i);
             if (core.contains(point.eastMetres(), point.northMetres())) {
                 inside++;
-                reached += look.probabilityOfDetection(point.eastMetres(), point.northMetres()) > 0 ? 1 : 0;
+                hits += test.holds(point.eastMetres(), point.northMetres()) ? 1 : 0;
             }
         }
-        return inside == 0 ? 0 : (double) reached / inside;
+        return inside == 0 ? 0 : (double) hits / inside;
     }
 
     /** The place nearest to the middle that some sensor sees; empty if none sees any of the core. */

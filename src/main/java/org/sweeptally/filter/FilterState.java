@@ -15,7 +15,8 @@ final class FilterState {
 
     private FilterState() {}
 
-    static void write(DataOutput out, List<Component> components, Unseen unseen, Counters counters)
+    static void write(
+            DataOutput out, List<Component> components, Unseen unseen, ClutterMap clutterMap, Counters counters)
             throws IOException {
         out.writeInt(components.size());
         for (Component component : components) {
@@ -39,10 +40,17 @@ final class FilterState {
         for (UnseenGrid grid : unseen.grids()) {
             grid.write(out);
         }
+        clutterMap.write(out);
         counters.write(out);
     }
 
-    static void read(DataInput in, int modes, List<Component> components, Unseen unseen, Counters counters)
+    static void read(
+            DataInput in,
+            int modes,
+            List<Component> components,
+            Unseen unseen,
+            ClutterMap clutterMap,
+            Counters counters)
             throws IOException {
         int size = in.readInt();
         for (int i = 0; i < size; i++) {
@@ -58,6 +66,7 @@ final class FilterState {
         for (UnseenGrid grid : unseen.grids()) {
             grid.read(in);
         }
+        clutterMap.read(in);
         counters.read(in);
     }
 

@@ -4,7 +4,6 @@ import java.io.DataInput;
 import java.io.DataOutput;
 import java.io.IOException;
 import java.util.ArrayList;
-import java.util.Arrays;
 import java.util.Collections;
 import java.util.Comparator;
 import java.util.List;
@@ -38,6 +37,7 @@ public final class ObjectFilter {
     private final Association association = new Association();
     private final AssociationProblem problem = new AssociationProblem();
     private final Unseen unseen;
+    private final ClutterMap clutterMap;
 
     private FilterSettings settings;
     private Modes modes;
@@ -53,12 +53,14 @@ public final class ObjectFilter {
         this.apronMetres = apronMetres;
         this.modes = new Modes(settings.profiles());
         this.unseen = new Unseen(settings, modes, core, apronMetres, counters);
+        this.clutterMap = new ClutterMap(core, apronMetres);
     }
 
     /** Goes on with other settings, and perhaps with another apron. */
     public void settings(FilterSettings changed, double changedApronMetres) {
         Modes changedModes = new Modes(changed.profiles());
         unseen.settings(changed, changedModes, changedApronMetres);
+        clutterMap.apron(changedApronMetres);
         if (!changedModes.isLaidOutAs(modes)) {
             for (Component component : components) {
                 component.bank = changedModes.begin(component.density());
@@ -76,6 +78,11 @@ public final class ObjectFilter {
 
     public Counters counters() {
         return counters;
+    }
+
+    /** What has been learned of the density of false detections. */
+    ClutterMap clutterMap() {
+        return clutterMap;
     }
 
     /** Lets time pass, 0 seconds or more: survival, motion, births, inflow. */
@@ -97,11 +104,13 @@ public final class ObjectFilter {
         counters.add(Counters.Name.SCANS, 1);
         counters.add(Counters.Name.OBSERVATIONS, scan.observations().size());
         DetectionIndex index = new DetectionIndex(scan.observations());
-        double[] clutter = clutterOf(scan);
+        double[] clutter = clutterMap.clutterOf(scan);
         UnseenEvidence evidence = unseen.evidence(scan, logTimeMicros, index);
         ScanHypotheses hypotheses = new ScanHypotheses(
                 components, scan, logTimeMicros, index, clutter, evidence, settings, modes.count(), counters, association,
                 problem);
+        clutterMap.learn(
+                scan, j -> hypotheses.nobodys(j) * (clutter[j] / (clutter[j] + evidence.total(j))), logTimeMicros);
 
         List<Component> begun = new NewComponents(
                         scan, logTimeMicros, unseen, evidence, clutter, components, settings, counters)
@@ -114,13 +123,6 @@ public final class ObjectFilter {
         ScanResult result = sortOut();
         unseen.tidy();
         return result;
-    }
-
-    /** Density of false detections at each observation, per square metre. */
-    private static double[] clutterOf(Scan scan) {
-        double[] clutter = new double[scan.observations().size()];
-        Arrays.fill(clutter, scan.look().clutterPerSquareMetre());
-        return clutter;
     }
 
     /** Confirms, recycles and lets go. */
@@ -214,7 +216,7 @@ public final class ObjectFilter {
 
     /** Writes the whole state, exact to the bit. */
     public void write(DataOutput out) throws IOException {
-        FilterState.write(out, components, unseen, counters);
+        FilterState.write(out, components, unseen, clutterMap, counters);
     }
 
     /**
@@ -225,7 +227,8 @@ public final class ObjectFilter {
     public static ObjectFilter read(DataInput in, FilterSettings settings, PlaneArea core, double apronMetres)
             throws IOException {
         ObjectFilter filter = new ObjectFilter(settings, core, apronMetres);
-        FilterState.read(in, filter.modes.count(), filter.components, filter.unseen, filter.counters);
+        FilterState.read(
+                in, filter.modes.count(), filter.components, filter.unseen, filter.clutterMap, filter.counters);
         return filter;
     }
 }

@@ -116,8 +116,8 @@ final class ScanHypotheses {
             int j = gate.observation(c);
             double there = constant;
             if (Double.isNaN(constant)) {
-                Measurement z = scan.observations().get(j).measurement();
-                there = look.probabilityOfDetection(z.east(), z.north());
+                there = look.probabilityOfDetection(
+                        scan.observations().get(j).measurement());
             }
             there = times == 1 ? there : Math.min(1, there * times);
             int at = problem.pairs() * modes;

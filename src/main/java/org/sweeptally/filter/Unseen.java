@@ -112,7 +112,7 @@ final class Unseen {
         UnseenEvidence evidence = new UnseenEvidence(observations.size(), grids.size());
         for (int j = 0; j < observations.size(); j++) {
             Measurement z = observations.get(j).measurement();
-            double detection = scan.look().probabilityOfDetection(z.east(), z.north());
+            double detection = scan.look().probabilityOfDetection(z);
             for (int p = 0; p < grids.size(); p++) {
                 double density = detection > 0 ? detection * grids.get(p).density(z.east(), z.north()) : 0;
                 evidence.addGrid(j, p, density);
@@ -145,7 +145,7 @@ final class Unseen {
             double detection = everywhere;
             if (Double.isNaN(everywhere)) {
                 Measurement z = scan.observations().get(gate.observation(c)).measurement();
-                detection = scan.look().probabilityOfDetection(z.east(), z.north());
+                detection = scan.look().probabilityOfDetection(z);
             }
             detection = times == 1 ? detection : Math.min(1, detection * times);
             evidence.addTerm(gate.observation(c), t, term.weight * detection * gate.likelihood(c));

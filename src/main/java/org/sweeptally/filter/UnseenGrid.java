@@ -4,6 +4,8 @@ import java.io.DataInput;
 import java.io.DataOutput;
 import java.io.IOException;
 import java.util.Arrays;
+import java.util.SortedMap;
+import java.util.TreeMap;
 import org.sweeptally.geo.PlaneArea;
 import org.sweeptally.model.Look;
 import org.sweeptally.model.MotionProfile;
@@ -41,6 +43,9 @@ final class UnseenGrid {
     /** Sub-points along a side of a cell for shares of its area. */
     private static final int SUBPOINTS = 4;
 
+    /** Of a cell, as a multiple of its side. */
+    private static final double HALF_DIAGONAL = Math.sqrt(0.5);
+
     private final double west;
     private final double south;
     private final double side;
@@ -55,8 +60,10 @@ final class UnseenGrid {
     private final int[] openSides;
     private final double[] mass;
 
-    private Look lastLook;
-    private double[] lastProbability;
+    /** By sensor: the last look that looked everywhere, and the probability of detection by cell that it had. */
+    private final SortedMap<String, Seen> seen = new TreeMap<>();
+
+    private record Seen(Look look, double[] probability) {}
 
     UnseenGrid(FilterSettings settings, PlaneArea core, double apronMetres) {
         side = settings.unseenCellMetres();
@@ -170,10 +177,11 @@ final class UnseenGrid {
         }
     }
 
-    /** Probability of detection by cell, kept for as long as looks see the same. */
+    /** Probability of detection by cell, kept for as long as looks of the sensor see the same. */
     private double[] probabilityByCell(Look look) {
-        if (lastLook != null && look.seesAs(lastLook)) {
-            return lastProbability;
+        Seen before = seen.get(look.sensor().name());
+        if (before != null && look.seesAs(before.look())) {
+            return before.probability();
         }
         double[] probability = new double[mass.length];
         for (int row = 0; row < rows; row++) {
@@ -184,20 +192,25 @@ final class UnseenGrid {
                 }
             }
         }
-        lastLook = look;
-        lastProbability = probability;
+        seen.put(look.sensor().name(), new Seen(look, probability));
         return probability;
     }
 
+    /** Over the cell: where an edge of what is seen crosses it, the mean over points spread evenly in it. */
     private double averageProbability(Look look, int row, int column) {
+        double constant = look.constantWithin(
+                west + (column + 0.5) * side, south + (row + 0.5) * side, side * HALF_DIAGONAL);
+        if (!Double.isNaN(constant)) {
+            return constant;
+        }
         double sum = 0;
-        for (int i = 0; i < 2; i++) {
-            for (int j = 0; j < 2; j++) {
+        for (int i = 0; i < SUBPOINTS; i++) {
+            for (int j = 0; j < SUBPOINTS; j++) {
                 sum += look.probabilityOfDetection(
-                        west + (column + 0.25 + 0.5 * i) * side, south + (row + 0.25 + 0.5 * j) * side);
+                        west + (column + (i + 0.5) / SUBPOINTS) * side, south + (row + (j + 0.5) / SUBPOINTS) * side);
             }
         }
-        return sum / 4;
+        return sum / (SUBPOINTS * SUBPOINTS);
     }
 
     /** Objects per square metre at a place, linear between the centres of cells; 0 outside the grid. */

@@ -17,6 +17,9 @@ public final class PlaneArea {
     /** Halvings of an edge, for edges so long that the tolerance cannot be had. */
     private static final int HALVINGS = 12;
 
+    /** So many questions cost as much without a raster as making it does: whoever asks less has no use for it. */
+    private static final int ASKED_BEFORE_RASTER = DistanceRaster.CELLS * DistanceRaster.CELLS;
+
     // Piece k runs from its southern end (fromEast, fromNorth) by (alongEast, alongNorth), up to toNorth.
     private final double[] fromEast;
     private final double[] fromNorth;
@@ -30,8 +33,10 @@ public final class PlaneArea {
     private final double maxNorth;
     private final double areaSquareMetres;
 
-    /** Made when first asked for: the area of one look, told in its part, has no use for it. */
+    /** Made when asked for often enough to be worth it: what is seen in one look has no use for it. */
     private DistanceRaster raster;
+
+    private int asked;
 
     /**
      * The polygon in the plane.
@@ -39,13 +44,31 @@ public final class PlaneArea {
      * @throws IllegalArgumentException if a corner does not face the plane
      */
     public static PlaneArea of(GeoPolygon polygon, LocalPlane plane) {
+        return ofRings(rings(polygon, plane));
+    }
+
+    /** The polygon whose rings are given by their corners in the plane: the outline, then the holes. */
+    public static PlaneArea ofRings(List<List<PlanePoint>> rings) {
         List<PlanePoint[]> pieces = new ArrayList<>();
-        double area = Math.abs(addRing(polygon.outer(), plane, pieces));
+        double area = Math.abs(addRing(rings.get(0), pieces));
         int outerPieces = pieces.size();
-        for (List<LatLon> hole : polygon.holes()) {
-            area -= Math.abs(addRing(hole, plane, pieces));
+        for (List<PlanePoint> hole : rings.subList(1, rings.size())) {
+            area -= Math.abs(addRing(hole, pieces));
         }
         return new PlaneArea(pieces, outerPieces, area);
+    }
+
+    /**
+     * The rings of a polygon in the plane, the outline first: its corners, and points between them that follow its
+     * edges.
+     *
+     * @throws IllegalArgumentException if a corner does not face the plane
+     */
+    public static List<List<PlanePoint>> rings(GeoPolygon polygon, LocalPlane plane) {
+        List<List<PlanePoint>> rings = new ArrayList<>();
+        rings.add(ring(polygon.outer(), plane));
+        polygon.holes().forEach(hole -> rings.add(ring(hole, plane)));
+        return rings;
     }
 
     private PlaneArea(List<PlanePoint[]> pieces, int outerPieces, double areaSquareMetres) {
@@ -120,14 +143,29 @@ public final class PlaneArea {
 
     /**
      * Whether the signed distance of a point is at least so much, metres. The same answer as from
-     * {@link #signedDistanceMetres}, but for points well inside without a pass over the pieces.
+     * {@link #signedDistanceMetres}, but for points well inside or far outside without a pass over the pieces.
      */
     public boolean isAtLeast(double metres, double east, double north) {
+        if (isFarther(-metres, east, north)) {
+            return false;
+        }
         if (raster == null) {
+            if (asked < ASKED_BEFORE_RASTER) {
+                asked++;
+                return signedDistanceMetres(east, north) >= metres;
+            }
             raster = new DistanceRaster(this);
         }
         int quick = raster.isAtLeast(metres, east, north);
         return quick == 0 ? signedDistanceMetres(east, north) >= metres : quick > 0;
+    }
+
+    /** Whether a point is outside the box around the polygon, by more than so many metres and a rounding. */
+    private boolean isFarther(double metres, double east, double north) {
+        double beyondEast = Math.max(minEast - east, east - maxEast);
+        double beyondNorth = Math.max(minNorth - north, north - maxNorth);
+        double beyond = Math.max(beyondEast, beyondNorth);
+        return beyond > 0 && beyond > metres + DistanceRaster.ROUNDING_METRES;
     }
 
     /**
@@ -162,20 +200,26 @@ public final class PlaneArea {
     }
 
     /** Adds a ring's pieces; returns its area, positive for a ring that runs counter-clockwise. */
-    private static double addRing(List<LatLon> ring, LocalPlane plane, List<PlanePoint[]> pieces) {
+    private static double addRing(List<PlanePoint> ring, List<PlanePoint[]> pieces) {
         double twice = 0;
-        PlanePoint first = plane.toPlane(ring.get(0));
+        PlanePoint first = ring.get(0);
         for (int i = 0; i < ring.size(); i++) {
-            List<PlanePoint> points = followed(ring.get(i), ring.get((i + 1) % ring.size()), plane);
-            for (int j = 1; j < points.size(); j++) {
-                PlanePoint a = points.get(j - 1);
-                PlanePoint b = points.get(j);
-                pieces.add(new PlanePoint[] {a, b});
-                twice += (a.eastMetres() - first.eastMetres()) * (b.northMetres() - first.northMetres())
-                        - (b.eastMetres() - first.eastMetres()) * (a.northMetres() - first.northMetres());
-            }
+            PlanePoint a = ring.get(i);
+            PlanePoint b = ring.get((i + 1) % ring.size());
+            pieces.add(new PlanePoint[] {a, b});
+            twice += (a.eastMetres() - first.eastMetres()) * (b.northMetres() - first.northMetres())
+                    - (b.eastMetres() - first.eastMetres()) * (a.northMetres() - first.northMetres());
         }
         return twice / 2;
+    }
+
+    private static List<PlanePoint> ring(List<LatLon> corners, LocalPlane plane) {
+        List<PlanePoint> ring = new ArrayList<>();
+        for (int i = 0; i < corners.size(); i++) {
+            List<PlanePoint> points = followed(corners.get(i), corners.get((i + 1) % corners.size()), plane);
+            ring.addAll(points.subList(0, points.size() - 1));
+        }
+        return ring;
     }
 
     /** Points from a to b along their edge, computed in one direction whichever way the ring runs. */

@@ -40,8 +40,16 @@ public record DetectionProfile(List<Point> points) {
         return before.probability();
     }
 
-    /** Whether the probability is the same at every distance. */
-    public boolean isConstant() {
-        return points.stream().allMatch(p -> p.probability() == points.get(0).probability());
+    /** By how much the probability differs between two distances in metres: its greatest less its least. */
+    double spread(double fromMetres, double toMetres) {
+        double least = Math.min(at(fromMetres), at(toMetres));
+        double greatest = Math.max(at(fromMetres), at(toMetres));
+        for (Point point : points) {
+            if (point.rangeMetres() > fromMetres && point.rangeMetres() < toMetres) {
+                least = Math.min(least, point.probability());
+                greatest = Math.max(greatest, point.probability());
+            }
+        }
+        return greatest - least;
     }
 }

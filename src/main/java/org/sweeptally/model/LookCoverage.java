@@ -19,21 +19,8 @@ public record LookCoverage(
     public static final LookCoverage NOTHING =
             new LookCoverage(Double.POSITIVE_INFINITY, Double.POSITIVE_INFINITY, 0, 2 * StrictMath.PI, Optional.empty());
 
-    private static final double TURN = 2 * StrictMath.PI;
-
-    /** Whether the look looked at a place, given by its offset from the sensor and by its coordinates in the plane. */
-    boolean covers(double offsetEast, double offsetNorth, double east, double north) {
-        double squared = offsetEast * offsetEast + offsetNorth * offsetNorth;
-        if (squared < fromMetres * fromMetres || squared > toMetres * toMetres) {
-            return false;
-        }
-        if (widthRadians < TURN) {
-            double into = StrictMath.atan2(offsetEast, offsetNorth) - fromAzimuthRadians;
-            into -= TURN * Math.floor(into / TURN);
-            if (into > widthRadians) {
-                return false;
-            }
-        }
-        return area.isEmpty() || area.get().contains(east, north);
+    /** Whether it is limited to a sector. */
+    boolean hasSector() {
+        return widthRadians < 2 * StrictMath.PI;
     }
 }

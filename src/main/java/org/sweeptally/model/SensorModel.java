@@ -6,19 +6,20 @@ package org.sweeptally.model;
  * @param name           the sensor's name
  * @param reachMetres    beyond it the probability of detection is 0
  * @param detection      probability of detection by distance
- * @param clutterPerScan expected number of false detections in a scan of the whole reach, which is a disc
+ * @param clutterPerScan expected number of false detections in a scan of all that the sensor can see
  * @param misses         how its misses come
+ * @param learning       whether and how clutter by area is learned
  */
 public record SensorModel(
-        String name, double reachMetres, DetectionProfile detection, double clutterPerScan, MissRuns misses) {
+        String name,
+        double reachMetres,
+        DetectionProfile detection,
+        double clutterPerScan,
+        MissRuns misses,
+        ClutterLearning learning) {
 
-    /** A sensor whose misses are independent of each other. */
+    /** A sensor whose misses are independent of each other, and whose clutter is what it is said to be. */
     public SensorModel(String name, double reachMetres, DetectionProfile detection, double clutterPerScan) {
-        this(name, reachMetres, detection, clutterPerScan, MissRuns.NONE);
-    }
-
-    /** Expected number of false detections per square metre and scan. */
-    public double clutterPerSquareMetre() {
-        return clutterPerScan / (StrictMath.PI * reachMetres * reachMetres);
+        this(name, reachMetres, detection, clutterPerScan, MissRuns.NONE, ClutterLearning.OFF);
     }
 }

@@ -3,7 +3,9 @@ package org.sweeptally.region;
 import java.util.ArrayList;
 import java.util.Comparator;
 import java.util.List;
+import java.util.NavigableMap;
 import java.util.Optional;
+import java.util.TreeMap;
 import java.util.function.Function;
 import org.sweeptally.event.Coverage;
 import org.sweeptally.event.Detection;
@@ -16,8 +18,10 @@ import org.sweeptally.geo.GeoPolygon;
 import org.sweeptally.geo.LatLon;
 import org.sweeptally.geo.LocalPlane;
 import org.sweeptally.geo.PlaneArea;
+import org.sweeptally.model.FieldOfView;
 import org.sweeptally.model.Look;
 import org.sweeptally.model.LookCoverage;
+import org.sweeptally.site.PlaneSight;
 import org.sweeptally.site.SensorSettings;
 
 /**
@@ -27,6 +31,7 @@ import org.sweeptally.site.SensorSettings;
 final class ScanConversion {
 
     private final RegionArea area;
+    private final NavigableMap<String, PlaneSight> sights = new TreeMap<>();
 
     ScanConversion(RegionArea area) {
         this.area = area;
@@ -49,7 +54,17 @@ final class ScanConversion {
 
     private Look look(ScanParts scan, SensorSettings sensor, LatLon position) {
         Optional<LookCoverage> coverage = spoken(scan, Part::getCoverage).map(c -> coverage(c, position));
-        return new Look(sensor.model(), area.plane().toPlane(position), coverage, area.core(), area.apronMetres());
+        FieldOfView view = sightOf(sensor).from(position, spoken(scan, Part::getSensorHeadingDegrees).orElse(null));
+        return new Look(sensor.model(), view, coverage, area.core(), area.apronMetres());
+    }
+
+    private PlaneSight sightOf(SensorSettings sensor) {
+        PlaneSight known = sights.get(sensor.name());
+        if (known == null || !known.sensor().equals(sensor)) {
+            known = new PlaneSight(sensor, area.plane());
+            sights.put(sensor.name(), known);
+        }
+        return known;
     }
 
     /**

@@ -76,6 +76,49 @@ public final class EffectiveSettings {
         line(2, "leastIntervalSeconds", sensor.leastIntervalSeconds());
         line(2, "disorderSeconds", sensor.disorderSeconds());
         line(2, "silentSeconds", sensor.silentSeconds());
+        sight(sensor.sight());
+        line(2, "misses", "{hiddenSeconds: " + Numbers.shortest(sensor.misses().hiddenSeconds())
+                + ", detectableProbability: " + Numbers.shortest(sensor.misses().detectableProbability()) + "}");
+        if (sensor.clutterLearning().isOn()) {
+            line(2, "clutterLearning", "{seconds: " + Numbers.shortest(sensor.clutterLearning().seconds())
+                    + ", cellMetres: " + Numbers.shortest(sensor.clutterLearning().cellMetres()) + "}");
+        }
+    }
+
+    private void sight(SightSettings sight) {
+        line(2, "leastRangeMetres", sight.leastRangeMetres());
+        if (!sight.sectors().isEmpty()) {
+            open(2, "sectors");
+            sight.sectors().forEach(sector -> item(3, "{fromAzimuthDegrees: "
+                    + Numbers.shortest(sector.fromAzimuthDegrees()) + ", toAzimuthDegrees: "
+                    + Numbers.shortest(sector.toAzimuthDegrees()) + "}"));
+            line(2, "sectorsFromHeading", Boolean.toString(sight.sectorsFromHeading()));
+        }
+        polygons("shadows", sight.shadows());
+        polygons("obstacles", sight.obstacles());
+        if (!sight.areas().isEmpty()) {
+            open(2, "areas");
+        }
+        for (SightSettings.AreaSettings area : sight.areas()) {
+            item(3, (area.isFactor() ? "factor: " : "probability: ") + Numbers.shortest(area.value()));
+            polygon(4, "polygon", area.polygon());
+        }
+    }
+
+    private void polygons(String key, List<GeoPolygon> polygons) {
+        if (!polygons.isEmpty()) {
+            open(2, key);
+        }
+        for (GeoPolygon polygon : polygons) {
+            item(3, "");
+            ring(4, polygon.outer());
+            polygon.holes().forEach(hole -> ring(4, hole));
+        }
+    }
+
+    private void item(int depth, String value) {
+        indent(depth);
+        out.append(value.isEmpty() ? "-" : "- ").append(value).append('\n');
     }
 
     private static String profile(DetectionProfile profile) {

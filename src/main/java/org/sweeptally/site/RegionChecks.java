@@ -23,6 +23,9 @@ final class RegionChecks {
     /** A grid of unseen objects beyond this is computed at every scan for nothing. */
     static final long LARGEST_GRID_CELLS = 1_000_000;
 
+    /** Each of them is aged at every scan of the sensor. */
+    static final long LARGEST_CLUTTER_CELLS = 40_000;
+
     private final Faults faults;
 
     RegionChecks(Faults faults) {
@@ -106,6 +109,27 @@ final class RegionChecks {
                         "cells of " + Numbers.shortest(cell) + " m over the region and its apron of "
                                 + tenths(region.apronMetres()) + " m are more than " + LARGEST_GRID_CELLS
                                 + ", must be fewer: larger cells or a smaller apron");
+            }
+        }
+    }
+
+    /** The grid of learned clutter of each sensor in each region. */
+    void clutterGrids(List<SensorSettings> sensors, Node sensorsNode, List<RegionSettings> regions) {
+        for (SensorSettings sensor : sensors) {
+            double cell = sensor.clutterLearning().cellMetres();
+            boolean tooMany = sensor.clutterLearning().isOn() && regions.stream().anyMatch(region -> {
+                PlaneArea area = PlaneArea.of(region.core(), new LocalPlane(region.core().middle()));
+                double columns = (area.maxEast() - area.minEast() + 2 * region.apronMetres()) / cell;
+                double rows = (area.maxNorth() - area.minNorth() + 2 * region.apronMetres()) / cell;
+                return columns * rows > LARGEST_CLUTTER_CELLS;
+            });
+            if (tooMany) {
+                Node settings = ((Node.Mapping) sensorsNode).entries().get(sensor.name());
+                faults.add(
+                        ((Node.Mapping) settings).entries().get("clutterLearning").at(),
+                        "",
+                        "cells of " + Numbers.shortest(cell) + " m over a region and its apron are more than "
+                                + LARGEST_CLUTTER_CELLS + ", must be fewer: a larger cellMetres");
             }
         }
     }

@@ -41,8 +41,8 @@ final class RegionsReader {
         return List.copyOf(reader.regions.values());
     }
 
-    /** A polygon that a moving sensor roams: rings written out, or a GeoJSON file with one polygon. */
-    static Optional<GeoPolygon> roams(Node node, SiteFiles files, Faults faults) {
+    /** One polygon: rings written out, or a GeoJSON file with it alone. */
+    static Optional<GeoPolygon> onePolygon(Node node, SiteFiles files, Faults faults) {
         RegionsReader reader = new RegionsReader(files, faults);
         if (node instanceof Node.Scalar scalar && scalar.text() != null && !scalar.text().isBlank()) {
             return files.geoJson(scalar.text(), node.at()).flatMap(reader::onlyPolygon);
@@ -135,11 +135,11 @@ final class RegionsReader {
         return Optional.empty();
     }
 
-    private static boolean isOfType(Node node, String type) {
+    static boolean isOfType(Node node, String type) {
         return entry(node, "type") instanceof Node.Scalar scalar && type.equals(scalar.text());
     }
 
-    private static Node entry(Node node, String key) {
+    static Node entry(Node node, String key) {
         return node instanceof Node.Mapping mapping ? mapping.entries().get(key) : null;
     }
 }

@@ -7,7 +7,9 @@ import java.util.Optional;
 import java.util.TreeMap;
 import org.sweeptally.geo.GeoPolygon;
 import org.sweeptally.geo.LatLon;
+import org.sweeptally.model.ClutterLearning;
 import org.sweeptally.model.DetectionProfile;
+import org.sweeptally.model.MissRuns;
 import org.sweeptally.site.SensorSettings.PositionNoise;
 
 /** Reads sensors. One with faults still comes out, its wrong numbers NaN. */
@@ -21,6 +23,16 @@ final class SensorReader {
     private static final Allowed SECONDS_OR_NONE = Allowed.from(0, 31_536_000);
     private static final Allowed COUNT = Allowed.moreThanZero(1_000_000);
     private static final Allowed RANGE = Allowed.from(0, 1_000_000);
+
+    private static final Allowed HIDDEN = Allowed.from(0, 86_400);
+    private static final Allowed DETECTABLE = Allowed.moreThanZero(1);
+
+    /** Learned faster than this, an object that is there for a while would be taken for clutter. */
+    private static final Allowed LEARNING = Allowed.from(600, 31_536_000);
+
+    private static final double LEAST_CLUTTER_CELL_METRES = 25;
+    private static final double CLUTTER_CELLS_PER_REACH = 20;
+    private static final Allowed CLUTTER_CELL = Allowed.from(LEAST_CLUTTER_CELL_METRES, 100_000);
 
     private final SiteFiles files;
     private final Faults faults;
@@ -47,7 +59,8 @@ final class SensorReader {
 
     private SensorSettings sensor(String name, Fields fields) {
         Optional<LatLon> position = fields.optional("position").map(this::position);
-        Optional<GeoPolygon> roams = fields.optional("roams").flatMap(node -> RegionsReader.roams(node, files, faults));
+        Optional<GeoPolygon> roams =
+                fields.optional("roams").flatMap(node -> RegionsReader.onePolygon(node, files, faults));
         if (fields.has("position") && fields.has("roams")) {
             faults.add(fields.at("roams"), "", "must be absent for a sensor with a position, which does not move");
         }
@@ -69,6 +82,10 @@ final class SensorReader {
                     Numbers.shortest(leastInterval),
                     "must be at most intervalSeconds, " + Numbers.shortest(interval));
         }
+        SightSettings sight = new SightReader(files, faults).read(fields, reach);
+        MissRuns misses = fields.optional("misses").map(this::misses).orElse(MissRuns.NONE);
+        ClutterLearning learning =
+                fields.optional("clutterLearning").map(node -> learning(node, reach)).orElse(ClutterLearning.OFF);
         fields.end();
         return new SensorSettings(
                 name,
@@ -82,7 +99,10 @@ final class SensorReader {
                 sweep,
                 leastInterval,
                 disorder,
-                silent);
+                silent,
+                sight,
+                misses,
+                learning);
     }
 
     private LatLon position(Node node) {
@@ -109,6 +129,24 @@ final class SensorReader {
         }
         fields.optional("sigmaMetres");
         return new PositionNoise(fields.number("alongSigmaMetres", SIGMA), fields.number("acrossSigmaMetres", SIGMA));
+    }
+
+    private MissRuns misses(Node node) {
+        Fields fields = Fields.of(node, "hiddenSeconds and detectableProbability", faults);
+        MissRuns misses = new MissRuns(
+                fields.number("hiddenSeconds", HIDDEN), fields.number("detectableProbability", DETECTABLE));
+        fields.end();
+        return misses;
+    }
+
+    /** Cells so large that a usual scan's clutter tells something of them within the time, where none are given. */
+    private ClutterLearning learning(Node node, double reachMetres) {
+        Fields fields = Fields.of(node, "seconds, and cellMetres", faults);
+        double usual = Math.min(100_000, Math.max(LEAST_CLUTTER_CELL_METRES, reachMetres / CLUTTER_CELLS_PER_REACH));
+        ClutterLearning learning = new ClutterLearning(
+                fields.number("seconds", LEARNING), fields.number("cellMetres", CLUTTER_CELL, usual));
+        fields.end();
+        return learning;
     }
 
     private DetectionProfile profile(Node node) {

@@ -82,7 +82,10 @@ final class SiteAssembly {
         checks.grids(sound, regions);
         // A sensor may reach just the region that is faulty, or an apron whose depth is not known.
         if (faults.size() == faultsBefore && !Double.isNaN(apron)) {
-            sensorsNode.ifPresent(node -> checks.reaches(sensors, node, regions));
+            sensorsNode.ifPresent(node -> {
+                checks.reaches(sensors, node, regions);
+                checks.clutterGrids(sensors, node, regions);
+            });
         }
         return regions;
     }

@@ -40,12 +40,16 @@ final class ScanScene {
     private final byte[] state;
 
     ScanScene(int objects, long seed) {
+        this(objects, seed, SceneSight.DISC);
+    }
+
+    ScanScene(int objects, long seed, SceneSight sight) {
         WorldSettings world =
                 WorldSettings.fourKilometres(MARGIN_METRES, 20).grownTo(objects).withScans(SCANS_BEFORE + 1);
         core = FilterScene.square(world.sideMetres() / 2);
         settings = withCell(ModelRun.settings(world, 0.5, 0.4), CELL_METRES);
         seconds = world.periodSeconds();
-        Look look = ModelRun.look(world, core);
+        Look look = sight.of(ModelRun.look(world, core), world, core);
         List<SimulatedScan> scans = SimulatedWorld.scans(world, seed);
         ObjectFilter filter = new ObjectFilter(settings, core, MARGIN_METRES);
         for (int k = 0; k < SCANS_BEFORE - 1; k++) {

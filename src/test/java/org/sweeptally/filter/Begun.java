@@ -34,7 +34,8 @@ final class Begun {
         Unseen unseen = new Unseen(settings, new Modes(settings.profiles()), SCENE.core(), SCENE.apronMetres(), counters);
         try {
             ByteArrayOutputStream bytes = new ByteArrayOutputStream();
-            FilterState.write(new DataOutputStream(bytes), List.of(component), unseen, counters);
+            FilterState.write(new DataOutputStream(bytes), List.of(component), unseen,
+                    new ClutterMap(SCENE.core(), SCENE.apronMetres()), counters);
             return ObjectFilter.read(
                     new DataInputStream(new ByteArrayInputStream(bytes.toByteArray())), settings, SCENE.core(),
                     SCENE.apronMetres());

@@ -262,7 +262,8 @@ class OutsideChecksTest {
         ByteArrayOutputStream bytes = new ByteArrayOutputStream();
         Counters counters = new Counters();
         Unseen unseen = new Unseen(settings, new Modes(settings.profiles()), scene.core(), scene.apronMetres(), counters);
-        FilterState.write(new DataOutputStream(bytes), List.of(components), unseen, counters);
+        FilterState.write(new DataOutputStream(bytes), List.of(components), unseen,
+                new ClutterMap(scene.core(), scene.apronMetres()), counters);
         DataInputStream in = new DataInputStream(new ByteArrayInputStream(bytes.toByteArray()));
         return ObjectFilter.read(in, settings, scene.core(), scene.apronMetres());
     }

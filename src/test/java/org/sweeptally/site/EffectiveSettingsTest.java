@@ -15,8 +15,10 @@ import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
 import org.sweeptally.geo.GeoPolygon;
 import org.sweeptally.geo.LatLon;
+import org.sweeptally.model.ClutterLearning;
 import org.sweeptally.model.CoordinatedTurn;
 import org.sweeptally.model.DetectionProfile;
+import org.sweeptally.model.MissRuns;
 import org.sweeptally.model.MotionMode;
 import org.sweeptally.model.MotionProfile;
 import org.sweeptally.model.NearlyConstantVelocity;
@@ -284,7 +286,32 @@ class EffectiveSettingsTest {
                 random.nextDouble(0, 3),
                 random.nextDouble(0, interval),
                 random.nextDouble(0, 3),
-                random.nextDouble(1, 60));
+                random.nextDouble(1, 60),
+                randomSight(random, south, west, position.isEmpty()),
+                random.nextBoolean() ? MissRuns.NONE : new MissRuns(random.nextDouble(0, 60), random.nextDouble(.1, 1)),
+                random.nextBoolean()
+                        ? ClutterLearning.OFF
+                        : new ClutterLearning(random.nextDouble(600, 5000), random.nextDouble(300, 900)));
+    }
+
+    private static SightSettings randomSight(SplittableRandom random, double south, double west, boolean moves) {
+        List<SightSettings.SectorSettings> sectors = random.nextBoolean()
+                ? List.of()
+                : List.of(
+                        new SightSettings.SectorSettings(random.nextDouble(-180, -90), random.nextDouble(-80, -10)),
+                        new SightSettings.SectorSettings(random.nextDouble(0, 90), random.nextDouble(95, 160)));
+        List<SightSettings.AreaSettings> areas = new ArrayList<>();
+        for (int i = random.nextInt(3); i > 0; i--) {
+            areas.add(new SightSettings.AreaSettings(
+                    cell(random, south, west, true), random.nextDouble(.1, 1), random.nextBoolean()));
+        }
+        return new SightSettings(
+                random.nextBoolean() ? 0 : random.nextDouble(0, 99),
+                sectors,
+                moves && !sectors.isEmpty() && random.nextBoolean(),
+                random.nextBoolean() ? List.of() : List.of(cell(random, south, west, true), cell(random, south, west, true)),
+                random.nextBoolean() ? List.of() : List.of(cell(random, south, west, true)),
+                areas);
     }
 
     private static Site valid(SiteResult result) {

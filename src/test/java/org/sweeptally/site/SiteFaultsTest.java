@@ -74,6 +74,24 @@ class SiteFaultsTest {
         "detectionProbability: 0.9 | detectionProbability: [{rangeMetres: 5, probability: .5}, {rangeMetres: 4, probability: .5}] | detectionProbability[1].rangeMetres: is 4, must be more than the range before it, 5",
         "intervalSeconds: 2.5 | leastIntervalSeconds: 9 | settings:5: sensors.radar.intervalSeconds: is missing",
         "clutterPerScan: 20 | leastIntervalSeconds: 9 | leastIntervalSeconds: is 9, must be at most intervalSeconds, 2.5",
+        "clutterPerScan: 20 | leastRangeMetres: 9000 | leastRangeMetres: is 9000, must be less than reachMetres, 9000",
+        "clutterPerScan: 20 | sectors: 3 | sensors.radar.sectors: is 3, must be a list of {fromAzimuthDegrees, toAzimuthDegrees}",
+        "clutterPerScan: 20 | sectors: [{fromAzimuthDegrees: 400, toAzimuthDegrees: 4}] | sectors[0].fromAzimuthDegrees: is 400, must be from -360 to 360",
+        "clutterPerScan: 20 | sectors: [{fromAzimuthDegrees: 0, toAzimuthDegrees: 360}] | sectors[0].toAzimuthDegrees: is 360, must point elsewhere than fromAzimuthDegrees",
+        "clutterPerScan: 20 | sectors: [{fromAzimuthDegrees: 350, toAzimuthDegrees: 20}, {fromAzimuthDegrees: 10, toAzimuthDegrees: 30}] | sectors[1]: overlaps the sector [0], must not",
+        "clutterPerScan: 20 | sectorsFromHeading: true | sectorsFromHeading: is true, must be absent or false for a sensor with a position",
+        "clutterPerScan: 20 | shadows: [] | shadows: is a list, must be the name of a GeoJSON file, or a list of polygons",
+        "clutterPerScan: 20 | shadows: lee.geojson | shadows: is lee.geojson, must be written out here",
+        "clutterPerScan: 20 | obstacles: [[[[-33.4, 44], [-33.3, 44], [-33.4, 44.1]]]] | obstacles[0][0]: the ring is not closed",
+        "clutterPerScan: 20 | obstacles: [[[[-33.4, 44], [-3.3, 44], [-33.4, 44.1], [-33.4, 44]]]] | obstacles: a polygon is 2387 km across, must be at most 1000 km",
+        "clutterPerScan: 20 | areas: [{factor: 0.5}] | areas[0].polygon: is missing, must be a list of rings",
+        "clutterPerScan: 20 | areas: [{polygon: [[[-33.4, 44], [-33.3, 44], [-33.4, 44.1], [-33.4, 44]]], factor: 1.5}] | areas[0].factor: is 1.5, must be more than 0, at most 1",
+        "clutterPerScan: 20 | areas: [{polygon: [[[-33.4, 44], [-33.3, 44], [-33.4, 44.1], [-33.4, 44]]], factor: 0.5, probability: 0.5}] | areas[0].factor: must be absent where probability is given",
+        "clutterPerScan: 20 | areas: [{polygon: [[[-33.4, 44], [-33.3, 44], [-33.4, 44.1], [-33.4, 44]]]}] | areas[0].probability: is missing, must be a number more than 0 and less than 1",
+        "clutterPerScan: 20 | misses: {hiddenSeconds: -1, detectableProbability: 0.9} | misses.hiddenSeconds: is -1, must be from 0 to 86400",
+        "clutterPerScan: 20 | misses: {hiddenSeconds: 6, detectableProbability: 1.2} | misses.detectableProbability: is 1.2, must be more than 0, at most 1",
+        "clutterPerScan: 20 | clutterLearning: {seconds: 300} | clutterLearning.seconds: is 300, must be from 600 to 31536000",
+        "clutterPerScan: 20 | clutterLearning: {seconds: 900, cellMetres: 5} | clutterLearning.cellMetres: is 5, must be from 25 to 100000",
         "latitude: 44.05, | latitude: 91, | settings:6: sensors.radar.position.latitude: is 91, must be from -90 to 90",
         "latitude: 44.05, | latitude: -44.05, | reachMetres: is 9000, must reach the apron of at least one region",
         "position: {latitude: 44.05, longitude: -33.45} | roams: basin.geojson | roams: is basin.geojson, must be written out here",
@@ -101,6 +119,32 @@ class SiteFaultsTest {
     void oneFaultTellsNoOther() {
         String changed = SOUND.replace("reachMetres: 9000", "reachMetres: -3");
         assertThat(((SiteResult.Faulty) SiteReader.readText(changed)).faults()).hasSize(1);
+    }
+
+    @Test
+    void cellsOfLearnedClutterMustNotBeTooMany() {
+        String changed = SOUND.replace("clutterPerScan: 20", "clutterPerScan: 20\n    clutterLearning: {seconds: 900, cellMetres: 25}");
+        assertThat(lines(SiteReader.readText(changed)))
+                .contains("settings:11: sensors.radar.clutterLearning: cells of 25 m over a region and its apron are more than");
+    }
+
+    @Test
+    void shadowsAndObstaclesMayBeInAFileInAnyFormThatChartsAreExportedIn() throws IOException {
+        String polygon = "[[[-33.4, 44], [-33.3, 44], [-33.4, 44.1], [-33.4, 44]]]";
+        String one = "{\"type\": \"Polygon\", \"coordinates\": " + polygon + "}";
+        String many = "{\"type\": \"MultiPolygon\", \"coordinates\": [" + polygon + ", " + polygon + "]}";
+        String feature = "{\"type\": \"Feature\", \"geometry\": " + many + "}";
+        String collection = "{\"type\": \"FeatureCollection\", \"features\": [" + feature + ", {\"type\": \"Feature\","
+                + " \"geometry\": " + one + "}]}";
+        Path file = folder.resolve("site.yaml");
+        Files.writeString(file, SOUND.replace("clutterPerScan: 20", "clutterPerScan: 20\n    shadows: lee.geojson"));
+        for (var expected : java.util.Map.of(one, 1, many, 2, feature, 2, collection, 3).entrySet()) {
+            Files.writeString(folder.resolve("lee.geojson"), expected.getKey());
+            Site site = ((SiteResult.Valid) SiteReader.read(file)).site();
+            assertThat(site.sensors().get(0).sight().shadows()).hasSize(expected.getValue());
+        }
+        Files.writeString(folder.resolve("lee.geojson"), "{\"type\": \"Point\", \"coordinates\": [1, 2]}");
+        assertThat(lines(SiteReader.read(file))).contains("must be a GeoJSON Polygon or MultiPolygon");
     }
 
     /** The same corners along the edge they share: no overlap, whatever the numbers. */
