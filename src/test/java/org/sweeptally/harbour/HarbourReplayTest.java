@@ -43,7 +43,7 @@ class HarbourReplayTest {
     }
 
     @ParameterizedTest
-    @CsvSource({"radar, 8.8, 0.6, 5.0", "radar+lidar, 7.3, 1.15, 5.0"})
+    @CsvSource({"radar, 8.6, 0.3, 5.0", "radar+lidar, 6.9, 0.5, 5.0"})
     void theVesselsAreShownWhereTheyAreUnderOneIdentity(String sensors, double metres, double changes, double confirmed)
             throws IOException {
         List<String> names = List.of(sensors.split("\\+"));
