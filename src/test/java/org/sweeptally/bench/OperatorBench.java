@@ -159,7 +159,7 @@ public final class OperatorBench {
         }
     }
 
-    /** Parts a second over a backlog that lies there whole before the start, from the first routed to the last count. */
+    /** Parts a second over a backlog laid down whole before the start, from the first routed to the last count. */
     double throughput(Kind kind, Load load, String... further) throws Exception {
         Site site = BenchBus.newSite(load.regions(), load.sensors(), 500);
         int parts = Backlog.lay(site, load);
@@ -244,8 +244,9 @@ public final class OperatorBench {
             int before = watch.seen().size();
             Predicate<CountWatch.Seen> isNew = count ->
                     sensor.sentNanos().getOrDefault(count.scanTimeMicros(), 0L) > killNanos;
-            watch.until("a new count on every partition", () -> watch.seen().subList(before, watch.seen().size())
-                    .stream().filter(isNew).map(CountWatch.Seen::partition).distinct().count() == site.regions().size());
+            watch.until("a new count on every partition", () -> watch.seen().stream()
+                            .skip(before).filter(isNew).map(CountWatch.Seen::partition).distinct().count()
+                    == site.regions().size());
             return (System.nanoTime() - killNanos) / 1e9;
         } finally {
             killed.destroyForcibly();

@@ -57,7 +57,9 @@ public final class RecordedScans {
         long offset = 0;
         for (Part part : recording) {
             SourcePosition source = new SourcePosition(0, offset++);
-            decoder.decode(Wire.encode(part), Optional.of(source)).body().ifPresent(body -> machines.part(body, source));
+            decoder.decode(Wire.encode(part), Optional.of(source))
+                    .body()
+                    .ifPresent(body -> machines.part(body, source));
         }
         for (RegionMachine machine : machines.machines()) {
             recorded.snapshots.put(machine.region(), Snapshot.of(machine, 0, 0, offset));

@@ -32,8 +32,8 @@ import org.sweeptally.region.wire.Wire;
 /**
  * The operator with the regions' machines taken out: the same topics, router, settings of the bus, commits and stores,
  * and in place of the machines something that decodes each entry and writes, for each closed scan, the records that a
- * machine made of the same scans beforehand ({@link RecordedScans}), encoded anew each time, and as many snapshots. What
- * the operator takes beyond it is the machine's: order of the scans, filter, making of the records. With nothing
+ * machine made of the same scans beforehand ({@link RecordedScans}), encoded anew each time, and as many snapshots.
+ * What the operator takes beyond it is the machine's: order of the scans, filter, making of the records. With nothing
  * recorded it is the bare floor, which writes a record of a count's size a closed scan and nothing else.
  */
 public final class TransportFloor implements AutoCloseable {
