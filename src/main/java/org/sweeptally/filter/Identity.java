@@ -1,6 +1,7 @@
 package org.sweeptally.filter;
 
 import java.time.Instant;
+import java.time.LocalDateTime;
 import java.time.ZoneOffset;
 import java.time.format.DateTimeFormatter;
 import java.time.format.DateTimeFormatterBuilder;
@@ -27,9 +28,30 @@ public record Identity(String sensor, long scanTimeMicros, int part, int index) 
 
     /** As published: sensor, time, part and index, such as {@code north-shore-20310501T040042.500000Z-0-3}. */
     public String text() {
-        Instant time = Instant.ofEpochSecond(
-                Math.floorDiv(scanTimeMicros, 1_000_000L), Math.floorMod(scanTimeMicros, 1_000_000L) * 1000);
-        return sensor + "-" + TIME.format(time) + "-" + part + "-" + index;
+        LocalDateTime time = LocalDateTime.ofEpochSecond(Math.floorDiv(scanTimeMicros, 1_000_000L), 0, ZoneOffset.UTC);
+        if (time.getYear() < 1 || time.getYear() > 9999) {
+            int nanos = (int) Math.floorMod(scanTimeMicros, 1_000_000L) * 1000;
+            return sensor + "-" + TIME.format(time.withNano(nanos).atOffset(ZoneOffset.UTC)) + "-" + part + "-" + index;
+        }
+        // Digit by digit, since every track names its object anew, and a formatter is slow.
+        StringBuilder text = new StringBuilder(sensor.length() + 32).append(sensor).append('-');
+        digits(text, time.getYear(), 1000);
+        digits(text, time.getMonthValue(), 10);
+        digits(text, time.getDayOfMonth(), 10);
+        text.append('T');
+        digits(text, time.getHour(), 10);
+        digits(text, time.getMinute(), 10);
+        digits(text, time.getSecond(), 10);
+        text.append('.');
+        digits(text, (int) Math.floorMod(scanTimeMicros, 1_000_000L), 100_000);
+        return text.append("Z-").append(part).append('-').append(index).toString();
+    }
+
+    /** @param first value of the first digit */
+    private static void digits(StringBuilder text, int number, int first) {
+        for (int value = first; value > 0; value /= 10) {
+            text.append((char) ('0' + number / value % 10));
+        }
     }
 
     /**

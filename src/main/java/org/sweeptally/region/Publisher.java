@@ -42,16 +42,17 @@ final class Publisher {
     void publish(ScanParts scan, int revision, ObjectFilter filter, ScanResult result, MachineOutputs out) {
         sequence++;
         ScanRecords records = new ScanRecords(area, scan, sequence);
-        NavigableMap<Identity, Component> shown = shown(filter);
+        NavigableMap<Identity, Shown> shown = shown(filter);
         int births = 0;
-        for (Component component : shown.values()) {
+        for (Shown object : shown.values()) {
+            Component component = object.component();
             if (!published.containsKey(component.identity())) {
-                out.birth(records.birth(component));
+                out.birth(records.birth(component, object.place()));
                 component.markBorn();
                 published.put(component.identity(), Micros.BEFORE_ALL);
                 births++;
             }
-            track(records.track(component, filter.tellsStill()), component.identity(), out);
+            track(records.track(component, object.place(), filter.tellsStill()), component.identity(), out);
         }
         int ends = endOthers(shown, filter, result, records, out);
         Count count = records.count(filter, shown.size(), births, ends, revision);
@@ -62,18 +63,20 @@ final class Publisher {
         }
     }
 
-    private NavigableMap<Identity, Component> shown(ObjectFilter filter) {
-        NavigableMap<Identity, Component> shown = new TreeMap<>();
+    /** A component that is in the picture, and where on the ellipsoid its mean is. */
+    private record Shown(Component component, LatLon place) {}
+
+    private NavigableMap<Identity, Shown> shown(ObjectFilter filter) {
+        NavigableMap<Identity, Shown> shown = new TreeMap<>();
         for (Component component : filter.components()) {
-            if (component.confirmed() && area.owns(placeOf(component))) {
-                shown.put(component.identity(), component);
+            if (component.confirmed()) {
+                LatLon place = ScanRecords.placeOf(component, area);
+                if (area.owns(place)) {
+                    shown.put(component.identity(), new Shown(component, place));
+                }
             }
         }
         return shown;
-    }
-
-    private LatLon placeOf(Component component) {
-        return ScanRecords.placeOf(component, area);
     }
 
     private void track(Track track, Identity identity, MachineOutputs out) {
@@ -94,16 +97,17 @@ final class Publisher {
 
     /** Ends whatever was published and is not shown any more; says how many. */
     private int endOthers(
-            NavigableMap<Identity, Component> shown,
+            NavigableMap<Identity, Shown> shown,
             ObjectFilter filter,
             ScanResult result,
             ScanRecords records,
             MachineOutputs out) {
-        List<Identity> ended =
-                published.keySet().stream().filter(identity -> !shown.containsKey(identity)).toList();
-        if (ended.isEmpty()) {
+        // All that is shown has been published, so equal numbers mean that nothing else has.
+        if (published.size() == shown.size()) {
             return 0;
         }
+        List<Identity> ended =
+                published.keySet().stream().filter(identity -> !shown.containsKey(identity)).toList();
         NavigableMap<Identity, Ending> endings = endings(filter, result);
         for (Identity identity : ended) {
             Ending ending = endings.get(identity);

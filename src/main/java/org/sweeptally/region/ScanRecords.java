@@ -3,6 +3,7 @@ package org.sweeptally.region;
 import java.util.ArrayList;
 import java.util.List;
 import org.ejml.data.DMatrix4;
+import org.ejml.data.DMatrix4x4;
 import org.sweeptally.event.Birth;
 import org.sweeptally.event.Count;
 import org.sweeptally.event.DeclaredIdentity;
@@ -40,8 +41,8 @@ final class ScanRecords {
         return area.plane().toGeodetic(new PlanePoint(component.density().east(), component.density().north()));
     }
 
-    Birth birth(Component component) {
-        LatLon place = placeOf(component, area);
+    /** @param place where its mean is */
+    Birth birth(Component component, LatLon place) {
         return Birth.newBuilder()
                 .setObject(component.identity().text())
                 .setRegion(area.name())
@@ -58,9 +59,11 @@ final class ScanRecords {
                 .build();
     }
 
-    /** @param tellsStill whether the site tells still objects from moving ones */
-    Track track(Component component, boolean tellsStill) {
-        LatLon place = placeOf(component, area);
+    /**
+     * @param place      where its mean is
+     * @param tellsStill whether the site tells still objects from moving ones
+     */
+    Track track(Component component, LatLon place, boolean tellsStill) {
         DMatrix4 mean = component.density().mean;
         return Track.newBuilder()
                 .setObject(component.identity().text())
@@ -96,9 +99,10 @@ final class ScanRecords {
 
     private static List<Double> covariance(Component component) {
         List<Double> numbers = new ArrayList<>(16);
-        for (double[] row : Covariances.rows(component.density().covariance)) {
-            for (double value : row) {
-                numbers.add(value);
+        DMatrix4x4 covariance = component.density().covariance;
+        for (int row = 0; row < 4; row++) {
+            for (int column = 0; column < 4; column++) {
+                numbers.add(covariance.get(row, column));
             }
         }
         return numbers;
@@ -158,8 +162,9 @@ final class ScanRecords {
     }
 
     private static NumberDistribution distribution(org.sweeptally.filter.count.NumberDistribution number) {
-        List<Double> band = new ArrayList<>();
-        for (double probability : number.band()) {
+        double[] probabilities = number.band();
+        List<Double> band = new ArrayList<>(probabilities.length);
+        for (double probability : probabilities) {
             band.add(probability);
         }
         return NumberDistribution.newBuilder()

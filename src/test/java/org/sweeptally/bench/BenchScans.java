@@ -8,8 +8,8 @@ import org.sweeptally.event.GeodeticFix;
 import org.sweeptally.event.Part;
 
 /**
- * Scans of one sensor over the invented estuary: anchored and slowly sailing objects that are always
- * reported, with noise, and for every ten detections one false one.
+ * Scans of one or several sensors by turns over the invented estuary: anchored and slowly sailing objects that are
+ * always reported, with noise, and for every ten detections one false one.
  */
 final class BenchScans {
 
@@ -21,9 +21,15 @@ final class BenchScans {
     private final double[] latitudes;
     private final double[] longitudes;
     private final int clutter;
+    private final List<String> sensors;
+    private int turn;
 
-    /** @param detections in each scan */
-    BenchScans(int detections, long seed) {
+    /**
+     * @param detections in each scan
+     * @param sensors    names, in the order of their turns
+     */
+    BenchScans(int detections, List<String> sensors, long seed) {
+        this.sensors = sensors;
         random = new Random(seed);
         clutter = detections / 10;
         latitudes = random.doubles(detections - clutter, 43.988, 44.012).toArray();
@@ -69,7 +75,7 @@ final class BenchScans {
             add(detections, 43.985 + 0.03 * random.nextDouble(), -33.523 + 0.046 * random.nextDouble());
         }
         return Part.newBuilder()
-                .setSensor("north-shore")
+                .setSensor(sensors.get(turn++ % sensors.size()))
                 .setScanTimeMicros(scanTimeMicros)
                 .setClosesScan(true)
                 .setDetections(detections)

@@ -7,10 +7,11 @@ import org.apache.kafka.clients.producer.KafkaProducer;
 import org.apache.kafka.clients.producer.ProducerRecord;
 import org.sweeptally.event.Part;
 import org.sweeptally.region.wire.Wire;
+import org.sweeptally.site.SensorSettings;
 import org.sweeptally.site.Site;
 import org.sweeptally.stream.BenchBus;
 
-/** A sensor that sends a closing part at a steady pace until it is closed, in real time, and keeps when each was sent. */
+/** Sensors that by turns send a closing part at a steady pace until closed, in real time; keeps when each was sent. */
 final class LiveSensor implements AutoCloseable {
 
     private static final byte[] KEY = {'n'};
@@ -27,7 +28,7 @@ final class LiveSensor implements AutoCloseable {
     private void send(Site site, int detections, long intervalMillis) {
         var settings = BenchBus.clients().producer("live-sensor");
         settings.put("linger.ms", "0");
-        BenchScans scans = new BenchScans(detections, 1);
+        BenchScans scans = new BenchScans(detections, site.sensors().stream().map(SensorSettings::name).toList(), 1);
         try (KafkaProducer<byte[], byte[]> producer = new KafkaProducer<>(settings)) {
             long next = System.nanoTime();
             while (!closing) {

@@ -8,6 +8,7 @@ import java.util.List;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
 import org.sweeptally.region.wire.Wire;
+import org.sweeptally.stream.BenchBus;
 
 /** Keeps {@link OperatorBench} from rotting: it runs, small, and what comes out is printed and looked at. */
 class OperatorBenchTest {
@@ -16,14 +17,15 @@ class OperatorBenchTest {
     private Path folder;
 
     @Test
-    void floorAndOperatorMakeACountOfEveryScanInEveryRegion() throws Exception {
+    void floorsAndOperatorMakeACountOfEveryScanInEveryRegion() throws Exception {
         OperatorBench bench = new OperatorBench(folder);
-        double floor = bench.throughput(false, 5, 1, 40);
-        double operator = bench.throughput(true, 5, 1, 40);
-        System.out.println("operator bench, 40 scans of 5: floor " + floor + ", operator " + operator
-                + " parts/s, digest of a part " + digest());
-        assertThat(floor).isPositive();
-        assertThat(operator).isPositive();
+        OperatorBench.Load load = new OperatorBench.Load(2, 3, 5, 1, 40);
+        for (OperatorBench.Kind kind : OperatorBench.Kind.values()) {
+            double partsPerSecond = bench.throughput(kind, load);
+            System.out.println("operator bench, 40 scans of 5, digest of a part " + digest() + ": " + kind + " "
+                    + partsPerSecond + " parts/s");
+            assertThat(partsPerSecond).isPositive();
+        }
     }
 
     @Test
@@ -35,6 +37,6 @@ class OperatorBenchTest {
     }
 
     private static int digest() {
-        return Arrays.hashCode(Wire.encode(new BenchScans(50, 1).next(0, 2.5)));
+        return Arrays.hashCode(Wire.encode(new BenchScans(50, List.of(BenchBus.sensor(0)), 1).next(0, 2.5)));
     }
 }

@@ -2,8 +2,9 @@ package org.sweeptally.stream;
 
 import java.nio.file.Path;
 import java.util.LinkedHashMap;
+import java.util.List;
 import java.util.Map;
-import java.util.OptionalLong;
+import java.util.stream.IntStream;
 import org.sweeptally.site.Site;
 
 /** The embedded broker for measurements, with the settings that the product itself chooses for its clients. */
@@ -15,14 +16,17 @@ public final class BenchBus {
         return TestBus.address();
     }
 
-    /** Two regions and the one sensor that sees both, under a name of its own; its topics are created. */
-    public static Site newSite(int snapshotScans) {
-        Site site = TestSite.withSnapshotScans(TestSite.twins(), snapshotScans);
-        for (String sensor : new String[] {"south-shore", "pilot-house"}) {
-            site = TestSite.withoutSensor(site, 1, OptionalLong.empty(), sensor);
-        }
-        TestBus.createTopics(site, 1, site.regions().size());
+    /** Regions side by side and sensors that all see all of them, under a name of its own; its topics are created. */
+    public static Site newSite(int regions, int sensors, int snapshotScans) {
+        List<String> names = IntStream.range(0, sensors).mapToObj(BenchBus::sensor).toList();
+        Site site = TestSite.withSnapshotScans(TestSite.strips(regions, names), snapshotScans);
+        TestBus.createTopics(site, 1, regions);
         return site;
+    }
+
+    /** Name of a sensor, by its place. */
+    public static String sensor(int place) {
+        return "shore-" + place;
     }
 
     public static TopicNames names(Site site) {

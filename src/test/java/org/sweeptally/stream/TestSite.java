@@ -18,6 +18,7 @@ import org.sweeptally.region.intake.Intake;
 import org.sweeptally.region.text.PartLines;
 import org.sweeptally.site.BoundSettings;
 import org.sweeptally.site.RegionSettings;
+import org.sweeptally.site.SensorSettings;
 import org.sweeptally.site.Site;
 import org.sweeptally.site.SiteReader;
 import org.sweeptally.site.SiteResult;
@@ -41,6 +42,25 @@ final class TestSite {
         return with(site, site.name(), site.revision(), site.fromMicros(),
                 List.of(part(whole, "east-side", -33.5, -33.475), part(whole, "west-side", -33.525, -33.5)),
                 site.thresholds(), site.bounds());
+    }
+
+    /** The estuary cut from north to south into strips of the same width, seen by like sensors at the same place. */
+    static Site strips(int regions, List<String> sensors) {
+        Site site = estuary();
+        RegionSettings whole = site.regions().get(0);
+        double width = 0.05 / regions;
+        List<RegionSettings> strips = new ArrayList<>();
+        for (int i = 0; i < regions; i++) {
+            strips.add(part(whole, "strip-" + i, -33.525 + i * width, -33.525 + (i + 1) * width));
+        }
+        SensorSettings s = site.sensor("north-shore").orElseThrow();
+        List<SensorSettings> like = sensors.stream()
+                .map(name -> new SensorSettings(name, s.position(), s.roams(), s.reachMetres(), s.noise(),
+                        s.detectionProbability(), s.clutterPerScan(), s.intervalSeconds(), s.sweepSeconds(),
+                        s.leastIntervalSeconds(), s.disorderSeconds(), s.silentSeconds()))
+                .toList();
+        return new Site(site.name(), site.revision(), site.fromMicros(), like, strips, site.motion(),
+                site.lifetimeSeconds(), site.unseen(), site.thresholds(), site.bounds(), site.rejectOutside());
     }
 
     private static RegionSettings part(RegionSettings whole, String name, double west, double east) {

@@ -18,6 +18,8 @@ final class OurClasses extends SpecificData {
 
     private OurClasses() {
         super(OurClasses.class.getClassLoader());
+        // The generated classes' own coders give the same bytes without asking the schema for every field.
+        setCustomCoders(true);
         KnownSchemas.ours().all().forEach(record -> {
             learn(record);
             record.getFields().forEach(field -> learn(field.schema()));

@@ -121,7 +121,7 @@ public final class Wire {
     private static void writeBody(SpecificRecordBase record, ByteArrayOutputStream out) {
         try {
             BinaryEncoder encoder = EncoderFactory.get().binaryEncoder(out, null);
-            new SpecificDatumWriter<SpecificRecordBase>(record.getSchema(), record.getSpecificData())
+            new SpecificDatumWriter<SpecificRecordBase>(record.getSchema(), OurClasses.DATA)
                     .write(record, encoder);
             encoder.flush();
         } catch (IOException e) {
