@@ -80,7 +80,8 @@ final class Bus {
     }
 
     private static List<TopicPartition> partitions(String topic) {
-        int partitions = get(Asking.ADMIN.describeTopics(List.of(topic)).allTopicNames()).get(topic).partitions().size();
+        var description = get(Asking.ADMIN.describeTopics(List.of(topic)).allTopicNames()).get(topic);
+        int partitions = description.partitions().size();
         return IntStream.range(0, partitions).mapToObj(p -> new TopicPartition(topic, p)).toList();
     }
 

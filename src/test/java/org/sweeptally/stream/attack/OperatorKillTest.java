@@ -67,7 +67,8 @@ class OperatorKillTest {
             Waiting.untilComplete(last, attacked.names().counts(), undisturbed.outputs().number("counts"));
             assertThat(last.stop()).as(last.text()).isZero();
         }
-        Committed committed = PictureCheck.holds(attacked, undisturbed, "OperatorKillTest, seed " + seed + ": " + tally);
+        Committed committed = PictureCheck.holds(
+                attacked, undisturbed, "OperatorKillTest, seed " + seed + ": " + tally);
         PictureCheck.changesSettingsAt(attacked, fromMicros);
         // Without work done again, nothing of the recovery has been tried.
         assertThat(tally.again).isPositive();

@@ -95,7 +95,11 @@ final class OperatorProcess implements AutoCloseable {
 
     /** How many entries it has applied again to bring them back. */
     long entriesAgain() {
-        return said().stream().map(BACK::matcher).filter(Matcher::find).mapToLong(m -> Long.parseLong(m.group(1))).sum();
+        return said().stream()
+                .map(BACK::matcher)
+                .filter(Matcher::find)
+                .mapToLong(found -> Long.parseLong(found.group(1)))
+                .sum();
     }
 
     /** Whether its threads have taken their partitions at least once. */
