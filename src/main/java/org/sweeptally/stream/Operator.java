@@ -28,6 +28,7 @@ public final class Operator implements AutoCloseable {
 
     private final OperatorSettings settings;
     private final Consumer<String> says;
+    private final LogReader tail;
     private final Failures failures = new Failures();
     private final CountDownLatch stopped = new CountDownLatch(1);
     private final CountDownLatch running = new CountDownLatch(1);
@@ -40,8 +41,14 @@ public final class Operator implements AutoCloseable {
 
     /** @param says takes what happens, a sentence each, from several threads */
     public Operator(OperatorSettings settings, Consumer<String> says) {
+        this(settings, says, new KafkaLogReader(settings.clients(), settings.topics().regionLog()));
+    }
+
+    /** An operator that recovers from what a reader of the region log gives it. */
+    Operator(OperatorSettings settings, Consumer<String> says, LogReader tail) {
         this.settings = settings;
         this.says = says;
+        this.tail = tail;
     }
 
     /**
@@ -70,7 +77,7 @@ public final class Operator implements AutoCloseable {
                 new RouterPlan(regions, revisions, readingWatch, found.appendTimes()),
                 new RegionPlan(regions, found.logPartitions(), LocalSite::readSettings,
                         SnapshotSchedule.of(site, clients.transactionTimeoutMillis()),
-                        new KafkaLogReader(clients, names.regionLog()),
+                        tail,
                         new KafkaFreshStart(clients, names),
                         retentionWatch,
                         Duration.ofMillis(clients.transactionTimeoutMillis() / 2)),

@@ -14,7 +14,6 @@ import java.util.concurrent.Future;
 import org.apache.kafka.clients.producer.KafkaProducer;
 import org.apache.kafka.clients.producer.ProducerRecord;
 import org.junit.jupiter.api.BeforeEach;
-import org.junit.jupiter.api.Tag;
 import org.junit.jupiter.api.Test;
 import org.sweeptally.event.LogEntry;
 import org.sweeptally.event.Part;
@@ -25,7 +24,6 @@ import org.sweeptally.region.wire.Wire;
 import org.sweeptally.site.Site;
 
 /** What is written, and what is refused, when a process begins with a site file. */
-@Tag("long")
 class SettingsAgreementTest {
 
     private final Site site = TestSite.twins();

@@ -19,7 +19,7 @@ import org.sweeptally.region.wire.Wire;
 import org.sweeptally.site.Site;
 
 /** One broker for all tests of a virtual machine; every test has a site, and topics, of its own name. */
-final class TestBus {
+public final class TestBus {
 
     private static final AtomicInteger SITES = new AtomicInteger();
 
@@ -40,7 +40,8 @@ final class TestBus {
         }
     }
 
-    static String address() {
+    /** Where the broker is found; it is begun when first asked for. */
+    public static String address() {
         return Holder.BROKER.bootstrapServers();
     }
 

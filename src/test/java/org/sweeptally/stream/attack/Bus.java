@@ -1,24 +1,25 @@
 package org.sweeptally.stream.attack;
 
-import java.io.IOException;
-import java.io.UncheckedIOException;
-import java.nio.file.Files;
 import java.time.Duration;
 import java.util.ArrayList;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
 import java.util.concurrent.ExecutionException;
+import java.util.concurrent.TimeUnit;
+import java.util.concurrent.TimeoutException;
 import java.util.function.Consumer;
 import java.util.stream.IntStream;
 import org.apache.kafka.clients.admin.Admin;
+import org.apache.kafka.clients.admin.OffsetSpec;
 import org.apache.kafka.clients.consumer.ConsumerRecord;
 import org.apache.kafka.clients.consumer.KafkaConsumer;
+import org.apache.kafka.common.KafkaFuture;
 import org.apache.kafka.common.TopicPartition;
-import org.sweeptally.demo.EmbeddedBroker;
 import org.sweeptally.stream.ClientSettings;
+import org.sweeptally.stream.TestBus;
 
-/** The broker that the attacked operators run beside, one for all tests of a virtual machine. */
+/** The broker that the attacked operators run beside, and what stands on it. */
 final class Bus {
 
     /** Short, so that a killed operator is missed soon. They hold for the operators and the tests' own clients. */
@@ -29,33 +30,14 @@ final class Bus {
 
     private Bus() {}
 
-    /** Begun when first asked for, ended with the virtual machine. */
-    private static final class Holder {
-        static final EmbeddedBroker BROKER = start();
-
-        private static EmbeddedBroker start() {
-            try {
-                EmbeddedBroker broker = EmbeddedBroker.start(Files.createTempDirectory("attacked-bus"));
-                Runtime.getRuntime().addShutdownHook(new Thread(broker::close));
-                return broker;
-            } catch (IOException e) {
-                throw new UncheckedIOException(e);
-            }
-        }
-    }
-
     static String address() {
-        return Holder.BROKER.bootstrapServers();
+        return TestBus.address();
     }
 
     static ClientSettings clients() {
         Map<String, String> given = new LinkedHashMap<>(SHORT_TIMES);
         given.put("bootstrap.servers", address());
         return new ClientSettings(given);
-    }
-
-    static Admin admin() {
-        return Admin.create(Map.of("bootstrap.servers", address()));
     }
 
     /** Every committed record of a topic, partition by partition, each in its order. */
@@ -82,25 +64,37 @@ final class Bus {
 
     /** Offset where each partition of a topic ends. */
     static List<Long> ends(String topic) {
-        try (KafkaConsumer<byte[], byte[]> consumer = consumer(topic)) {
-            List<TopicPartition> partitions = consumer.partitionsFor(topic).stream()
-                    .map(p -> new TopicPartition(topic, p.partition()))
-                    .toList();
-            Map<TopicPartition, Long> ends = consumer.endOffsets(partitions);
-            return partitions.stream().map(ends::get).toList();
-        }
+        Map<TopicPartition, OffsetSpec> asked = new LinkedHashMap<>();
+        partitions(topic).forEach(partition -> asked.put(partition, OffsetSpec.latest()));
+        var ends = get(Asking.ADMIN.listOffsets(asked).all());
+        return asked.keySet().stream().map(partition -> ends.get(partition).offset()).toList();
     }
 
     /** Offsets up to which a group has committed the partitions of a topic; 0 where it has committed nothing. */
     static List<Long> committedOffsets(String group, String topic) {
-        try (Admin admin = admin(); KafkaConsumer<byte[], byte[]> consumer = consumer(topic)) {
-            var offsets = admin.listConsumerGroupOffsets(group).partitionsToOffsetAndMetadata().get();
-            return consumer.partitionsFor(topic).stream()
-                    .map(p -> offsets.get(new TopicPartition(topic, p.partition())))
-                    .map(offset -> offset == null ? 0 : offset.offset())
-                    .toList();
-        } catch (ExecutionException e) {
-            throw new IllegalStateException("the group " + group + " cannot be asked", e);
+        var offsets = get(Asking.ADMIN.listConsumerGroupOffsets(group).partitionsToOffsetAndMetadata());
+        return partitions(topic).stream()
+                .map(offsets::get)
+                .map(offset -> offset == null ? 0 : offset.offset())
+                .toList();
+    }
+
+    private static List<TopicPartition> partitions(String topic) {
+        var description = get(Asking.ADMIN.describeTopics(List.of(topic)).allTopicNames()).get(topic);
+        int partitions = description.partitions().size();
+        return IntStream.range(0, partitions).mapToObj(p -> new TopicPartition(topic, p)).toList();
+    }
+
+    /** One client for all questions, ended with the virtual machine. */
+    private static final class Asking {
+        static final Admin ADMIN = Admin.create(Map.of("bootstrap.servers", address()));
+    }
+
+    private static <T> T get(KafkaFuture<T> answer) {
+        try {
+            return answer.get(60, TimeUnit.SECONDS);
+        } catch (ExecutionException | TimeoutException e) {
+            throw new IllegalStateException("the bus does not answer", e);
         } catch (InterruptedException e) {
             Thread.currentThread().interrupt();
             throw new IllegalStateException(e);

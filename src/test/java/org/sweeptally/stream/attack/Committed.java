@@ -1,7 +1,10 @@
 package org.sweeptally.stream.attack;
 
+import java.io.ByteArrayOutputStream;
+import java.nio.ByteBuffer;
 import java.nio.charset.StandardCharsets;
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
@@ -12,6 +15,7 @@ import org.sweeptally.event.LogEntry;
 import org.sweeptally.event.PartBody;
 import org.sweeptally.event.SilentBody;
 import org.sweeptally.event.SnapshotHead;
+import org.sweeptally.event.SnapshotPiece;
 import org.sweeptally.region.LocalSite;
 import org.sweeptally.region.RegionMachine;
 import org.sweeptally.region.wire.Digests;
@@ -28,6 +32,8 @@ final class Committed {
     private final Outputs published = new Outputs();
     private final Outputs folded = new Outputs();
     private final Map<String, SnapshotHead> heads = new LinkedHashMap<>();
+    private final Map<String, List<SnapshotPiece>> pieces = new TreeMap<>();
+    private final List<String> wrongSnapshots = new ArrayList<>();
     private int snapshotsCompared;
 
     /** A part in a region's log. */
@@ -55,10 +61,16 @@ final class Committed {
     }
 
     private void readSnapshots() {
-        Bus.committed(names.snapshots()).stream()
-                .filter(record -> isOf("SnapshotHead", record))
-                .map(record -> Wire.decode(record.value(), SnapshotHead.class))
-                .forEach(head -> heads.put(head.getLogPartition() + "@" + head.getLogOffset(), head));
+        for (ConsumerRecord<byte[], byte[]> record : Bus.committed(names.snapshots())) {
+            if (isOf("SnapshotHead", record)) {
+                SnapshotHead head = Wire.decode(record.value(), SnapshotHead.class);
+                heads.put(head.getLogPartition() + "@" + head.getLogOffset(), head);
+            } else {
+                SnapshotPiece piece = Wire.decode(record.value(), SnapshotPiece.class);
+                pieces.computeIfAbsent(piece.getRegion() + " " + piece.getSnapshot(), k -> new ArrayList<>())
+                        .add(piece);
+            }
+        }
     }
 
     /** One machine a region, over what the operator has committed to have applied. */
@@ -78,11 +90,27 @@ final class Committed {
     private void compareSnapshot(SnapshotHead head, RegionMachine machine) {
         if (head != null) {
             byte[] state = machine.snapshot();
-            if (!head.getRegion().equals(machine.region()) || !head.getSha256().equals(Digests.sha256(state))) {
-                throw new AssertionError("snapshot " + head + " is not the state at its offset");
+            byte[] written = assembled(head);
+            if (!head.getRegion().equals(machine.region())
+                    || head.getSequence() != machine.sequence()
+                    || !head.getSha256().equals(Digests.sha256(state))
+                    || !Arrays.equals(written, state)
+                    || !Arrays.equals(RegionMachine.restore(written, LocalSite::readSettings).snapshot(), state)) {
+                wrongSnapshots.add(head + " is not the state at its offset");
             }
             snapshotsCompared++;
         }
+    }
+
+    private byte[] assembled(SnapshotHead head) {
+        ByteArrayOutputStream state = new ByteArrayOutputStream();
+        for (SnapshotPiece piece : pieces.get(head.getRegion() + " " + head.getSnapshot())) {
+            ByteBuffer bytes = piece.getBytes().duplicate();
+            byte[] copy = new byte[bytes.remaining()];
+            bytes.get(copy);
+            state.writeBytes(copy);
+        }
+        return state.toByteArray();
     }
 
     Outputs published() {
@@ -99,6 +127,16 @@ final class Committed {
 
     int snapshotsCompared() {
         return snapshotsCompared;
+    }
+
+    /** Snapshots that are not what the machines over the log hold at their offsets, a sentence each. */
+    List<String> wrongSnapshots() {
+        return wrongSnapshots;
+    }
+
+    /** How many entries the logs of all regions hold. */
+    int entries() {
+        return log.size();
     }
 
     long silences() {
@@ -118,7 +156,8 @@ final class Committed {
         return parts;
     }
 
-    private static boolean isOf(String schema, ConsumerRecord<byte[], byte[]> record) {
+    /** Whether a record is ours, and of this schema. */
+    static boolean isOf(String schema, ConsumerRecord<byte[], byte[]> record) {
         return Wire.open(record.value()) instanceof Message.Ours ours && ours.schema().getName().equals(schema);
     }
 

@@ -55,12 +55,17 @@ final class Feeder implements AutoCloseable {
         return worldMicros;
     }
 
+    /** Waits until the estuary's time is beyond another, so that what is to happen there has happened. */
+    void passes(long micros) throws InterruptedException {
+        while (worldMicros <= micros && !done.isDone()) {
+            Thread.sleep(10);
+        }
+    }
+
     /** Sends what is left until a time of the estuary as fast as the bus takes it, and ends. */
     void hurryTo(long micros) throws InterruptedException {
         speed = Double.POSITIVE_INFINITY;
-        while (worldMicros < micros) {
-            Thread.sleep(1);
-        }
+        passes(micros);
         end();
     }
 

@@ -5,14 +5,20 @@ import java.io.IOException;
 import java.io.InputStreamReader;
 import java.io.UncheckedIOException;
 import java.nio.charset.StandardCharsets;
+import java.nio.file.Files;
 import java.nio.file.Path;
 import java.time.Duration;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.concurrent.TimeUnit;
+import java.util.regex.Matcher;
+import java.util.regex.Pattern;
+import org.sweeptally.stream.ForgetfulOperator;
 
 /** The operator as users run it: the command {@code run} in a virtual machine of its own. */
 final class OperatorProcess implements AutoCloseable {
+
+    private static final Pattern BACK = Pattern.compile(" is back: .*, (\\d+) of \\d+ entries applied again");
 
     private final Process process;
     private final List<String> lines = new ArrayList<>();
@@ -27,16 +33,36 @@ final class OperatorProcess implements AutoCloseable {
 
     /** @param further options of the command */
     static OperatorProcess start(AttackedSite site, Path siteFile, Path stateFolder, String... further) {
+        return start("org.sweeptally.cli.Main", site, siteFile, stateFolder, further);
+    }
+
+    /** As above, but broken: it forgets the tail of its log. */
+    static OperatorProcess startForgetful(AttackedSite site, Path siteFile, Path stateFolder) {
+        return start(ForgetfulOperator.class.getName(), site, siteFile, stateFolder);
+    }
+
+    private static OperatorProcess start(
+            String program, AttackedSite site, Path siteFile, Path stateFolder, String... further) {
         List<String> command = new ArrayList<>(List.of(
                 Path.of(System.getProperty("java.home"), "bin", "java").toString(),
                 "-Xmx384m", "-XX:TieredStopAtLevel=1", "-XX:+UseSerialGC",
-                "-cp", System.getProperty("java.class.path"), "org.sweeptally.cli.Main", "run",
+                "-Djava.io.tmpdir=" + temporary(siteFile),
+                "-cp", System.getProperty("java.class.path"), program, "run",
                 "--site", siteFile.toString(), "--bus", Bus.address(), "--detections", site.names().detections(),
                 "--state", stateFolder.toString()));
         Bus.SHORT_TIMES.forEach((name, value) -> command.addAll(List.of("--kafka", name + "=" + value)));
         command.addAll(List.of(further));
         try {
             return new OperatorProcess(new ProcessBuilder(command).redirectErrorStream(true).start());
+        } catch (IOException e) {
+            throw new UncheckedIOException(e);
+        }
+    }
+
+    /** A killed process leaves its unpacked libraries behind; beside the site file they go when the test has ended. */
+    private static Path temporary(Path siteFile) {
+        try {
+            return Files.createDirectories(siteFile.resolveSibling("temporary"));
         } catch (IOException e) {
             throw new UncheckedIOException(e);
         }
@@ -62,8 +88,18 @@ final class OperatorProcess implements AutoCloseable {
         }
     }
 
-    boolean hasSaid(String words) {
-        return said().stream().anyMatch(line -> line.contains(words));
+    /** How many partitions it has brought back so far. */
+    int recoveries() {
+        return (int) said().stream().filter(line -> BACK.matcher(line).find()).count();
+    }
+
+    /** How many entries it has applied again to bring them back. */
+    long entriesAgain() {
+        return said().stream()
+                .map(BACK::matcher)
+                .filter(Matcher::find)
+                .mapToLong(found -> Long.parseLong(found.group(1)))
+                .sum();
     }
 
     /** Whether its threads have taken their partitions at least once. */

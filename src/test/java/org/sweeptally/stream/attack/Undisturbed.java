@@ -70,6 +70,15 @@ final class Undisturbed {
         return outputs;
     }
 
+    /** How many records there are that another run must reproduce. */
+    long number() {
+        long records = outputs.number(Outputs.REJECTS) + routed.number(Outputs.REJECTS);
+        for (String kind : Outputs.RECORD) {
+            records += outputs.number(kind);
+        }
+        return records;
+    }
+
     /** What was rejected before any machine heard it. */
     Outputs routed() {
         return routed;
