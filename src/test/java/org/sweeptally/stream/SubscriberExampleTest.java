@@ -51,7 +51,6 @@ class SubscriberExampleTest {
     }
 
     @Test
-    @Tag("long")
     void itReadsEveryCountOfTheRecording() {
         Site site = TestSite.estuary();
         List<Part> parts = TestSite.recording(site);
