@@ -1,18 +1,20 @@
 package org.sweeptally.site;
 
 import java.util.Optional;
+import java.util.OptionalDouble;
 import org.sweeptally.geo.GeoPolygon;
 import org.sweeptally.geo.LatLon;
 import org.sweeptally.model.DetectionProfile;
 import org.sweeptally.model.SensorModel;
 
 /**
- * One sensor that measures positions.
+ * One sensor, which measures positions or, if it has polar settings, range and azimuth.
  *
  * @param position             where it stands; empty for a sensor that moves and says in every part where it is
  * @param roams                where a moving sensor may be; empty: anywhere
  * @param reachMetres          beyond it the probability of detection is 0
- * @param noise                of a measurement that brings none of its own
+ * @param noise                of a position that brings none of its own; of a sensor that measures range and azimuth,
+ *                             the noise of its places at the end of its reach, where it is greatest
  * @param detectionProbability by distance
  * @param clutterPerScan       expected number of false detections in a scan of the whole reach
  * @param intervalSeconds      usual time between scans; only for forecasts and advice, the filter takes times as they
@@ -21,6 +23,8 @@ import org.sweeptally.model.SensorModel;
  * @param leastIntervalSeconds no scan comes sooner than this after the one before
  * @param disorderSeconds      how far the sensor's parts may be out of their own order
  * @param silentSeconds        how long the sensor may say nothing before the picture goes on without it
+ * @param polar                what it is like if it measures range and azimuth
+ * @param timeOffsetSeconds    what is to be added to its times to get the site's
  */
 public record SensorSettings(
         String name,
@@ -34,7 +38,102 @@ public record SensorSettings(
         double sweepSeconds,
         double leastIntervalSeconds,
         double disorderSeconds,
-        double silentSeconds) {
+        double silentSeconds,
+        Optional<PolarSettings> polar,
+        double timeOffsetSeconds) {
+
+    /** A sensor that measures positions and whose clock is right. */
+    public SensorSettings(
+            String name,
+            Optional<LatLon> position,
+            Optional<GeoPolygon> roams,
+            double reachMetres,
+            PositionNoise noise,
+            DetectionProfile detectionProbability,
+            double clutterPerScan,
+            double intervalSeconds,
+            double sweepSeconds,
+            double leastIntervalSeconds,
+            double disorderSeconds,
+            double silentSeconds) {
+        this(
+                name,
+                position,
+                roams,
+                reachMetres,
+                noise,
+                detectionProbability,
+                clutterPerScan,
+                intervalSeconds,
+                sweepSeconds,
+                leastIntervalSeconds,
+                disorderSeconds,
+                silentSeconds,
+                Optional.empty(),
+                0);
+    }
+
+    /** The same sensor measuring range and azimuth. */
+    public SensorSettings measuring(PolarSettings polarSettings) {
+        PositionNoise atReach =
+                new PositionNoise(polarSettings.rangeSigmaMetres(), polarSettings.acrossSigmaMetres(reachMetres));
+        return with(atReach, Optional.of(polarSettings), timeOffsetSeconds);
+    }
+
+    /** The same sensor with a clock that is off. */
+    public SensorSettings withTimeOffset(double seconds) {
+        return with(noise, polar, seconds);
+    }
+
+    private SensorSettings with(PositionNoise otherNoise, Optional<PolarSettings> otherPolar, double offsetSeconds) {
+        return new SensorSettings(
+                name,
+                position,
+                roams,
+                reachMetres,
+                otherNoise,
+                detectionProbability,
+                clutterPerScan,
+                intervalSeconds,
+                sweepSeconds,
+                leastIntervalSeconds,
+                disorderSeconds,
+                silentSeconds,
+                otherPolar,
+                offsetSeconds);
+    }
+
+    /** Noise of a place at a distance from the sensor. */
+    public PositionNoise noiseAt(double rangeMetres) {
+        return polar.map(p -> new PositionNoise(p.rangeSigmaMetres(), p.acrossSigmaMetres(rangeMetres))).orElse(noise);
+    }
+
+    /**
+     * How far an object is above the sensor, metres; 0 where nobody says how high the sensor is.
+     *
+     * @param sentMetresOrNull   height that a moving sensor sent of itself
+     * @param objectMetresOrNull height that was measured of the object
+     */
+    public double heightDifference(Double sentMetresOrNull, Double objectMetresOrNull) {
+        OptionalDouble own = position.isEmpty() && sentMetresOrNull != null
+                ? OptionalDouble.of(sentMetresOrNull)
+                : polar.map(PolarSettings::heightMetres).orElse(OptionalDouble.empty());
+        if (own.isEmpty()) {
+            return 0;
+        }
+        double usual = polar.map(PolarSettings::objectHeightMetres).orElse(0.0);
+        return (objectMetresOrNull == null ? usual : objectMetresOrNull) - own.getAsDouble();
+    }
+
+    /** How long after the scan time that the sensor sends its scan takes effect: sweep and offset of its clock. */
+    public long effectMicros() {
+        return Math.round(sweepSeconds * 1e6) + timeOffsetMicros();
+    }
+
+    /** What is to be added to its times, microseconds. */
+    public long timeOffsetMicros() {
+        return Math.round(timeOffsetSeconds * 1e6);
+    }
 
     /** The sensor as the filter sees it. */
     public SensorModel model() {
