@@ -41,8 +41,8 @@ final class FirstSeen {
     }
 
     /**
-     * By the range rate, linear at the measured place and at the velocity 0 that is expected. An uncertain direction turns
-     * velocity across it into range rate, which is added to its variance.
+     * By the range rate, linear at the measured place and at the velocity 0 that is expected. An uncertain direction
+     * turns velocity across it into range rate, which is added to its variance.
      */
     private void rate(PolarMeasurement polar, double varSpeed) {
         double east = z.east() - polar.station().east();
@@ -59,7 +59,9 @@ final class FirstSeen {
         double along = (east * eastSpeed + north * northSpeed) / slant;
         double byEast = (eastSpeed - along * east / slant) / slant;
         double byNorth = (northSpeed - along * north / slant) / slant;
-        double across = (north * north * z.varEast() - 2 * east * north * z.covEastNorth() + east * east * z.varNorth())
+        double across = (north * north * z.varEast()
+                        - 2 * east * north * z.covEastNorth()
+                        + east * east * z.varNorth())
                 / squared;
         double lag = z.lagSeconds();
         double[] h = {byEast, byNorth, east / slant - lag * byEast, north / slant - lag * byNorth};

@@ -12,9 +12,9 @@ import org.ejml.data.DMatrix4x4;
  * <p>With H = [I, -lag I]: innovation covariance S = H P H' + R, gain K = P H' S^-1, updated covariance P - K S K'.
  * Use: {@link #prior}, then for each measurement {@link #measure} and the accessors.
  *
- * <p>Whatever was measured, densities are per square metre of the measured place, as clutter is. A range rate comes in as
- * a factor: its density over that of a false detection's range rate, which is uniform between minus and plus the largest
- * one. So false detections per square metre stay what they are, with range rates and without.
+ * <p>Whatever was measured, densities are per square metre of the measured place, as clutter is. A range rate comes in
+ * as a factor: its density over that of a false detection's range rate, which is uniform between minus and plus the
+ * largest one. So false detections per square metre stay what they are, with range rates and without.
  */
 public final class MeasurementUpdate {
 
@@ -169,8 +169,8 @@ public final class MeasurementUpdate {
     }
 
     /**
-     * The density of an object that was never seen before this measurement of it: at the measured place, with a velocity
-     * of mean 0 but for what a range rate says.
+     * The density of an object that was never seen before this measurement of it: at the measured place, with a
+     * velocity of mean 0 but for what a range rate says.
      *
      * @param speedSigma standard deviation of the velocity of unseen objects along each axis, metres a second
      */

@@ -4,18 +4,23 @@ import org.ejml.data.DMatrix4;
 import org.ejml.data.DMatrix4x4;
 
 /**
- * The extended Kalman update of one density by one polar measurement, in the region's plane. Where the linearisation is
- * poor it is iterated: Gauss-Newton steps to the most probable state (Bell and Cathey 1993, IEEE Transactions on Automatic
- * Control 38(2), "The iterated Kalman filter update as a Gauss-Newton method"); the measurement's density is then that of
- * the linearisation there, which is Laplace's approximation.
+ * The extended Kalman update of one density by one polar measurement, in the region's plane. Where the linearisation
+ * is poor it is iterated: Gauss-Newton steps to the most probable state (Bell and Cathey 1993, IEEE Transactions on
+ * Automatic Control 38(2), "The iterated Kalman filter update as a Gauss-Newton method"); the measurement's density is
+ * then that of the linearisation there, which is Laplace's approximation.
  *
  * <p>Poor is range x var(azimuth) / sigma(range) above 0.4 (Lerro and Bar-Shalom 1993), with the variance of the
  * innovation, the object's own included: it is over this angle that the circle is taken for its tangent.
  *
+ * <p>What the circle leaves its tangent by, over what is uncertain of the object across, is noise to a linear filter:
+ * the variance of the second order is added to that of the range and of the range rate (second-order filter: Athans,
+ * Wishner and Bertolini 1968, IEEE Transactions on Automatic Control 13(5), from memory). Without it two circles that are
+ * nearly the same would seem to cross at a place.
+ *
  * <p>With an azimuth of the innovation that is uncertain by over {@link #MOST_AZIMUTH_VARIANCE}, near the sensor and
- * before anything is known of an object, polar coordinates are no good to linearise in, nor where the steps do not settle: then
- * {@link #measure} says so, and the converted place is used instead, whose range rate counts no more than a false
- * detection's.
+ * before anything is known of an object, polar coordinates are no good to linearise in, nor where the steps do not
+ * settle: then {@link #measure} says so, and the converted place is used instead, whose range rate counts no more than
+ * a false detection's.
  */
 final class PolarUpdate {
 
@@ -143,7 +148,8 @@ final class PolarUpdate {
         PolarMeasurement.Noise noise = z.noise();
         double s11 = rangeByEast * (w11 * rangeByEast + w12 * rangeByNorth)
                 + rangeByNorth * (w12 * rangeByEast + w22 * rangeByNorth)
-                + noise.varRange();
+                + noise.varRange()
+                + bending();
         double s12 = rangeByEast * byEast + rangeByNorth * byNorth + noise.covRangeAzimuth();
         s22 = azimuthByEast * byEast + azimuthByNorth * byNorth + noise.varAzimuth();
         double determinant = s11 * s22 - s12 * s12;
@@ -190,9 +196,7 @@ final class PolarUpdate {
     }
 
     /**
-     * The range rate, as one more number measured at the same linearisation. What is uncertain of the direction turns
-     * velocity across it into range rate, which is of second order and added to its variance. False where its variance is
-     * not positive.
+     * The range rate, as one more number measured at the same linearisation; false where its variance is not positive.
      */
     private boolean rate() {
         if (!z.hasRangeRate()) {
@@ -239,19 +243,24 @@ final class PolarUpdate {
         return true;
     }
 
-    /** Variance of direction times velocity across, after range and azimuth, square metres a second squared. */
+    /** Second-order variance of a range, 1/2 (var(across) / range)^2, square metres. */
+    private double bending() {
+        double squared = east * east + north * north;
+        double across = (w11 * north * north - 2 * w12 * east * north + w22 * east * east) / squared;
+        double bent = across / predictedRange;
+        return 0.5 * bent * bent;
+    }
+
+    /** Second-order variance of a range rate: of direction times velocity across, square metres a second squared. */
     private double turning() {
         DMatrix4x4 p = prior.covariance;
-        double ground = Math.sqrt(east * east + north * north);
-        double acrossEast = north / ground;
-        double acrossNorth = -east / ground;
-        double place = acrossEast * (w11 * acrossEast + 2 * w12 * acrossNorth) + w22 * acrossNorth * acrossNorth;
-        double both = acrossEast * (m[2][0] * acrossEast + (m[2][1] + m[3][0]) * acrossNorth)
-                + m[3][1] * acrossNorth * acrossNorth;
-        double speed = acrossEast * (p.a33 * acrossEast + 2 * p.a34 * acrossNorth) + p.a44 * acrossNorth * acrossNorth;
-        double measured = ground * ground * z.noise().varAzimuth();
-        double left = measured / (place + measured);
-        return (left * place * speed + left * left * both * both) / (predictedRange * predictedRange);
+        double e = -east;
+        double n = north;
+        double squared = e * e + n * n;
+        double place = w11 * n * n + 2 * w12 * e * n + w22 * e * e;
+        double both = m[2][0] * n * n + (m[2][1] + m[3][0]) * e * n + m[3][1] * e * e;
+        double speed = p.a33 * n * n + 2 * p.a34 * e * n + p.a44 * e * e;
+        return (place * speed + both * both) / (squared * squared * predictedRange * predictedRange);
     }
 
     double distanceSquared() {

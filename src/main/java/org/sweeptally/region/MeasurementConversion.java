@@ -14,7 +14,7 @@ import org.sweeptally.model.PositionMeasurement;
 import org.sweeptally.site.SensorSettings;
 import org.sweeptally.site.SensorSettings.PositionNoise;
 
-/** Turns one sensor's measurements, made from one place, into what they are in a region's plane, with their covariance. */
+/** Turns one sensor's measurements, made from one place, into what they are in a region's plane, with their noise. */
 final class MeasurementConversion {
 
     private final LocalPlane plane;

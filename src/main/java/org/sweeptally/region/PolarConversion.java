@@ -13,12 +13,12 @@ import org.sweeptally.site.PolarSettings;
 import org.sweeptally.site.SensorSettings;
 
 /**
- * Turns a range and an azimuth into a region's plane. The place that they point to is taken from the sensor's own plane to
- * the region's over the ellipsoid, as any place is, and range and azimuth are read off again there: so the region's
+ * Turns a range and an azimuth into a region's plane. The place that they point to is taken from the sensor's own plane
+ * to the region's over the ellipsoid, as any place is, and range and azimuth are read off again there: so the region's
  * convergence, and what its plane does to lengths at the sensor, is in them.
  *
- * <p>Heights count as above a flat earth: the place's fall below the sensor's horizon changes a range along the ground by
- * 2 cm at 20 km for a sensor 20 m high, less than refraction does.
+ * <p>Heights count as above a flat earth: the place's fall below the sensor's horizon changes a range along the ground
+ * by a few centimetres at 20 km.
  */
 final class PolarConversion {
 
@@ -55,7 +55,7 @@ final class PolarConversion {
         return new Noise(range * range, 0.0, azimuth * azimuth);
     }
 
-    /** Where on the ellipsoid the detection is: the unbiased conversion, by the plane that touches where its sensor is. */
+    /** Where on the ellipsoid the detection is, unbiased, by the plane that touches where its sensor is. */
     LatLon place(LocalPlane sensorPlane) {
         PolarMeasurement measured = new PolarMeasurement(
                 fix.getRangeMetres(),

@@ -8,8 +8,8 @@ import java.util.OptionalDouble;
  * @param rangeSigmaMetres               standard deviation of a range
  * @param azimuthSigmaDegrees            standard deviation of an azimuth
  * @param rangeRateSigmaMetresPerSecond  standard deviation of a range rate; empty: range rates are not used
- * @param heightMetres                   the sensor's height above the ellipsoid; empty: ranges are taken as ranges along
- *                                       the ground. The height that a moving sensor sends stands before it
+ * @param heightMetres                   the sensor's height above the ellipsoid; empty: ranges are taken as ranges
+ *                                       along the ground. The height that a moving sensor sends stands before it
  * @param objectHeightMetres             height of objects above the ellipsoid; that of a detection stands before it
  * @param largestRangeRateMetresPerSecond range rates of false detections lie between minus this and this
  */

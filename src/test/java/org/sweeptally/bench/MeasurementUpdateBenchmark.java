@@ -20,7 +20,7 @@ import org.sweeptally.model.MeasurementUpdate;
 import org.sweeptally.model.PolarMeasurement;
 import org.sweeptally.model.PositionMeasurement;
 
-/** One update of one density by one measurement, with its density and its covariance: of a place, and of range and azimuth. */
+/** One update of one density by one measurement, likelihood and covariance included: a place, a range and an azimuth. */
 @State(Scope.Thread)
 @BenchmarkMode(Mode.AverageTime)
 @OutputTimeUnit(TimeUnit.NANOSECONDS)

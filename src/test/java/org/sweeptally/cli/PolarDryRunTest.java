@@ -18,8 +18,8 @@ import org.sweeptally.geo.LocalPlane;
 import org.sweeptally.geo.PlanePoint;
 
 /**
- * A rotating radar that measures slant range, azimuth and range rate, in a region whose plane touches 9 km away: a launch that
- * passes by is where the truth is. Invented.
+ * A rotating radar that measures slant range, azimuth and range rate, in a region whose plane touches 9 km away: a
+ * launch that passes by is where the truth is. Invented.
  */
 class PolarDryRunTest {
 
@@ -68,7 +68,8 @@ class PolarDryRunTest {
         for (int i = 0; i < 20; i++) {
             double range = 16_000 * Math.sqrt(random.nextDouble());
             double degrees = 360 * random.nextDouble();
-            detections.add(detection("false", begin + SWEEP * degrees / 360, range, degrees, random.nextDouble(-20, 20)));
+            double rate = random.nextDouble(-20, 20);
+            detections.add(detection("false", begin + SWEEP * degrees / 360, range, degrees, rate));
         }
         double seconds = begin;
         for (int i = 0; i < 5; i++) {
@@ -125,7 +126,8 @@ class PolarDryRunTest {
         for (JsonNode track : tracks.subList(10, tracks.size())) {
             double seconds = (Instant.parse(track.get("time").asText()).toEpochMilli()
                     - Instant.parse("2031-05-01T04:00:00Z").toEpochMilli()) / 1000.0;
-            PlanePoint at = plane.toPlane(new LatLon(track.get("latitude").asDouble(), track.get("longitude").asDouble()));
+            PlanePoint at = plane.toPlane(
+                    new LatLon(track.get("latitude").asDouble(), track.get("longitude").asDouble()));
             double[] x = launch(seconds);
             sum += Math.pow(at.eastMetres() - x[0], 2) + Math.pow(at.northMetres() - x[1], 2);
             velocity += Math.hypot(
@@ -186,8 +188,8 @@ class PolarDryRunTest {
         assertThat(run.err()).isEmpty();
         assertThat(run.exitCode()).isZero();
         assertThat(run.out())
-                .contains("mast: measures range within 15 m and azimuth within 0.4 degrees, across at the end of its reach"
-                        + " 111.701 m; range rate within 0.3 m/s, false ones up to 20 m/s")
+                .contains("mast: measures range within 15 m and azimuth within 0.4 degrees, across at the end of its"
+                        + " reach 111.701 m; range rate within 0.3 m/s, false ones up to 20 m/s")
                 .contains("mast: -0.4 s are added to its times");
     }
 

@@ -7,8 +7,8 @@ import org.hipparchus.linear.RealVector;
 
 /**
  * The iterated extended Kalman filter as a textbook has it (Bell and Cathey 1993; Bar-Shalom, Li and Kirubarajan 2001,
- * section 10.5, from memory), with another library's dense matrices, all numbers measured at once, and slopes by central
- * differences.
+ * section 10.5, from memory), with another library's dense matrices, all numbers measured at once, and slopes by
+ * central differences.
  */
 final class DensePolarUpdate {
 
@@ -24,7 +24,7 @@ final class DensePolarUpdate {
     RealMatrix updatedCovariance;
 
     /** @param iterations 0 for the plain extended filter */
-    DensePolarUpdate(Gaussian prior, PolarMeasurement z, int iterations, double addedRateVariance) {
+    DensePolarUpdate(Gaussian prior, PolarMeasurement z, int iterations) {
         this.z = z;
         mean = MatrixUtils.createRealVector(
                 new double[] {prior.mean.a1, prior.mean.a2, prior.mean.a3, prior.mean.a4});
@@ -36,19 +36,20 @@ final class DensePolarUpdate {
         }
         RealVector at = mean;
         for (int i = 0; i <= iterations; i++) {
-            linear(at, addedRateVariance);
+            linear(at);
             at = updatedMean;
         }
     }
 
-    private void linear(RealVector at, double addedRateVariance) {
+    private void linear(RealVector at) {
         int n = z.hasRangeRate() ? 3 : 2;
         RealMatrix h = slopes(at).getSubMatrix(0, n - 1, 0, 3);
         PolarMeasurement.Noise noise = z.noise();
+        double[] added = secondOrder(at);
         RealMatrix r = MatrixUtils.createRealMatrix(new double[][] {
-            {noise.varRange(), noise.covRangeAzimuth(), 0},
+            {noise.varRange() + added[0], noise.covRangeAzimuth(), 0},
             {noise.covRangeAzimuth(), noise.varAzimuth(), 0},
-            {0, 0, noise.varRangeRate() + addedRateVariance}
+            {0, 0, noise.varRangeRate() + added[1]}
         });
         RealVector measured = MatrixUtils.createRealVector(
                 new double[] {z.range(), z.azimuth(), z.hasRangeRate() ? z.rangeRate() : 0});
@@ -59,6 +60,28 @@ final class DensePolarUpdate {
         RealMatrix gain = covariance.multiply(h.transpose()).multiply(inverse());
         updatedMean = mean.add(gain.operate(innovation));
         updatedCovariance = covariance.subtract(gain.multiply(innovationCovariance).multiply(gain.transpose()));
+    }
+
+    /**
+     * Variances of 1/2 x'Hx, 1/2 tr(H P H P), with what matters of the Hessians: of the range a a' / s in place, of the
+     * range rate a a' / s between place and velocity, a the direction across.
+     */
+    private double[] secondOrder(RealVector x) {
+        double lag = z.lagSeconds();
+        double e = x.getEntry(0) - lag * x.getEntry(2) - z.station().east();
+        double n = x.getEntry(1) - lag * x.getEntry(3) - z.station().north();
+        double g = Math.hypot(e, n);
+        RealVector place = MatrixUtils.createRealVector(new double[] {n / g, -e / g, -lag * n / g, lag * e / g});
+        RealVector speed = MatrixUtils.createRealVector(new double[] {0, 0, n / g, -e / g});
+        double s = measure(x).getEntry(0);
+        RealMatrix ofRange = place.outerProduct(place).scalarMultiply(1 / s);
+        RealMatrix ofRate = place.outerProduct(speed).add(speed.outerProduct(place)).scalarMultiply(1 / s);
+        return new double[] {halfTrace(ofRange), halfTrace(ofRate)};
+    }
+
+    private double halfTrace(RealMatrix hessian) {
+        RealMatrix product = hessian.multiply(covariance);
+        return 0.5 * product.multiply(product).getTrace();
     }
 
     private RealMatrix inverse() {

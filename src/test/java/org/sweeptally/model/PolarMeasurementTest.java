@@ -11,8 +11,9 @@ import org.sweeptally.model.PolarMeasurement.Station;
 
 /**
  * The unbiased conversion of Longbin, Xiaoquan, Yizhou, Kang and Bar-Shalom 1998, IEEE Transactions on Aerospace and
- * Electronic Systems 34(3):1023-1027: multiplicative factor exp(sigma^2 / 2), covariance given the measurement. Its angles are
- * counter-clockwise from the first axis; measured clockwise from north, its first axis is north and its second east.
+ * Electronic Systems 34(3):1023-1027: multiplicative factor exp(sigma^2 / 2), covariance given the measurement. Its
+ * angles are counter-clockwise from the first axis; measured clockwise from north, its first axis is north and its
+ * second east.
  */
 class PolarMeasurementTest {
 
@@ -90,8 +91,9 @@ class PolarMeasurementTest {
 
     /**
      * Mean normalised squared error of a converted place given the truth, by quadrature: 2 would be consistent. The plain
-     * conversion with its linearised covariance is what the rule r sigma^2 / sigma_r < 0.4 warns of (Lerro and Bar-Shalom
-     * 1993, IEEE Transactions on Aerospace and Electronic Systems 29(3), from memory); the unbiased one holds beyond.
+     * conversion with its linearised covariance is what the rule r sigma^2 / sigma_r < 0.4 warns of (Lerro and
+     * Bar-Shalom 1993, IEEE Transactions on Aerospace and Electronic Systems 29(3), from memory); the unbiased one
+     * holds beyond.
      */
     @ParameterizedTest
     @CsvSource({
@@ -129,7 +131,11 @@ class PolarMeasurementTest {
         double along = sigmaRange * sigmaRange;
         double across = r * r * sigma * sigma;
         return squaredError(
-                r * s, r * c - range, s * s * along + c * c * across, s * c * (along - across), c * c * along + s * s * across);
+                r * s,
+                r * c - range,
+                s * s * along + c * c * across,
+                s * c * (along - across),
+                c * c * along + s * s * across);
     }
 
     private static double squaredError(double e, double n, double ee, double en, double nn) {

@@ -25,9 +25,9 @@ import org.sweeptally.site.SensorSettings;
 import org.sweeptally.site.Site;
 
 /**
- * What it costs not to know when a sensor saw what: eight objects that make 15 m/s, seen by a rotating sensor, by a camera
- * beside it, by a sensor whose clock is off. Errors are root mean squares over the tracks of steady objects, at the times of
- * the counts. Seeded; the figures are printed.
+ * What it costs not to know when a sensor saw what: eight objects that make 15 m/s, seen by a rotating sensor, by a
+ * camera beside it, by a sensor whose clock is off. Errors are root mean squares over the tracks, at the times that they
+ * say. Seeded; the figures are printed.
  */
 class SensorTimesSimulationTest {
 
@@ -198,8 +198,8 @@ class SensorTimesSimulationTest {
     }
 
     /**
-     * A sweep takes effect at its end, when ten images a second of its time have: its plots are older than what is known
-     * already. In order they would come as 25 sectors of a tenth of a second each.
+     * A sweep takes effect at its end, when ten images a second of its time have: its plots are older than what is
+     * known already. In order they would come as 25 sectors of a tenth of a second each.
      */
     @Test
     void aSweepThatOverlapsImagesIsNearlyAsGoodAsPlotsInOrder() {
@@ -250,7 +250,8 @@ class SensorTimesSimulationTest {
             }
         }
         LogEntry entry = part.entry();
-        ScanParts.partOf(entry).setCoverage(new Coverage(null, null, i * 360.0 / SECTORS, (i + 1) * 360.0 / SECTORS, null));
+        ScanParts.partOf(entry)
+                .setCoverage(new Coverage(null, null, i * 360.0 / SECTORS, (i + 1) * 360.0 / SECTORS, null));
         return entry;
     }
 

@@ -34,7 +34,7 @@ class TimeOffsetTest {
         }
         Track last = rig.out.tracks.get(rig.out.tracks.size() - 1);
         assertThat(last.getUsed()).singleElement()
-                .satisfies(used -> assertThat(used.getDetection().getScanTimeMicros()).isEqualTo(micros(18)));
+                .satisfies(used -> assertThat(used.getRef().getScanTimeMicros()).isEqualTo(micros(18)));
         // Seen for the first time at the beginning of the first look, by the site's time.
         assertThat(last.getFirstSeenMicros()).isEqualTo(micros(0.4));
         assertThat(last.getLastDetectedMicros()).isEqualTo(micros(19.4));

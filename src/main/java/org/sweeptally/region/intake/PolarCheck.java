@@ -61,8 +61,8 @@ final class PolarCheck {
         if (used && sensor.position().isEmpty() && !still) {
             sink.add("rangeRateMetresPerSecond", () -> "rangeRateMetresPerSecond is " + Shown.number(rateOrNull)
                     + ", and the part does not say how fast sensor " + sensor.name()
-                    + ", which moves, was: sensorEastMetresPerSecond and sensorNorthMetresPerSecond are expected, 0 if its"
-                    + " own speed is taken out already");
+                    + ", which moves, was: sensorEastMetresPerSecond and sensorNorthMetresPerSecond are expected, 0 if"
+                    + " its own speed is taken out already");
         }
     }
 

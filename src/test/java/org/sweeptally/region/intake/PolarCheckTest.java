@@ -20,7 +20,7 @@ import org.sweeptally.site.PolarSettings;
 import org.sweeptally.site.SensorSettings;
 import org.sweeptally.site.Site;
 
-/** What may be wrong with a range and an azimuth costs the detection and is told with field, value and what is allowed. */
+/** What is wrong with a range and an azimuth costs the detection and is told with field, value and what is allowed. */
 class PolarCheckTest {
 
     private static final PolarSettings RADAR =
@@ -112,7 +112,10 @@ class PolarCheckTest {
         Part part = IntakeFixture.part(0);
         part.setSensor("ferry");
         part.setSensorPosition(new GeoPoint(53.9, 8.1, null));
-        part.setDetections(List.of(Detection.newBuilder().setIndex(0).setMeasurement(new PolarFix(500.0, 20.0, -3.0)).build()));
+        part.setDetections(List.of(Detection.newBuilder()
+                .setIndex(0)
+                .setMeasurement(new PolarFix(500.0, 20.0, -3.0))
+                .build()));
         change.accept(part);
         return new PartJson(polarSite()).read(PartJson.write(part).getBytes(StandardCharsets.UTF_8), Optional.empty());
     }
