@@ -10,7 +10,8 @@ import org.ejml.data.DMatrix4x4;
  * then that of the linearisation there, which is Laplace's approximation.
  *
  * <p>Poor is range x var(azimuth) / sigma(range) above 0.4 (Lerro and Bar-Shalom 1993), with the variance of the
- * innovation, the object's own included: it is over this angle that the circle is taken for its tangent.
+ * innovation, the object's own included: it is over this angle that the circle is taken for its tangent. For a range
+ * rate it is as much in terms of its second-order variance.
  *
  * <p>What the circle leaves its tangent by, over what is uncertain of the object across, is noise to a linear filter:
  * the variance of the second order is added to that of the range and of the range rate (second-order filter: Athans,
@@ -29,9 +30,12 @@ final class PolarUpdate {
 
     private static final double POOR_LINEARISATION = 0.4;
 
+    /** The same of a range rate, in terms of its second-order variance: 0.4^2 / 2 of its own. */
+    private static final double POOR_RANGE_RATE = 0.08;
+
     private static final int MOST_STEPS = 10;
 
-    /** Steps have settled when they change range and azimuth by less than this many of their standard deviations. */
+    /** Steps have settled when they change what is measured by less than this many of their standard deviations. */
     private static final double SETTLED_SIGMAS = 1e-3;
 
     private static final double ROOT_2_PI = Math.sqrt(2 * StrictMath.PI);
@@ -54,6 +58,9 @@ final class PolarUpdate {
     private double northSpeed;
     private double predictedRange;
     private double predictedAzimuth;
+
+    /** 0 where no range rate was measured. */
+    private double predictedRate;
 
     /** Slopes of range and azimuth by the offset, P H' of both, and the gain. */
     private double rangeByEast;
@@ -80,6 +87,7 @@ final class PolarUpdate {
     boolean measure(Gaussian density, PolarMeasurement measurement) {
         prior = density;
         z = measurement;
+        predictedRate = 0;
         DMatrix4 x = prior.mean;
         double lag = z.lagSeconds();
         priorEast = x.a1 - lag * x.a3 - z.station().east();
@@ -176,19 +184,23 @@ final class PolarUpdate {
     /** Iterates where the linearisation is poor; false where that does not settle. */
     private boolean settle() {
         double sigmaRange = Math.sqrt(z.noise().varRange());
-        if (predictedRange * s22 <= POOR_LINEARISATION * sigmaRange) {
+        double sigmaAzimuth = Math.sqrt(z.noise().varAzimuth());
+        double sigmaRate = Math.sqrt(z.noise().varRangeRate());
+        if (predictedRange * s22 <= POOR_LINEARISATION * sigmaRange
+                && !(z.hasRangeRate() && turning() > POOR_RANGE_RATE * sigmaRate * sigmaRate)) {
             return true;
         }
-        double sigmaAzimuth = Math.sqrt(z.noise().varAzimuth());
         for (int i = 0; i < MOST_STEPS; i++) {
             double rangeBefore = predictedRange;
             double azimuthBefore = predictedAzimuth;
+            double rateBefore = predictedRate;
             move(step[0], step[1], step[2], step[3]);
             if (!linearise() || !rate()) {
                 return false;
             }
             if (Math.abs(predictedRange - rangeBefore) <= SETTLED_SIGMAS * sigmaRange
-                    && Math.abs(wrapped(predictedAzimuth - azimuthBefore)) <= SETTLED_SIGMAS * sigmaAzimuth) {
+                    && Math.abs(wrapped(predictedAzimuth - azimuthBefore)) <= SETTLED_SIGMAS * sigmaAzimuth
+                    && !(Math.abs(predictedRate - rateBefore) > SETTLED_SIGMAS * sigmaRate)) {
                 return true;
             }
         }
@@ -204,6 +216,7 @@ final class PolarUpdate {
         }
         double slant = predictedRange;
         double along = east * eastSpeed + north * northSpeed;
+        predictedRate = along / slant;
         double byEast = eastSpeed / slant - along * east / (slant * slant * slant);
         double byNorth = northSpeed / slant - along * north / (slant * slant * slant);
         double lag = z.lagSeconds();
@@ -233,7 +246,7 @@ final class PolarUpdate {
         double backNorth = priorNorth + step[1] - lag * step[3] - north;
         double backEastSpeed = x.a3 + step[2] - z.station().eastVelocity() - eastSpeed;
         double backNorthSpeed = x.a4 + step[3] - z.station().northVelocity() - northSpeed;
-        double innovation = z.rangeRate() - along / slant - byEast * backEast - byNorth * backNorth
+        double innovation = z.rangeRate() - predictedRate - byEast * backEast - byNorth * backNorth
                 - rangeByEast * backEastSpeed - rangeByNorth * backNorthSpeed;
         for (int i = 0; i < 4; i++) {
             step[i] += rateGain[i] * innovation;

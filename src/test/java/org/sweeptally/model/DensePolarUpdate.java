@@ -18,6 +18,9 @@ final class DensePolarUpdate {
     private final RealVector mean;
     private final RealMatrix covariance;
 
+    /** Second-order variances of range and range rate, where it was linearised last. */
+    double[] added;
+
     RealVector innovation;
     RealMatrix innovationCovariance;
     RealVector updatedMean;
@@ -45,7 +48,7 @@ final class DensePolarUpdate {
         int n = z.hasRangeRate() ? 3 : 2;
         RealMatrix h = slopes(at).getSubMatrix(0, n - 1, 0, 3);
         PolarMeasurement.Noise noise = z.noise();
-        double[] added = secondOrder(at);
+        added = secondOrder(at);
         RealMatrix r = MatrixUtils.createRealMatrix(new double[][] {
             {noise.varRange() + added[0], noise.covRangeAzimuth(), 0},
             {noise.covRangeAzimuth(), noise.varAzimuth(), 0},

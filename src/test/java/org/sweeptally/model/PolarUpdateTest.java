@@ -158,7 +158,8 @@ class PolarUpdateTest {
         boolean isPoor() {
             DensePolarUpdate plain = new DensePolarUpdate(prior, z, 0);
             double range = z.range() - plain.innovation.getEntry(0);
-            return range * plain.innovationCovariance.getEntry(1, 1) > 0.4 * Math.sqrt(z.noise().varRange());
+            return range * plain.innovationCovariance.getEntry(1, 1) > 0.4 * Math.sqrt(z.noise().varRange())
+                    || z.hasRangeRate() && plain.added[1] > 0.08 * z.noise().varRangeRate();
         }
     }
 
