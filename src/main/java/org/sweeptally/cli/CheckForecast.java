@@ -23,6 +23,7 @@ import org.sweeptally.geo.PlanePoint;
 import org.sweeptally.model.Look;
 import org.sweeptally.model.PositionMeasurement;
 import org.sweeptally.site.SensorSettings;
+import org.sweeptally.site.SensorSettings.PositionNoise;
 
 /**
  * What to expect of a region, found by running the real filter on simulated scans: clutter alone for false births, one
@@ -146,8 +147,9 @@ final class CheckForecast {
             double detection = scene.look(sensor).probabilityOfDetection(east, north);
             List<Observation> seen = new ArrayList<>();
             if (random.nextDouble() < detection) {
-                double along = sensor.noise().alongSigmaMetres() * gaussian(random);
-                double across = sensor.noise().acrossSigmaMetres() * gaussian(random);
+                PositionNoise noise = noise(sensor, east, north);
+                double along = noise.alongSigmaMetres() * gaussian(random);
+                double across = noise.acrossSigmaMetres() * gaussian(random);
                 double[] sight = lineOfSight(sensor, east, north);
                 seen.add(observation(
                         sensor,
@@ -179,8 +181,9 @@ final class CheckForecast {
 
     private Observation observation(SensorSettings sensor, double east, double north, int index) {
         double[] sight = lineOfSight(sensor, east, north);
-        double along = sensor.noise().alongSigmaMetres() * sensor.noise().alongSigmaMetres();
-        double across = sensor.noise().acrossSigmaMetres() * sensor.noise().acrossSigmaMetres();
+        PositionNoise noise = noise(sensor, east, north);
+        double along = noise.alongSigmaMetres() * noise.alongSigmaMetres();
+        double across = noise.acrossSigmaMetres() * noise.acrossSigmaMetres();
         PositionMeasurement measured = new PositionMeasurement(
                 east,
                 north,
@@ -189,6 +192,14 @@ final class CheckForecast {
                 along * sight[1] * sight[1] + across * sight[0] * sight[0],
                 0);
         return new Observation(measured, 0, index, null, null);
+    }
+
+    /** Of a place; what a polar sensor measures is taken as one, and without its range rate, which would only help. */
+    private PositionNoise noise(SensorSettings sensor, double east, double north) {
+        PlanePoint at = scene.positionOf(sensor);
+        double e = east - at.eastMetres();
+        double n = north - at.northMetres();
+        return sensor.noiseAt(Math.sqrt(e * e + n * n));
     }
 
     /** The unit vector, east and north, from a sensor to a place; of the sensor's own place, north. */

@@ -7,6 +7,7 @@ import java.util.List;
 import java.util.Locale;
 import java.util.Optional;
 import org.sweeptally.geo.PlanePoint;
+import org.sweeptally.site.PolarSettings;
 import org.sweeptally.site.RegionSettings;
 import org.sweeptally.site.SensorSettings;
 import org.sweeptally.site.Site;
@@ -41,6 +42,26 @@ final class CheckReport {
                     number(sensor.clutterPerScan()));
         }
         table.print(out);
+        for (SensorSettings sensor : site.sensors()) {
+            sensor.polar().ifPresent(polar -> measures(sensor, polar, out));
+            if (sensor.timeOffsetSeconds() != 0) {
+                out.printf("%s: %s s are added to its times%n", sensor.name(), number(sensor.timeOffsetSeconds()));
+            }
+        }
+    }
+
+    private static void measures(SensorSettings sensor, PolarSettings polar, PrintStream out) {
+        String rate = polar.rangeRateSigmaMetresPerSecond().isEmpty()
+                ? "; range rates are not used"
+                : "; range rate within " + number(polar.rangeRateSigmaMetresPerSecond().getAsDouble())
+                        + " m/s, false ones up to " + number(polar.largestRangeRateMetresPerSecond()) + " m/s";
+        out.printf(
+                "%s: measures range within %s m and azimuth within %s degrees, across at the end of its reach %s m%s%n",
+                sensor.name(),
+                number(polar.rangeSigmaMetres()),
+                number(polar.azimuthSigmaDegrees()),
+                number(sensor.noise().acrossSigmaMetres()),
+                rate);
     }
 
     private void region(SiteScene scene, PrintStream out) {

@@ -78,7 +78,7 @@ final class DryRun {
         usableParts += body.getUnusable() ? 0 : 1;
         Part part = body.getPart();
         SensorSettings sensor = site.sensor(part.getSensor()).orElseThrow();
-        long logTime = part.getScanTimeMicros() + Math.round(sensor.sweepSeconds() * 1e6);
+        long logTime = part.getScanTimeMicros() + sensor.effectMicros();
         clock.hear(part.getSensor(), logTime).ifPresent(local::tick);
         local.part(body, source).ifPresent(this::reject);
     }

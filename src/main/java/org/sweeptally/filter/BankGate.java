@@ -23,7 +23,6 @@ final class BankGate {
         count = index.query(bank, gateSigmas);
         reserve();
         Arrays.fill(byMode, 0, count * modes, 0);
-        double gate = gateSigmas * gateSigmas;
         for (int m = 0; m < modes; m++) {
             double weight = bank.weights[m];
             if (weight == 0) {
@@ -35,7 +34,7 @@ final class BankGate {
                 if (!update.measure(z)) {
                     counters.add(Counters.Name.INNOVATIONS_NOT_POSITIVE, 1);
                     byMode[c * modes + m] = Double.NaN;
-                } else if (update.distanceSquared() <= gate) {
+                } else if (update.isWithin(gateSigmas)) {
                     byMode[c * modes + m] = weight * update.likelihood();
                 } else {
                     byMode[c * modes + m] = Double.NaN;

@@ -6,7 +6,6 @@ import java.util.List;
 import java.util.SortedMap;
 import java.util.SortedSet;
 import java.util.TreeMap;
-import org.ejml.data.DMatrix4x4;
 import org.sweeptally.geo.PlaneArea;
 import org.sweeptally.model.Gaussian;
 import org.sweeptally.model.Look;
@@ -14,6 +13,7 @@ import org.sweeptally.model.Measurement;
 import org.sweeptally.model.MeasurementUpdate;
 import org.sweeptally.model.MissRuns;
 import org.sweeptally.model.MotionProfile;
+import org.sweeptally.model.PolarMeasurement;
 
 /**
  * The Poisson part: the intensity of objects that no component stands for. Never detected ones are in the grid; what is
@@ -115,7 +115,7 @@ final class Unseen {
             double detection = scan.look().probabilityOfDetection(z);
             for (int p = 0; p < grids.size(); p++) {
                 double density = detection > 0 ? detection * grids.get(p).density(z.east(), z.north()) : 0;
-                evidence.addGrid(j, p, density);
+                evidence.addGrid(j, p, density > 0 && hasRangeRate(z) ? density * rangeRateRatio(z, p) : density);
             }
         }
         for (int t = 0; t < terms.size(); t++) {
@@ -181,11 +181,34 @@ final class Unseen {
         return sum.matched();
     }
 
+    /** Adds objects of a profile's grid; a range rate says how probable it is under each of the profile's modes. */
     private void addFromGrid(double weight, int profile, Measurement z) {
+        double ratio = weight > 0 && hasRangeRate(z) ? rangeRateRatio(z, profile) : 1;
         for (int m = modes.firstOf(profile); weight > 0 && m < modes.endOf(profile); m++) {
-            double speedSigma = modes.moves(m) ? modes.profiles().get(profile).speedSigma() : 0;
-            sum.add(weight * modes.shareInProfile(m), fromGrid(z, speedSigma), m);
+            double speedSigma = speedSigma(profile, m);
+            double times = hasRangeRate(z) ? MeasurementUpdate.firstSeenRatio(z, speedSigma) / ratio : 1;
+            if (times > 0) {
+                sum.add(
+                        weight * modes.shareInProfile(m) * times, MeasurementUpdate.firstSeen(z, speedSigma), m);
+            }
         }
+    }
+
+    /** What a range rate says for unseen objects of a profile, against a false detection. */
+    private double rangeRateRatio(Measurement z, int profile) {
+        double ratio = 0;
+        for (int m = modes.firstOf(profile); m < modes.endOf(profile); m++) {
+            ratio += modes.shareInProfile(m) * MeasurementUpdate.firstSeenRatio(z, speedSigma(profile, m));
+        }
+        return ratio;
+    }
+
+    private double speedSigma(int profile, int mode) {
+        return modes.moves(mode) ? modes.profiles().get(profile).speedSigma() : 0;
+    }
+
+    private static boolean hasRangeRate(Measurement z) {
+        return z instanceof PolarMeasurement polar && polar.hasRangeRate();
     }
 
     /** Adds a term updated by an observation. */
@@ -216,18 +239,6 @@ final class Unseen {
                 return z;
             }
         });
-    }
-
-    /** An object from the grid, seen some time ago at z: since then it moved on with its unknown velocity. */
-    private static Gaussian fromGrid(Measurement z, double speedSigma) {
-        Gaussian density = Gaussian.atRest(
-                z.east(), z.north(), z.varEast(), z.covEastNorth(), z.varNorth(), speedSigma);
-        DMatrix4x4 p = density.covariance;
-        double cross = z.lagSeconds() * p.a33;
-        p.a11 += z.lagSeconds() * cross;
-        p.a22 += z.lagSeconds() * cross;
-        p.a13 = p.a31 = p.a24 = p.a42 = cross;
-        return density;
     }
 
     /** The tag from which over half of the evidence for an observation comes, with its share; null if there is none. */

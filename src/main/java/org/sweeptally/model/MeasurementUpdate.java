@@ -4,17 +4,30 @@ import org.ejml.data.DMatrix4;
 import org.ejml.data.DMatrix4x4;
 
 /**
- * The Kalman update of one density by position measurements (Kalman 1960). What does not depend on the measured
+ * The Kalman update of one density by measurements (Kalman 1960). For positions, what does not depend on the measured
  * place (gain, innovation covariance, updated covariance) is computed once and shared by all measurements that are
- * equally exact and equally old, which in most scans is all of them.
+ * equally exact and equally old, which in most scans is all of them. Polar ones have the extended update of
+ * {@link PolarUpdate}, each its own.
  *
  * <p>With H = [I, -lag I]: innovation covariance S = H P H' + R, gain K = P H' S^-1, updated covariance P - K S K'.
  * Use: {@link #prior}, then for each measurement {@link #measure} and the accessors.
+ *
+ * <p>Whatever was measured, densities are per square metre of the measured place, as clutter is. A range rate comes in
+ * as a factor: its density over that of a false detection's range rate, which is uniform between minus and plus the
+ * largest one. So false detections per square metre stay what they are, with range rates and without.
  */
 public final class MeasurementUpdate {
 
     private Gaussian prior;
     private PositionMeasurement gainOf;
+
+    private final GateRule gates = new GateRule();
+    private final PolarUpdate polar = new PolarUpdate();
+
+    /** Whether the last measurement was taken as range and azimuth, and whether with a range rate. */
+    private boolean isPolar;
+
+    private boolean hasRangeRate;
 
     /** S^-1, and the factor 1 / (2 pi sqrt |S|) of the innovation's density. */
     private double inverse11;
@@ -56,7 +69,22 @@ public final class MeasurementUpdate {
 
     /** Takes one measurement; false where the innovation covariance is not positive definite, and then nothing may be read. */
     public boolean measure(Measurement measurement) {
-        PositionMeasurement z = (PositionMeasurement) measurement;
+        if (measurement instanceof PolarMeasurement z) {
+            isPolar = polar.measure(prior, z);
+            hasRangeRate = isPolar && z.hasRangeRate();
+            if (isPolar) {
+                updatedIsCurrent = false;
+                gainOf = null;
+                return true;
+            }
+            return measurePosition(z.converted());
+        }
+        isPolar = false;
+        hasRangeRate = false;
+        return measurePosition((PositionMeasurement) measurement);
+    }
+
+    private boolean measurePosition(PositionMeasurement z) {
         if (gainOf == null || !z.sharesGainWith(gainOf)) {
             if (!gain(z)) {
                 gainOf = null;
@@ -70,25 +98,47 @@ public final class MeasurementUpdate {
         return true;
     }
 
-    /** Squared distance of the measurement in standard deviations: the innovation's Mahalanobis distance. */
+    /**
+     * Squared distance of the measurement in standard deviations: the innovation's Mahalanobis distance, of two numbers,
+     * or of three with a range rate.
+     */
     public double distanceSquared() {
+        if (isPolar) {
+            return polar.distanceSquared();
+        }
         return inverse11 * innovationEast * innovationEast
                 + 2 * inverse12 * innovationEast * innovationNorth
                 + inverse22 * innovationNorth * innovationNorth;
     }
 
+    /**
+     * Whether the measurement lies in a gate of so many standard deviations. Two numbers do with probability
+     * 1 - exp(-gateSigmas^2 / 2); three have the wider gate in which they do with the same probability.
+     */
+    public boolean isWithin(double gateSigmas) {
+        return distanceSquared() <= (hasRangeRate ? gates.ofThree(gateSigmas) : gateSigmas * gateSigmas);
+    }
+
     /** Density of the measurement under the prior, per square metre. */
     public double likelihood() {
-        return peak * StrictMath.exp(-0.5 * distanceSquared());
+        return peak() * StrictMath.exp(-0.5 * distanceSquared());
     }
 
     /** Natural logarithm of {@link #likelihood}. */
     public double logLikelihood() {
-        return StrictMath.log(peak) - 0.5 * distanceSquared();
+        return StrictMath.log(peak()) - 0.5 * distanceSquared();
+    }
+
+    private double peak() {
+        return isPolar ? polar.peak() : peak;
     }
 
     /** Writes the step from the prior's mean to the updated mean: four numbers from an index on. */
     public void step(double[] into, int at) {
+        if (isPolar) {
+            polar.step(into, at);
+            return;
+        }
         into[at] = k11 * innovationEast + k12 * innovationNorth;
         into[at + 1] = k21 * innovationEast + k22 * innovationNorth;
         into[at + 2] = k31 * innovationEast + k32 * innovationNorth;
@@ -98,7 +148,11 @@ public final class MeasurementUpdate {
     /** The updated covariance; valid until the next call of {@link #measure} or {@link #prior}. */
     public DMatrix4x4 updatedCovariance() {
         if (!updatedIsCurrent) {
-            updateCovariance();
+            if (isPolar) {
+                polar.covariance(updated);
+            } else {
+                updateCovariance();
+            }
             updatedIsCurrent = true;
         }
         return updated;
@@ -112,6 +166,27 @@ public final class MeasurementUpdate {
         return new Gaussian(
                 new DMatrix4(x.a1 + step[0], x.a2 + step[1], x.a3 + step[2], x.a4 + step[3]),
                 new DMatrix4x4(updatedCovariance()));
+    }
+
+    /**
+     * The density of an object that was never seen before this measurement of it: at the measured place, with a
+     * velocity of mean 0 but for what a range rate says.
+     *
+     * @param speedSigma standard deviation of the velocity of unseen objects along each axis, metres a second
+     */
+    public static Gaussian firstSeen(Measurement measurement, double speedSigma) {
+        return new FirstSeen(measurement, speedSigma).density();
+    }
+
+    /**
+     * What the range rate says for an unseen object at the measured place and against a false detection there: the
+     * density of such a range rate under the spread of velocities, over that of a false detection's. 1 where none was
+     * measured. The density of unseen objects at the place times this is what the measurement says of them.
+     */
+    public static double firstSeenRatio(Measurement measurement, double speedSigma) {
+        return measurement instanceof PolarMeasurement polar && polar.hasRangeRate()
+                ? new FirstSeen(polar, speedSigma).rateRatio()
+                : 1;
     }
 
     private boolean gain(PositionMeasurement z) {

@@ -7,32 +7,42 @@ import org.sweeptally.event.OffsetFix;
 import org.sweeptally.geo.LatLon;
 import org.sweeptally.geo.LocalPlane;
 import org.sweeptally.geo.PlanePoint;
+import org.sweeptally.event.Part;
+import org.sweeptally.event.PolarFix;
+import org.sweeptally.model.Measurement;
 import org.sweeptally.model.PositionMeasurement;
+import org.sweeptally.site.SensorSettings;
 import org.sweeptally.site.SensorSettings.PositionNoise;
 
-/** Turns one sensor's measurements, made from one place, into places in a region's plane with their covariance. */
+/** Turns one sensor's measurements, made from one place, into what they are in a region's plane, with their noise. */
 final class MeasurementConversion {
 
     private final LocalPlane plane;
     private final LocalPlane sensorPlane;
-    private final PositionNoise usualNoise;
+    private final SensorSettings sensor;
     private final PlanePoint sensorAt;
 
     /**
      * @param plane       the region's
      * @param sensorPlane the plane that touches where the sensor is
-     * @param usualNoise  of measurements that bring none of their own
+     * @param sensor      whose noise is that of measurements that bring none of their own
      */
-    MeasurementConversion(LocalPlane plane, LocalPlane sensorPlane, PositionNoise usualNoise) {
+    MeasurementConversion(LocalPlane plane, LocalPlane sensorPlane, SensorSettings sensor) {
         this.plane = plane;
         this.sensorPlane = sensorPlane;
-        this.usualNoise = usualNoise;
+        this.sensor = sensor;
         this.sensorAt = plane.toPlane(sensorPlane.origin());
     }
 
-    /** @param lagSeconds how long before the scan takes effect the object was seen there */
-    PositionMeasurement convert(Detection detection, double lagSeconds) {
-        LatLon place = placeOf(detection, sensorPlane);
+    /**
+     * @param part       that brought the detection
+     * @param lagSeconds how long before the scan takes effect the object was seen there
+     */
+    Measurement convert(Detection detection, Part part, double lagSeconds) {
+        if (detection.getMeasurement() instanceof PolarFix) {
+            return new PolarConversion(detection, part, sensor).measurement(plane, sensorPlane, lagSeconds);
+        }
+        LatLon place = placeOf(detection, part, sensorPlane, sensor);
         PlanePoint at = plane.toPlane(place);
         if (detection.getNoise() == null) {
             return withUsualNoise(at, lagSeconds);
@@ -42,8 +52,8 @@ final class MeasurementConversion {
         return withNoise(at, detection.getNoise(), plane.convergenceRadians(axes), lagSeconds);
     }
 
-    /** Where on the ellipsoid a detection is, by the plane that touches where its sensor is. */
-    static LatLon placeOf(Detection detection, LocalPlane sensorPlane) {
+    /** Where on the ellipsoid a detection of a part is, by the plane that touches where its sensor is. */
+    static LatLon placeOf(Detection detection, Part part, LocalPlane sensorPlane, SensorSettings sensor) {
         Object measurement = detection.getMeasurement();
         if (measurement instanceof GeodeticFix fix) {
             return new LatLon(fix.getLatitude(), fix.getLongitude());
@@ -51,16 +61,20 @@ final class MeasurementConversion {
         if (measurement instanceof OffsetFix fix) {
             return sensorPlane.toGeodetic(new PlanePoint(fix.getEastMetres(), fix.getNorthMetres()));
         }
-        throw new IllegalArgumentException("a sensor that measures positions, and a measurement " + measurement);
+        if (measurement instanceof PolarFix) {
+            return new PolarConversion(detection, part, sensor).place(sensorPlane);
+        }
+        throw new IllegalArgumentException("a detection without measurement: " + measurement);
     }
 
     /** The noise along and across the line of sight, turned by its direction. */
     private PositionMeasurement withUsualNoise(PlanePoint at, double lagSeconds) {
-        double along = usualNoise.alongSigmaMetres() * usualNoise.alongSigmaMetres();
-        double across = usualNoise.acrossSigmaMetres() * usualNoise.acrossSigmaMetres();
         double east = at.eastMetres() - sensorAt.eastMetres();
         double north = at.northMetres() - sensorAt.northMetres();
         double squared = east * east + north * north;
+        PositionNoise usualNoise = sensor.noiseAt(Math.sqrt(squared));
+        double along = usualNoise.alongSigmaMetres() * usualNoise.alongSigmaMetres();
+        double across = usualNoise.acrossSigmaMetres() * usualNoise.acrossSigmaMetres();
         double eastShare = squared > 0 ? east * east / squared : 0;
         double product = squared > 0 ? east * north / squared : 0;
         return new PositionMeasurement(

@@ -116,7 +116,7 @@ public final class PartRouter {
         }
         LocalPlane sensorPlane = new LocalPlane(positionOf(part, sensor));
         for (Detection detection : part.getDetections()) {
-            LatLon place = MeasurementConversion.placeOf(detection, sensorPlane);
+            LatLon place = MeasurementConversion.placeOf(detection, part, sensorPlane, sensor);
             if (distance(sensorPlane.toPlane(place)) > sensor.reachMetres()) {
                 sorted.beyondReach.add(detection.getIndex());
             } else if (!give(detection, place, sensor, sorted)) {

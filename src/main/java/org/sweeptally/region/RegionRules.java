@@ -29,7 +29,7 @@ final class RegionRules {
         for (SensorSettings sensor : site.sensors()) {
             if (area.isTouchedBy(sensor)) {
                 sensors.put(sensor.name(), sensor);
-                longest = Math.max(longest, Micros.ofSeconds(sensor.sweepSeconds()));
+                longest = Math.max(longest, sensor.effectMicros());
             }
         }
         this.longestSweepMicros = longest;

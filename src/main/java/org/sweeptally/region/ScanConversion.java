@@ -125,12 +125,13 @@ final class ScanConversion {
             boolean elsewhere = sensor.position().isEmpty() && part.getSensorPosition() != null;
             LatLon at = elsewhere ? place(part.getSensorPosition()) : position;
             LocalPlane plane = at.equals(position) ? sensorPlane : new LocalPlane(at);
-            MeasurementConversion conversion = new MeasurementConversion(area.plane(), plane, sensor.noise());
+            MeasurementConversion conversion = new MeasurementConversion(area.plane(), plane, sensor);
             for (Detection detection : ordered(part.getDetections())) {
                 long seen = detection.getTimeMicros() == null ? part.getScanTimeMicros() : detection.getTimeMicros();
-                double lag = Micros.toSeconds(scan.logTimeMicros() - seen);
+                long logSeen = Micros.plus(seen, sensor.timeOffsetMicros());
+                double lag = Micros.toSeconds(scan.logTimeMicros() - logSeen);
                 observations.add(new Observation(
-                        conversion.convert(detection, lag),
+                        conversion.convert(detection, part, lag),
                         part.getPart(),
                         detection.getIndex(),
                         detection.getId(),

@@ -37,9 +37,9 @@ final class ScanParts {
         return new ScanParts(settings.name(), scanTimeMicros, logTime, promise);
     }
 
-    /** When a scan takes effect: when its look is over. */
+    /** When a scan takes effect: when its look is over, by the site's time. */
     static long logTimeMicros(long scanTimeMicros, SensorSettings settings) {
-        return Micros.plus(scanTimeMicros, Micros.ofSeconds(settings.sweepSeconds()));
+        return Micros.plus(scanTimeMicros, settings.effectMicros());
     }
 
     void add(LogEntry entry, long entryBytes) {

@@ -179,7 +179,7 @@ final class SensorOrder {
         if (part.getClosesScan()) {
             close(scan, Closing.BY_PART, closed);
         }
-        promise(part.getPromise());
+        promise(part.getPromise(), settings);
         closePromised(closed);
         forgetOldest();
         closePromised(closed);
@@ -226,10 +226,11 @@ final class SensorOrder {
         }
     }
 
-    private void promise(SensorPromise promise) {
+    /** What the sensor promised by its own clock. */
+    private void promise(SensorPromise promise, SensorSettings settings) {
         if (promise != null) {
             Long nothingBefore = promise.getNothingBeforeMicros();
-            promiseAtLeast(nothingBefore == null ? Micros.AFTER_ALL : nothingBefore);
+            promiseAtLeast(nothingBefore == null ? Micros.AFTER_ALL : Micros.plus(nothingBefore, settings.timeOffsetMicros()));
         }
     }
 

@@ -42,10 +42,11 @@ final class TickWatch {
         boolean known = state.horizonMicros != Micros.BEFORE_ALL && state.horizonMicros != Micros.AFTER_ALL
                 && sensor.latestScanMicros() != Micros.BEFORE_ALL;
         long limit = Micros.plus(state.horizonMicros, Micros.ofSeconds(state.rules().bounds().clockAheadSeconds()));
-        boolean ahead = known && waitsFor != null && !waitsFor.equals(sensor.sensor())
-                && sensor.latestScanMicros() > limit;
+        long latest = Micros.plus(
+                sensor.latestScanMicros(), state.rules().sensor(sensor.sensor()).timeOffsetMicros());
+        boolean ahead = known && waitsFor != null && !waitsFor.equals(sensor.sensor()) && latest > limit;
         if (sensor.watch().clockAheadBegins(ahead)) {
-            out.finding(findings.clockAhead(sensor.sensor(), sensor.latestScanMicros(), state.horizonMicros, waitsFor));
+            out.finding(findings.clockAhead(sensor.sensor(), latest, state.horizonMicros, waitsFor));
         }
     }
 

@@ -63,9 +63,13 @@ public final class EffectiveSettings {
                         + Numbers.shortest(position.longitude()) + "}"));
         sensor.roams().ifPresent(polygon -> polygon(2, "roams", polygon));
         line(2, "reachMetres", sensor.reachMetres());
-        if (sensor.noise().alongSigmaMetres() == sensor.noise().acrossSigmaMetres()) {
+        if (sensor.polar().isPresent()) {
+            polar(sensor.polar().get());
+        } else if (sensor.noise().alongSigmaMetres() == sensor.noise().acrossSigmaMetres()) {
+            line(2, "measures", "position");
             line(2, "sigmaMetres", sensor.noise().alongSigmaMetres());
         } else {
+            line(2, "measures", "position");
             line(2, "alongSigmaMetres", sensor.noise().alongSigmaMetres());
             line(2, "acrossSigmaMetres", sensor.noise().acrossSigmaMetres());
         }
@@ -83,6 +87,7 @@ public final class EffectiveSettings {
             line(2, "clutterLearning", "{seconds: " + Numbers.shortest(sensor.clutterLearning().seconds())
                     + ", cellMetres: " + Numbers.shortest(sensor.clutterLearning().cellMetres()) + "}");
         }
+        line(2, "timeOffsetSeconds", sensor.timeOffsetSeconds());
     }
 
     private void sight(SightSettings sight) {
@@ -119,6 +124,18 @@ public final class EffectiveSettings {
     private void item(int depth, String value) {
         indent(depth);
         out.append(value.isEmpty() ? "-" : "- ").append(value).append('\n');
+    }
+
+    private void polar(PolarSettings polar) {
+        line(2, "measures", "polar");
+        line(2, "rangeSigmaMetres", polar.rangeSigmaMetres());
+        line(2, "azimuthSigmaDegrees", polar.azimuthSigmaDegrees());
+        polar.rangeRateSigmaMetresPerSecond().ifPresent(sigma -> {
+            line(2, "rangeRateSigmaMetresPerSecond", sigma);
+            line(2, "largestRangeRateMetresPerSecond", polar.largestRangeRateMetresPerSecond());
+        });
+        polar.heightMetres().ifPresent(height -> line(2, "heightMetres", height));
+        line(2, "objectHeightMetres", polar.objectHeightMetres());
     }
 
     private static String profile(DetectionProfile profile) {

@@ -21,6 +21,7 @@ final class SensorReader {
     private static final Allowed SIGMA = Allowed.from(0.001, 100_000);
     private static final Allowed SECONDS = Allowed.moreThanZero(31_536_000);
     private static final Allowed SECONDS_OR_NONE = Allowed.from(0, 31_536_000);
+    private static final Allowed OFFSET = Allowed.from(-86_400, 86_400);
     private static final Allowed COUNT = Allowed.moreThanZero(1_000_000);
     private static final Allowed RANGE = Allowed.from(0, 1_000_000);
 
@@ -65,7 +66,8 @@ final class SensorReader {
             faults.add(fields.at("roams"), "", "must be absent for a sensor with a position, which does not move");
         }
         double reach = fields.number("reachMetres", METRES);
-        PositionNoise noise = noise(fields);
+        Optional<PolarSettings> polar = PolarReader.read(fields, faults);
+        PositionNoise noise = polar.isPresent() ? new PositionNoise(Double.NaN, Double.NaN) : noise(fields);
         DetectionProfile profile = fields.required("detectionProbability", "a number " + Allowed.PROBABILITY.words()
                         + ", or a list of {rangeMetres, probability}")
                 .map(this::profile)
@@ -76,6 +78,7 @@ final class SensorReader {
         double leastInterval = fields.number("leastIntervalSeconds", SECONDS_OR_NONE, 0);
         double disorder = fields.number("disorderSeconds", SECONDS_OR_NONE, 0);
         double silent = fields.number("silentSeconds", SECONDS, DEFAULT_SILENT_SECONDS);
+        double offset = fields.number("timeOffsetSeconds", OFFSET, 0);
         if (leastInterval > interval) {
             faults.add(
                     fields.at("leastIntervalSeconds"),
@@ -87,7 +90,7 @@ final class SensorReader {
         ClutterLearning learning =
                 fields.optional("clutterLearning").map(node -> learning(node, reach)).orElse(ClutterLearning.OFF);
         fields.end();
-        return new SensorSettings(
+        SensorSettings sensor = new SensorSettings(
                 name,
                 position,
                 roams,
@@ -102,7 +105,10 @@ final class SensorReader {
                 silent,
                 sight,
                 misses,
-                learning);
+                learning,
+                Optional.empty(),
+                offset);
+        return polar.map(sensor::measuring).orElse(sensor);
     }
 
     private LatLon position(Node node) {

@@ -46,11 +46,12 @@ final class SiteAssembly {
         OptionalLong from = from(fields);
         boolean rejectOutside = fields.flag("rejectOutside", false);
         Optional<Node> sensorsNode = fields.required("sensors", "a mapping of sensors' names to their settings");
-        List<SensorSettings> sensors =
+        List<SensorSettings> read =
                 sensorsNode.map(sensorNode -> SensorReader.read(sensorNode, files, faults)).orElse(List.of());
         double lifetime = fields.number("lifetimeSeconds", MotionReader.LIFETIME);
         MotionSettings motion = MotionReader.read(
                 fields.section("motion", "accelerationNoise and speedSigmaMetresPerSecond, or profiles"), lifetime, faults);
+        List<SensorSettings> sensors = withRangeRates(read, motion.largestSpeedMetresPerSecond());
         Fields unseenFields = fields.section("unseen", "birthsPerSquareKilometrePerHour and others");
         UnseenSettings unseen = unseen(unseenFields, motion.meanLifetimeSeconds());
         OptionalDouble cell = unseenFields.optionalNumber("cellMetres", RegionsReader.CELL);
@@ -62,6 +63,15 @@ final class SiteAssembly {
         fields.end();
         return new Site(
                 name, revision, from, sensors, regions, motion, lifetime, unseen, thresholds, bounds, rejectOutside);
+    }
+
+    /** Range rates are at most as large as speeds, where nothing else is said. */
+    private static List<SensorSettings> withRangeRates(List<SensorSettings> sensors, double largestSpeed) {
+        return sensors.stream()
+                .map(sensor -> sensor.polar()
+                        .map(polar -> sensor.measuring(polar.orLargestRangeRate(largestSpeed)))
+                        .orElse(sensor))
+                .toList();
     }
 
     private List<RegionSettings> regions(

@@ -9,6 +9,7 @@ import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Optional;
+import java.util.OptionalDouble;
 import java.util.OptionalLong;
 import java.util.SplittableRandom;
 import org.junit.jupiter.api.Test;
@@ -26,6 +27,9 @@ import org.sweeptally.model.StandingStill;
 import org.sweeptally.site.SensorSettings.PositionNoise;
 
 class EffectiveSettingsTest {
+
+    /** Of range rates too, of sensors that do not use any. */
+    private static final double LARGEST_SPEED = 31.25;
 
     private static final Path ESTUARY = Path.of("src", "main", "resources", "estuary", "site.yaml");
 
@@ -210,12 +214,12 @@ class EffectiveSettingsTest {
     private static MotionSettings randomMotion(SplittableRandom random, double lifetime) {
         if (random.nextBoolean()) {
             return MotionSettings.oneWay(
-                    random.nextDouble(1e-9, 1), random.nextDouble(.1, 20), random.nextDouble(1, 80), lifetime);
+                    random.nextDouble(1e-9, 1), random.nextDouble(.1, 20), LARGEST_SPEED, lifetime);
         }
         double share = random.nextDouble();
         MotionProfile craft = new MotionProfile(
                 "craft", share, random.nextBoolean() ? lifetime : random.nextDouble(1, 1e6),
-                random.nextDouble(.1, 20), random.nextDouble(1, 80), randomModes(random));
+                random.nextDouble(.1, 20), LARGEST_SPEED, randomModes(random));
         MotionMode still = new MotionMode(
                 "still", new StandingStill(random.nextDouble(1e-9, 1), .1), 1, Double.POSITIVE_INFINITY);
         return new MotionSettings(List.of(
@@ -274,7 +278,7 @@ class EffectiveSettingsTest {
                 : new DetectionProfile(List.of(
                         new DetectionProfile.Point(random.nextDouble(1, 100), random.nextDouble(.01, .99)),
                         new DetectionProfile.Point(random.nextDouble(200, 999), random.nextDouble(.01, .99))));
-        return new SensorSettings(
+        SensorSettings sensor = new SensorSettings(
                 name,
                 position,
                 roams,
@@ -291,7 +295,11 @@ class EffectiveSettingsTest {
                 random.nextBoolean() ? MissRuns.NONE : new MissRuns(random.nextDouble(0, 60), random.nextDouble(.1, 1)),
                 random.nextBoolean()
                         ? ClutterLearning.OFF
-                        : new ClutterLearning(random.nextDouble(600, 5000), random.nextDouble(300, 900)));
+                        : new ClutterLearning(random.nextDouble(600, 5000), random.nextDouble(300, 900)),
+                Optional.empty(),
+                0);
+        sensor = random.nextBoolean() ? sensor : sensor.withTimeOffset(random.nextDouble(-9, 9));
+        return random.nextBoolean() ? sensor : sensor.measuring(randomPolar(random));
     }
 
     private static SightSettings randomSight(SplittableRandom random, double south, double west, boolean moves) {
@@ -312,6 +320,17 @@ class EffectiveSettingsTest {
                 random.nextBoolean() ? List.of() : List.of(cell(random, south, west, true), cell(random, south, west, true)),
                 random.nextBoolean() ? List.of() : List.of(cell(random, south, west, true)),
                 areas);
+    }
+
+    private static PolarSettings randomPolar(SplittableRandom random) {
+        boolean rate = random.nextBoolean();
+        return new PolarSettings(
+                random.nextDouble(1, 10),
+                random.nextDouble(.1, 5),
+                rate ? OptionalDouble.of(random.nextDouble(.1, 5)) : OptionalDouble.empty(),
+                random.nextBoolean() ? OptionalDouble.of(random.nextDouble(-9, 99)) : OptionalDouble.empty(),
+                random.nextDouble(-9, 99),
+                rate ? random.nextDouble(1, 99) : LARGEST_SPEED);
     }
 
     private static Site valid(SiteResult result) {

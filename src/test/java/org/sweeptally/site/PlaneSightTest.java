@@ -84,7 +84,7 @@ class PlaneSightTest {
     private static SensorSettings sensor(SightSettings sight) {
         return new SensorSettings(
                 "mast", Optional.empty(), Optional.empty(), 1000, new SensorSettings.PositionNoise(5, 5),
-                DetectionProfile.constant(0.9), 5, 1, 0, 0, 0, 10, sight, MissRuns.NONE, ClutterLearning.OFF);
+                DetectionProfile.constant(0.9), 5, 1, 0, 0, 0, 10, sight, MissRuns.NONE, ClutterLearning.OFF, Optional.empty(), 0);
     }
 
     /** Whether the sensor sees a place 800 m away in a direction from true north. */

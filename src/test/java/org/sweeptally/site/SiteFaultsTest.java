@@ -92,6 +92,12 @@ class SiteFaultsTest {
         "clutterPerScan: 20 | misses: {hiddenSeconds: 6, detectableProbability: 1.2} | misses.detectableProbability: is 1.2, must be more than 0, at most 1",
         "clutterPerScan: 20 | clutterLearning: {seconds: 300} | clutterLearning.seconds: is 300, must be from 600 to 31536000",
         "clutterPerScan: 20 | clutterLearning: {seconds: 900, cellMetres: 5} | clutterLearning.cellMetres: is 5, must be from 25 to 100000",
+        "sigmaMetres: 15 | measures: polar | settings:5: sensors.radar.rangeSigmaMetres: is missing",
+        "sigmaMetres: 15 | measures: range | sensors.radar.measures: is range, must be position or polar",
+        "intervalSeconds: 2.5 | azimuthSigmaDegrees: 1 | azimuthSigmaDegrees: must be absent for a sensor that measures positions; measures: polar allows it",
+        "intervalSeconds: 2.5 | measures: polar | sigmaMetres: must be absent for a sensor that measures range and azimuth (measures: polar)",
+        "intervalSeconds: 2.5 | timeOffsetSeconds: 90000 | timeOffsetSeconds: is 90000, must be from -86400 to 86400",
+        "intervalSeconds: 2.5 | timeOfsetSeconds: 1 | timeOfsetSeconds: is not known here, the nearest known key is timeOffsetSeconds",
         "latitude: 44.05, | latitude: 91, | settings:6: sensors.radar.position.latitude: is 91, must be from -90 to 90",
         "latitude: 44.05, | latitude: -44.05, | reachMetres: is 9000, must reach the apron of at least one region",
         "position: {latitude: 44.05, longitude: -33.45} | roams: basin.geojson | roams: is basin.geojson, must be written out here",
@@ -113,6 +119,42 @@ class SiteFaultsTest {
     void aFaultSaysWhereWhatAndWhatIsAllowed(String sound, String changed, String told) {
         assertThat(SOUND).contains(sound);
         assertThat(lines(SiteReader.readText(SOUND.replace(sound, changed)))).contains(told);
+    }
+
+    private static final String POLAR = SOUND.replace("    sigmaMetres: 15\n", """
+                measures: polar
+                rangeSigmaMetres: 20
+                azimuthSigmaDegrees: 0.5
+                rangeRateSigmaMetresPerSecond: 0.3
+                heightMetres: 35
+            """);
+
+    @ParameterizedTest
+    @CsvSource(delimiter = '|', value = {
+        "rangeSigmaMetres: 20 | rangeSigmaMetres: 0 | rangeSigmaMetres: is 0, must be from 0.001 to 100000",
+        "azimuthSigmaDegrees: 0.5 | azimuthSigmaDegrees: 46 | azimuthSigmaDegrees: is 46, must be from 0.001 to 45",
+        "azimuthSigmaDegrees: 0.5 | azimuthSigmaDegres: 0.5 | the nearest known key is azimuthSigmaDegrees",
+        "PerSecond: 0.3 | PerSecond: 0 | rangeRateSigmaMetresPerSecond: is 0, must be from 0.001 to 1000",
+        "rangeRateSigma | largestRangeRate | largestRangeRateMetresPerSecond: must be absent without rangeRateSigmaMetresPerSecond",
+        "heightMetres: 35 | heightMetres: high | heightMetres: is high, must be a number from -1000 to 100000",
+    })
+    void aFaultOfAPolarSensorSaysWhatIsAllowed(String sound, String changed, String told) {
+        assertThat(SiteReader.readText(POLAR)).isInstanceOf(SiteResult.Valid.class);
+        assertThat(POLAR).contains(sound);
+        assertThat(lines(SiteReader.readText(POLAR.replace(sound, changed)))).contains(told);
+    }
+
+    /** 5 gates of 0.5 degrees at 9000 m, and 20 s at four times 5 m/s. */
+    @Test
+    void theApronHoldsAPlaceAtTheEndOfAPolarSensorsReach() {
+        Site site = ((SiteResult.Valid) SiteReader.readText(POLAR)).site();
+        double across = 9000 * Math.toRadians(0.5);
+        assertThat(site.regions().get(0).apronMetres()).isEqualTo(5 * across + 20 * 20);
+        PolarSettings polar = site.sensors().get(0).polar().orElseThrow();
+        assertThat(polar.largestRangeRateMetresPerSecond()).isEqualTo(20);
+        assertThat(polar.objectHeightMetres()).isZero();
+        assertThat(site.sensors().get(0).noiseAt(900).acrossSigmaMetres()).isEqualTo(900 * Math.toRadians(0.5));
+        assertThat(site.sensors().get(0).noiseAt(0).acrossSigmaMetres()).isPositive();
     }
 
     @Test

@@ -4,8 +4,8 @@ import org.sweeptally.event.Detection;
 import org.sweeptally.event.GeodeticFix;
 import org.sweeptally.event.Noise;
 import org.sweeptally.event.OffsetFix;
+import org.sweeptally.event.Part;
 import org.sweeptally.event.PolarFix;
-import org.sweeptally.event.RejectReason;
 import org.sweeptally.site.SensorSettings;
 
 /** Checks the detections of one part of one sensor, each on its own. */
@@ -24,10 +24,13 @@ final class DetectionCheck {
     private final long lookEndMicros;
     private final FieldNames names;
     private final Faults faults;
+    private final PolarCheck polar;
 
-    DetectionCheck(SensorSettings sensor, long scanTimeMicros, FieldNames names, Faults faults) {
+    /** @param part whose detections are checked; its scan time is plausible */
+    DetectionCheck(SensorSettings sensor, Part part, FieldNames names, Faults faults) {
         this.sensor = sensor;
-        this.scanTimeMicros = scanTimeMicros;
+        this.polar = new PolarCheck(sensor, part);
+        this.scanTimeMicros = part.getScanTimeMicros();
         this.lookEndMicros = scanTimeMicros + Math.round(sensor.sweepSeconds() * 1e6);
         this.names = names;
         this.faults = faults;
@@ -42,9 +45,8 @@ final class DetectionCheck {
         FieldCheck.text(sink, "declaredIdentity", detection.getDeclaredIdentity());
         FieldCheck.finite(sink, "heightMetres", detection.getHeightMetres());
         FieldCheck.finite(sink, "strength", detection.getStrength());
-        if (detection.getMeasurement() instanceof PolarFix) {
-            faults.detection(index, RejectReason.WRONG_MEASUREMENT, "measurement", () -> "sensor " + sensor.name()
-                    + " measures positions: a detection gives latitude and longitude, or eastMetres and northMetres");
+        if (detection.getMeasurement() instanceof PolarFix fix) {
+            polar.check(sink, detection, fix, faults);
             return;
         }
         measurement(sink, detection.getMeasurement());
@@ -87,14 +89,23 @@ final class DetectionCheck {
         boolean sound = variance(sink, "noise.first", noise.getFirst());
         sound &= variance(sink, "noise.second", noise.getSecond());
         sound &= FieldCheck.finite(sink, "noise.cross", noise.getCross());
-        if (sound && !(noise.getFirst() * noise.getSecond() > noise.getCross() * noise.getCross())) {
-            sink.add("noise", () -> "noise is first " + Shown.number(noise.getFirst()) + ", cross "
-                    + Shown.number(noise.getCross()) + ", second " + Shown.number(noise.getSecond())
-                    + ": first times second must be more than the square of cross");
+        if (sound) {
+            definite(sink, noise);
         }
     }
 
-    private static boolean variance(FaultSink sink, String field, double squareMetres) {
+    /** Whether a covariance of sound variances is positive definite. */
+    static boolean definite(FaultSink sink, Noise noise) {
+        if (noise.getFirst() * noise.getSecond() > noise.getCross() * noise.getCross()) {
+            return true;
+        }
+        sink.add("noise", () -> "noise is first " + Shown.number(noise.getFirst()) + ", cross "
+                + Shown.number(noise.getCross()) + ", second " + Shown.number(noise.getSecond())
+                + ": first times second must be more than the square of cross");
+        return false;
+    }
+
+    static boolean variance(FaultSink sink, String field, double squareMetres) {
         return FieldCheck.within(sink, field, squareMetres, LEAST_VARIANCE, GREATEST_VARIANCE,
                 "square metres from 0.000001 to 1000000000000 are allowed");
     }

@@ -53,7 +53,7 @@ public final class PartCheck {
         }
         amount(reading.detectionsSent(), faults);
         if (sensor != null && timed && reading.detectionsSent() <= mostDetections) {
-            DetectionCheck check = new DetectionCheck(sensor, part.getScanTimeMicros(), reading.names(), faults);
+            DetectionCheck check = new DetectionCheck(sensor, part, reading.names(), faults);
             part.getDetections().forEach(check::check);
         }
         return intake(reading, sensor != null && timed, original);

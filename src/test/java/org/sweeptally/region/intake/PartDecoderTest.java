@@ -293,7 +293,7 @@ class PartDecoderTest {
         assertThat(reason(intake)).isEqualTo(new ReasonCount(RejectReason.WRONG_MEASUREMENT, "measurement", 1,
                 List.of(0),
                 "detection 0: sensor north-shore measures positions: a detection gives latitude and longitude,"
-                        + " or eastMetres and northMetres"));
+                        + " or eastMetres and northMetres, or a range and an azimuth with a noise of their own"));
         assertThat(intake.body().orElseThrow().getPart().getDetections()).hasSize(1);
     }
 
