@@ -8,11 +8,19 @@ import java.io.ByteArrayOutputStream;
 import java.io.DataInputStream;
 import java.io.DataOutputStream;
 import java.io.IOException;
+import java.util.List;
 import java.util.Optional;
 import java.util.SplittableRandom;
 import org.junit.jupiter.api.Test;
 import org.sweeptally.geo.PlanePoint;
 import org.sweeptally.model.DetectionProfile;
+import org.sweeptally.model.StandingStill;
+import org.sweeptally.model.NearlyConstantVelocity;
+import org.sweeptally.model.MotionProfile;
+import org.sweeptally.model.MotionMode;
+import org.sweeptally.model.MissRuns;
+import org.sweeptally.model.CoordinatedTurn;
+import org.sweeptally.model.ClutterLearning;
 import org.sweeptally.model.Look;
 import org.sweeptally.model.LookCoverage;
 import org.sweeptally.model.SensorModel;
@@ -171,6 +179,68 @@ class ObjectFilterTest {
                 assertThat(bytes(two)).as("seed %s, scan %s", seed, k).isEqualTo(bytes(one));
             }
         }
+    }
+
+    /** The same with kinds of objects, runs of misses, and craft so close that their identities are in doubt. */
+    @Test
+    void aStateOfManyKindsWrittenAndReadGoesOnToTheLastBit() throws IOException {
+        FilterSettings s = FilterScene.settings();
+        FilterSettings kinds = new FilterSettings(
+                manyKinds(), s.birthsPerSquareMetrePerSecond(), s.outsidePerSquareMetre(), s.initialPerSquareMetre(),
+                s.confirming(), s.ending(), s.recyclingBelow(), s.gateSigmas(), s.unseenCellMetres(), s.components(),
+                s.unseenTerms(), s.exactAssociationSteps(), s.propagationSweeps(), s.leastTermWeight(), s.gatedPairs());
+        SensorModel sensor = new SensorModel(
+                "mast", 6000, DetectionProfile.constant(0.8), 10, new MissRuns(6, 0.95), ClutterLearning.OFF);
+        Look looks = new Look(sensor, new PlanePoint(0, 0), Optional.empty(), scene.core(), scene.apronMetres());
+        SplittableRandom random = new SplittableRandom(77);
+        ObjectFilter one = scene.filter(kinds);
+        boolean inDoubt = false;
+        for (int k = 0; k < 25; k++) {
+            double[] places = new double[8];
+            for (int i = 0; i < places.length; i++) {
+                places[i] = 25 * (i % 4 / 2) + 30 * (random.nextDouble() - 0.5);
+            }
+            Scan scan = FilterScene.scan(k * 2_500_000L, looks, k % 5 == 4 ? new double[] {0, 0} : places);
+            ObjectFilter two = ObjectFilter.read(
+                    new DataInputStream(new ByteArrayInputStream(bytes(one))), kinds, scene.core(), scene.apronMetres());
+            for (ObjectFilter filter : new ObjectFilter[] {one, two}) {
+                filter.predict(k == 0 ? 0 : 2.5);
+                filter.update(scan, k * 2_500_000L);
+            }
+            assertThat(bytes(two)).as("scan %s", k).isEqualTo(bytes(one));
+            inDoubt |= one.components().stream().anyMatch(c -> c.identityProbability() < 1);
+        }
+        assertThat(inDoubt).isTrue();
+    }
+
+    @Test
+    void otherKindsOfObjectsTakeOverWhatIsThere() {
+        ObjectFilter filter = seen(5);
+        FilterSettings s = FilterScene.settings();
+        double expected = filter.count().mean();
+        double unseen = filter.expectedUnseen();
+        filter.settings(
+                new FilterSettings(
+                        manyKinds(), s.birthsPerSquareMetrePerSecond(), s.outsidePerSquareMetre(),
+                        s.initialPerSquareMetre(), s.confirming(), s.ending(), s.recyclingBelow(), s.gateSigmas(),
+                        s.unseenCellMetres(), s.components(), s.unseenTerms(), s.exactAssociationSteps(),
+                        s.propagationSweeps(), s.leastTermWeight(), s.gatedPairs()),
+                scene.apronMetres());
+        assertThat(filter.count().mean()).isCloseTo(expected, within(1e-12));
+        assertThat(filter.expectedUnseen()).isCloseTo(unseen, within(1e-9));
+        filter.predict(2.5);
+        filter.update(FilterScene.scan(20 * SECOND, look, 10, 10), 20 * SECOND);
+        assertThat(filter.components()).isNotEmpty();
+    }
+
+    private static List<MotionProfile> manyKinds() {
+        return List.of(
+                new MotionProfile("craft", 0.8, 600, 6, 25, List.of(
+                        new MotionMode("straight", new NearlyConstantVelocity(0.05), 0.8, 120),
+                        new MotionMode("turning-left", new CoordinatedTurn(9, 0.2), 0.1, 10),
+                        new MotionMode("turning-right", new CoordinatedTurn(-9, 0.2), 0.1, 10))),
+                new MotionProfile("piles", 0.2, 864_000, 0, 0, List.of(
+                        new MotionMode("still", new StandingStill(0.01, 0.1), 1, Double.POSITIVE_INFINITY))));
     }
 
     /** A radar before its clock is set: a legal time, sixty years before the next scan. */

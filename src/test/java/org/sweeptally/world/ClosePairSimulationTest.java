@@ -1,12 +1,15 @@
 package org.sweeptally.world;
 
 import static org.assertj.core.api.Assertions.assertThat;
+import static org.assertj.core.api.Assertions.within;
 
 import java.util.ArrayList;
 import java.util.Collections;
+import java.util.Comparator;
 import java.util.List;
 import java.util.Random;
 import java.util.SplittableRandom;
+import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.CsvSource;
 import org.sweeptally.filter.Component;
@@ -48,6 +51,43 @@ class ClosePairSimulationTest {
                 metresApart, periodSeconds, RUNS, shown, told, both, stays, kept);
         assertThat(both).isGreaterThan(0.95);
         assertThat(shown / told).isBetween(0.85, 1.2);
+        assertThat(stays).as("what the record says of the identity, beside how often it is right").isCloseTo(kept, within(0.25));
+    }
+
+    /** Two that cross at a right angle, within a few metres of each other, keep their identities and know it. */
+    @Test
+    void twoThatCrossKeepTheirIdentities() {
+        int kept = 0;
+        double stated = 0;
+        for (long seed = 1; seed <= RUNS; seed++) {
+            WorldSettings world = new WorldSettings(4000, 200, 2, 600, 0.05, 6, 2.5, 80, 15, 0.9, 20);
+            ModelRun model = new ModelRun(world, 0.7, 0.3);
+            SplittableRandom random = new SplittableRandom(seed);
+            Random normal = new Random(random.nextLong());
+            Identity eastbound = null;
+            for (int k = 0; k <= 40; k++) {
+                double along = 6 * 2.5 * (k - 20);
+                SimulatedScan scan = detected(
+                        world, k, new double[] {along, 0}, new double[] {0, along}, random, normal);
+                model.update(scan);
+                if (k == 12 || k == 40) {
+                    Component there = nearest(model.filter(), along, 0);
+                    eastbound = k == 12 ? there.identity() : eastbound;
+                    kept += k == 40 && there.identity().equals(eastbound) ? 1 : 0;
+                    stated += k == 40 ? there.identityProbability() / RUNS : 0;
+                }
+            }
+        }
+        System.out.printf("crossing, seeds 1 to %d: %d keep their identity, stated %.3f%n", RUNS, kept, stated);
+        assertThat((double) kept / RUNS).isGreaterThan(0.9);
+        assertThat(stated).isGreaterThan(0.9);
+    }
+
+    private static Component nearest(ObjectFilter filter, double east, double north) {
+        return filter.components().stream()
+                .filter(Component::confirmed)
+                .min(Comparator.comparingDouble(c -> distance(place(c), new double[] {east, north})))
+                .orElseThrow();
     }
 
     private static Distances run(double metresApart, double periodSeconds, long seed) {
@@ -121,14 +161,20 @@ class ClosePairSimulationTest {
         double left = Math.max(0, 1 - (double) k / APPROACH_SCANS);
         double closing = left * left * (3 - 2 * left);
         double north = -500 + 5 * seconds;
-        double[] easts = {0, metresApart + (150 - metresApart) * closing};
+        double east = metresApart + (150 - metresApart) * closing;
+        return detected(world, k, new double[] {0, north}, new double[] {east, north}, random, normal);
+    }
+
+    private static SimulatedScan detected(
+            WorldSettings world, int k, double[] first, double[] second, SplittableRandom random, Random normal) {
+        double[][] places = {first, second};
         List<TrueObject> objects = new ArrayList<>();
         List<SimulatedScan.Detection> detections = new ArrayList<>();
         for (int i = 0; i < 2; i++) {
-            objects.add(new TrueObject(i, easts[i], north, 0, 5, true, true));
+            objects.add(new TrueObject(i, places[i][0], places[i][1], 0, 0, true, true));
             if (random.nextDouble() < world.probabilityOfDetection()) {
                 detections.add(new SimulatedScan.Detection(
-                        easts[i] + 15 * normal.nextGaussian(), north + 15 * normal.nextGaussian(), i));
+                        places[i][0] + 15 * normal.nextGaussian(), places[i][1] + 15 * normal.nextGaussian(), i));
             }
         }
         for (int i = 0; i < 20; i++) {
@@ -136,6 +182,6 @@ class ClosePairSimulationTest {
                     4000 * (random.nextDouble() - 0.5), 4000 * (random.nextDouble() - 0.5), SimulatedScan.CLUTTER));
         }
         Collections.shuffle(detections, normal);
-        return new SimulatedScan(seconds, detections, objects);
+        return new SimulatedScan(k * world.periodSeconds(), detections, objects);
     }
 }
