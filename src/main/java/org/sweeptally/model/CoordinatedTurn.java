@@ -29,6 +29,11 @@ public record CoordinatedTurn(double degreesPerSecond, double accelerationNoise)
     private static final double SMALL_ANGLE = 0.25;
 
     @Override
+    public boolean moves() {
+        return true;
+    }
+
+    @Override
     public void predict(Gaussian density, double seconds) {
         double angle = RADIANS_IN_A_DEGREE * degreesPerSecond * seconds;
         double sine = StrictMath.sin(angle);

@@ -7,7 +7,5 @@ public sealed interface MotionModel permits NearlyConstantVelocity, CoordinatedT
     void predict(Gaussian density, double seconds);
 
     /** Whether an object that moves so gets anywhere. */
-    default boolean moves() {
-        return true;
-    }
+    boolean moves();
 }

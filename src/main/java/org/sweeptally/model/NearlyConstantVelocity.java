@@ -20,6 +20,11 @@ import org.ejml.data.DMatrix4x4;
 public record NearlyConstantVelocity(double accelerationNoise) implements MotionModel {
 
     @Override
+    public boolean moves() {
+        return true;
+    }
+
+    @Override
     public void predict(Gaussian density, double seconds) {
         DMatrix4 x = density.mean;
         x.a1 += seconds * x.a3;

@@ -15,6 +15,11 @@ import org.ejml.data.DMatrix4x4;
 public record StandingStill(double positionNoise, double speedSigma) implements MotionModel {
 
     @Override
+    public boolean moves() {
+        return false;
+    }
+
+    @Override
     public void predict(Gaussian density, double seconds) {
         DMatrix4 x = density.mean;
         x.a3 = 0;

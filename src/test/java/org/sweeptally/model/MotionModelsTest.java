@@ -109,6 +109,13 @@ class MotionModelsTest {
         assertThat(density.covariance.a13).isZero();
     }
 
+    @Test
+    void onlyStandingStillGetsNowhere() {
+        for (MotionModel model : MODELS) {
+            assertThat(model.moves()).as(model.toString()).isEqualTo(!(model instanceof StandingStill));
+        }
+    }
+
     /** By its series after halving 20 times: slow, plain, and good for matrices of any kind. */
     private static RealMatrix exponential(RealMatrix m) {
         RealMatrix small = m.scalarMultiply(1.0 / 1024);
