@@ -10,6 +10,7 @@ import java.util.ArrayList;
 import java.util.List;
 import java.util.Optional;
 import java.util.regex.MatchResult;
+import java.util.regex.Matcher;
 import java.util.regex.Pattern;
 import java.util.stream.Stream;
 import org.junit.jupiter.api.BeforeEach;
@@ -21,7 +22,10 @@ import org.sweeptally.event.FindingKind;
 import org.sweeptally.event.RejectReason;
 import org.sweeptally.region.intake.Intake;
 import org.sweeptally.region.text.PartJson;
+import org.sweeptally.model.MotionMode;
 import org.sweeptally.site.EffectiveSettings;
+import org.sweeptally.site.SiteReader;
+import org.sweeptally.site.SiteResult;
 import picocli.CommandLine.Command;
 
 /** The README says what the program does, all of it, and shows what it prints. */
@@ -51,6 +55,19 @@ class ReadmeTest {
         Intake intake = new PartJson(CliRun.site(EstuaryRecording.SITE)).read(line.getBytes(UTF_8), Optional.empty());
         assertThat(intake.reject()).isEmpty();
         assertThat(intake.body().orElseThrow().getPart().getDetections()).hasSize(2);
+    }
+
+    @Test
+    void itsExampleOfKindsOfObjectsIsOne() {
+        int begin = readme.indexOf("motion:\n  profiles:");
+        String motion = readme.substring(begin, readme.indexOf("```", begin));
+        String settings = EffectiveSettings.text(CliRun.site(EstuaryRecording.SITE))
+                .replaceFirst("motion:\n(  .*\n)+", Matcher.quoteReplacement(motion));
+        SiteResult result = SiteReader.readText(settings);
+        assertThat(result).isInstanceOf(SiteResult.Valid.class);
+        assertThat(((SiteResult.Valid) result).site().profiles())
+                .extracting(kind -> kind.name() + kind.modes().stream().map(MotionMode::name).toList())
+                .containsExactly("craft[still, straight, turning-left, turning-right]", "piles[still]");
     }
 
     @Test
