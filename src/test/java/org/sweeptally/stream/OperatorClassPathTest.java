@@ -15,7 +15,6 @@ import java.util.List;
 import java.util.TreeSet;
 import java.util.regex.Pattern;
 import java.util.stream.Collectors;
-import org.junit.jupiter.api.Tag;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
 import org.sweeptally.site.Site;
@@ -52,7 +51,6 @@ class OperatorClassPathTest {
     }
 
     @Test
-    @Tag("long")
     void theOperatorRunsWithoutTheBrokersJars() throws IOException, InterruptedException {
         Site site = TestSite.twins();
         TestBus.createTopics(site, 1, 2);

@@ -80,7 +80,7 @@ final class AttackedSite {
     private String text() {
         try {
             String text = Files.readString(Path.of("src/main/resources/demo/site.yaml"));
-            return text.replace("site: skell", "site: " + name) + "\nbounds: {snapshotScans: 20}\n";
+            return text.replace("site: skell", "site: " + name) + "\nbounds: {snapshotScans: 20, snapshotSeconds: 5}\n";
         } catch (IOException e) {
             throw new UncheckedIOException(e);
         }
