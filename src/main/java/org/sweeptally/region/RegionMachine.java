@@ -37,10 +37,10 @@ import org.sweeptally.site.Site;
 public final class RegionMachine {
 
     /** Grows whenever the same log would give other output. */
-    public static final int MACHINE_VERSION = 1;
+    public static final int MACHINE_VERSION = 2;
 
     /** Layout of {@link #snapshot}; the first number in it. */
-    public static final int FORMAT_VERSION = 1;
+    public static final int FORMAT_VERSION = 2;
 
     private final RegionState state;
     private final Function<String, Site> settingsReader;
