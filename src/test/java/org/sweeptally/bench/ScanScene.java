@@ -13,6 +13,7 @@ import org.sweeptally.filter.ObjectFilter;
 import org.sweeptally.filter.Scan;
 import org.sweeptally.geo.PlaneArea;
 import org.sweeptally.model.Look;
+import org.sweeptally.model.MotionProfile;
 import org.sweeptally.world.ModelRun;
 import org.sweeptally.world.SimulatedScan;
 import org.sweeptally.world.SimulatedWorld;
@@ -44,10 +45,15 @@ final class ScanScene {
     }
 
     ScanScene(int objects, long seed, SceneSight sight) {
+        this(objects, seed, sight, SceneMotion.STRAIGHT);
+    }
+
+    ScanScene(int objects, long seed, SceneSight sight, SceneMotion motion) {
         WorldSettings world =
                 WorldSettings.fourKilometres(MARGIN_METRES, 20).grownTo(objects).withScans(SCANS_BEFORE + 1);
         core = FilterScene.square(world.sideMetres() / 2);
-        settings = withCell(ModelRun.settings(world, 0.5, 0.4), CELL_METRES);
+        FilterSettings plain = ModelRun.settings(world, 0.5, 0.4);
+        settings = with(plain, motion.of(plain.profiles().get(0)), CELL_METRES);
         seconds = world.periodSeconds();
         Look look = sight.of(ModelRun.look(world, core), world, core);
         List<SimulatedScan> scans = SimulatedWorld.scans(world, seed);
@@ -113,9 +119,9 @@ final class ScanScene {
         return bytes.toByteArray();
     }
 
-    private static FilterSettings withCell(FilterSettings s, double cellMetres) {
+    private static FilterSettings with(FilterSettings s, List<MotionProfile> profiles, double cellMetres) {
         return new FilterSettings(
-                s.profiles(), s.birthsPerSquareMetrePerSecond(),
+                profiles, s.birthsPerSquareMetrePerSecond(),
                 s.outsidePerSquareMetre(), s.initialPerSquareMetre(), s.confirming(), s.ending(), s.recyclingBelow(),
                 s.gateSigmas(), cellMetres, s.components(), s.unseenTerms(), s.exactAssociationSteps(),
                 s.propagationSweeps(), s.leastTermWeight(), s.gatedPairs());

@@ -28,7 +28,10 @@ public enum SceneSight {
     CHARTED,
 
     /** All around, with clutter learned in cells of a twentieth of the world's side. */
-    LEARNING;
+    LEARNING,
+
+    /** All around, with misses in runs of 6 s. */
+    RUNS;
 
     private static final double REACHES = 3;
     private static final int ISLANDS = 10;
@@ -48,6 +51,13 @@ public enum SceneSight {
             case LEARNING -> new Look(
                     new SensorModel(s.name(), s.reachMetres(), s.detection(), s.clutterPerScan(), MissRuns.NONE,
                             new ClutterLearning(1200, world.sideMetres() / 20)),
+                    FieldOfView.disc(middle, s.reachMetres()),
+                    Optional.empty(),
+                    core,
+                    world.marginMetres());
+            case RUNS -> new Look(
+                    new SensorModel(s.name(), s.reachMetres(), s.detection(), s.clutterPerScan(), new MissRuns(6, 0.98),
+                            ClutterLearning.OFF),
                     FieldOfView.disc(middle, s.reachMetres()),
                     Optional.empty(),
                     core,

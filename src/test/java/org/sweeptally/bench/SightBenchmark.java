@@ -24,7 +24,7 @@ import org.sweeptally.filter.ObjectFilter;
 @Fork(value = 1, jvmArgsAppend = "-Xmx2g")
 public class SightBenchmark {
 
-    @Param({"DISC", "CHARTED", "LEARNING"})
+    @Param({"DISC", "CHARTED", "LEARNING", "RUNS"})
     public SceneSight sight;
 
     public int objects = 1000;
