@@ -73,6 +73,17 @@ final class DistanceRaster {
         return signedDistance(cell, east, north) >= metres;
     }
 
+    /** 1 where a point is inside, -1 where it is outside, 0 where only the edges can tell. */
+    int side(double east, double north) {
+        double column = (east - west) * perEast;
+        double row = (north - south) * perNorth;
+        if (!(column >= 0 && column < CELLS && row >= 0 && row < CELLS)) {
+            return 0;
+        }
+        double centre = atCentre[(int) row * CELLS + (int) column];
+        return Math.abs(centre) <= halfDiagonal + ROUNDING_METRES ? 0 : centre > 0 ? 1 : -1;
+    }
+
     /** Of a point in a cell: only edges that are near enough to its centre can be the nearest. */
     private double signedDistance(int cell, double east, double north) {
         double least = Double.POSITIVE_INFINITY;

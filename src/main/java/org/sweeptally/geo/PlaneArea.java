@@ -112,6 +112,14 @@ public final class PlaneArea {
 
     /** Whether a point is inside; a point on an edge belongs to the polygon to the east or north. */
     public boolean contains(double east, double north) {
+        if (!(east >= minEast && east <= maxEast && north >= minNorth && north <= maxNorth)) {
+            return false;
+        }
+        int known = raster == null ? 0 : raster.side(east, north);
+        return known == 0 ? isInside(east, north) : known > 0;
+    }
+
+    private boolean isInside(double east, double north) {
         boolean odd = false;
         for (int k = 0; k < fromEast.length; k++) {
             odd ^= isCrossed(k, east, north);

@@ -159,6 +159,9 @@ class PlaneAreaTest {
                 assertThat(area.isAtLeast(asked, east, north))
                         .as("seed %d: %s or more at (%s, %s)", seed, asked, east, north)
                         .isEqualTo(signed >= asked);
+                if (signed != 0) {
+                    assertThat(area.contains(east, north)).isEqualTo(signed > 0);
+                }
             }
         }
     }
