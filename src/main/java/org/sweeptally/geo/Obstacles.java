@@ -18,7 +18,7 @@ import java.util.Optional;
 public final class Obstacles {
 
     /** The visible polygon ends at a square around the eye, whose sides are this many reaches away. */
-    private static final double SQUARE_REACHES = 1.5;
+    private static final double SQUARE_REACHES = 1.1;
 
     /** An edge [from east, from north, to east, to north] with the obstacle on its left. */
     private final List<double[]> edges = new ArrayList<>();

@@ -112,6 +112,14 @@ public final class PlaneArea {
 
     /** Whether a point is inside; a point on an edge belongs to the polygon to the east or north. */
     public boolean contains(double east, double north) {
+        if (!(east >= minEast && east <= maxEast && north >= minNorth && north <= maxNorth)) {
+            return false;
+        }
+        int known = raster == null ? 0 : raster.side(east, north);
+        return known == 0 ? isInside(east, north) : known > 0;
+    }
+
+    private boolean isInside(double east, double north) {
         boolean odd = false;
         for (int k = 0; k < fromEast.length; k++) {
             odd ^= isCrossed(k, east, north);
@@ -127,18 +135,27 @@ public final class PlaneArea {
         boolean odd = false;
         double least = Double.POSITIVE_INFINITY;
         for (int k = 0; k < fromEast.length; k++) {
-            double right = east - fromEast[k];
-            double up = north - fromNorth[k];
             odd ^= isCrossed(k, east, north);
-            double share = (right * alongEast[k] + up * alongNorth[k]) * inverseSquare[k];
-            share = Math.min(1, Math.max(0, share));
-            double offEast = right - share * alongEast[k];
-            double offNorth = up - share * alongNorth[k];
             // Math.min, unlike a comparison, lets NaN through.
-            least = Math.min(least, offEast * offEast + offNorth * offNorth);
+            least = Math.min(least, squareFromPiece(k, east, north));
         }
         double distance = Math.sqrt(least);
         return odd ? distance : -distance;
+    }
+
+    /** Square of a point's distance from a piece. */
+    double squareFromPiece(int k, double east, double north) {
+        double right = east - fromEast[k];
+        double up = north - fromNorth[k];
+        double share = (right * alongEast[k] + up * alongNorth[k]) * inverseSquare[k];
+        share = Math.min(1, Math.max(0, share));
+        double offEast = right - share * alongEast[k];
+        double offNorth = up - share * alongNorth[k];
+        return offEast * offEast + offNorth * offNorth;
+    }
+
+    int pieces() {
+        return fromEast.length;
     }
 
     /**
@@ -156,8 +173,7 @@ public final class PlaneArea {
             }
             raster = new DistanceRaster(this);
         }
-        int quick = raster.isAtLeast(metres, east, north);
-        return quick == 0 ? signedDistanceMetres(east, north) >= metres : quick > 0;
+        return raster.isAtLeast(metres, east, north);
     }
 
     /** Whether a point is outside the box around the polygon, by more than so many metres and a rounding. */

@@ -172,10 +172,17 @@ class SkerriesDryRunTest {
     private static Map<String, Object> detection(
             SensorSettings sensor, PlanePoint at, double seconds, SplittableRandom random) {
         double range = Math.max(1, Math.hypot(at.eastMetres(), at.northMetres()));
-        double along = sensor.noise().alongSigmaMetres() * gaussian(random) / range;
-        double across = sensor.noise().acrossSigmaMetres() * gaussian(random) / range;
         Map<String, Object> detection = new LinkedHashMap<>();
         detection.put("time", time(seconds));
+        if (sensor.polar().isPresent()) {
+            double azimuth = Math.toDegrees(Math.atan2(at.eastMetres(), at.northMetres()))
+                    + sensor.polar().get().azimuthSigmaDegrees() * gaussian(random);
+            detection.put("rangeMetres", range + sensor.polar().get().rangeSigmaMetres() * gaussian(random));
+            detection.put("azimuthDegrees", azimuth - 360 * Math.floor(azimuth / 360));
+            return detection;
+        }
+        double along = sensor.noise().alongSigmaMetres() * gaussian(random) / range;
+        double across = sensor.noise().acrossSigmaMetres() * gaussian(random) / range;
         detection.put("eastMetres", at.eastMetres() + along * at.eastMetres() + across * at.northMetres());
         detection.put("northMetres", at.northMetres() + along * at.northMetres() - across * at.eastMetres());
         return detection;

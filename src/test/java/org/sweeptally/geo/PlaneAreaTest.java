@@ -137,4 +137,32 @@ class PlaneAreaTest {
     private static LatLon at(double latitude, double longitude) {
         return new LatLon(latitude, longitude);
     }
+
+    /** After so many questions the area has a raster, which must not show. */
+    @Test
+    void theAnswerIsThatOfTheEdgesHoweverOftenItIsAskedFor() {
+        for (long seed = 1; seed <= 4; seed++) {
+            SplittableRandom random = new SplittableRandom(seed);
+            List<PlanePoint> ring = new ArrayList<>();
+            int corners = 60;
+            for (int i = 0; i < corners; i++) {
+                double angle = 2 * Math.PI * (i + 0.8 * random.nextDouble()) / corners;
+                double radius = random.nextDouble(300, 1000);
+                ring.add(new PlanePoint(radius * Math.cos(angle), radius * Math.sin(angle)));
+            }
+            PlaneArea area = PlaneArea.ofRings(List.of(ring));
+            for (int i = 0; i < 60_000; i++) {
+                double east = random.nextDouble(-1400, 1400);
+                double north = random.nextDouble(-1400, 1400);
+                double signed = area.signedDistanceMetres(east, north);
+                double asked = i % 3 == 0 ? signed : i % 3 == 1 ? Math.nextUp(signed) : random.nextDouble(-300, 300);
+                assertThat(area.isAtLeast(asked, east, north))
+                        .as("seed %d: %s or more at (%s, %s)", seed, asked, east, north)
+                        .isEqualTo(signed >= asked);
+                if (signed != 0) {
+                    assertThat(area.contains(east, north)).isEqualTo(signed > 0);
+                }
+            }
+        }
+    }
 }
