@@ -16,7 +16,7 @@ import org.sweeptally.world.Course.Leg;
  */
 class ManoeuvreSimulationTest {
 
-    private static final int SEEDS = 60;
+    private static final int SEEDS = 30;
     private static final double MISSED_METRES = 200;
     private static final double[] TURNS_BEGIN = {80, 180};
     private static final double TURN_SECONDS = 10;
