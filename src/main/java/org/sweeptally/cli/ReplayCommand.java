@@ -1,14 +1,13 @@
 package org.sweeptally.cli;
 
-import java.util.ArrayList;
+import java.nio.file.Path;
 import java.util.List;
 import java.util.Optional;
 import java.util.concurrent.Callable;
 import org.apache.kafka.common.KafkaException;
+import org.sweeptally.replay.ArchiveSource;
 import org.sweeptally.replay.BusSource;
 import org.sweeptally.replay.RecordedSource;
-import org.sweeptally.replay.RegionReport;
-import org.sweeptally.replay.Replay;
 import org.sweeptally.replay.ReplayFailedException;
 import org.sweeptally.replay.Span;
 import org.sweeptally.site.RegionSettings;
@@ -17,6 +16,7 @@ import org.sweeptally.stream.OperatorStoppedException;
 import org.sweeptally.stream.SettingsRefusedException;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Mixin;
+import picocli.CommandLine.Option;
 
 /** What was published, made anew from the log and compared. */
 @Command(
@@ -24,23 +24,34 @@ import picocli.CommandLine.Mixin;
         mixinStandardHelpOptions = true,
         description = {
             "Makes the records of a span of time anew, from the newest snapshot before it and the region log, and"
-                    + " compares them bit for bit with what was published. The operator may run meanwhile and notices"
-                    + " nothing.",
+                    + " compares them bit for bit with what was published. Reads a bus, whose operator may run"
+                    + " meanwhile and notices nothing, or an archive, which is checked before.",
             ""
         },
         footer = {
             "",
-            "Exit codes: 0 every record is the same, 1 one differs or the bus failed, 2 site file or options refused.",
+            "Exit codes: 0 every record is the same, 1 one differs, the archive was altered or the bus failed, 2 site"
+                    + " file or options refused.",
             "",
-            "Example:",
-            "  sweeptally replay --site site.yaml --from 2031-05-01T04:02:00Z --to 2031-05-01T04:06:00Z"
+            "Examples:",
+            "  sweeptally replay --site site.yaml --from 2031-05-01T04:02:00Z --to 2031-05-01T04:06:00Z",
+            "  sweeptally replay --archive incident"
         })
 final class ReplayCommand implements Callable<Integer> {
 
     private final Terminal terminal;
 
-    @Mixin
-    private SiteOption siteOption;
+    @Option(names = "--site", paramLabel = "FILE", description = "The site file, to replay from a bus.")
+    private Path siteFile;
+
+    @Option(names = "--archive", paramLabel = "DIR", description = "An archive, to replay without a bus.")
+    private Path archive;
+
+    @Option(
+            names = "--digest",
+            paramLabel = "SHA256",
+            description = "The digest that was printed when the archive was made: with it, nobody can have altered it.")
+    private String digest;
 
     @Mixin
     private BusOptions busOptions;
@@ -54,17 +65,11 @@ final class ReplayCommand implements Callable<Integer> {
 
     @Override
     public Integer call() {
-        Optional<Site> site = siteOption.read(terminal.err());
-        if (site.isEmpty()) {
-            return Main.USAGE;
-        }
         try {
-            Span span = spanOptions.span();
-            List<String> all = site.get().regions().stream().map(RegionSettings::name).toList();
-            List<String> regions = spanOptions.regions(all);
-            try (RecordedSource source = new BusSource(busOptions.clients(), busOptions.topics(site.get()), all)) {
-                return replay(source, regions, span);
+            if ((siteFile == null) == (archive == null)) {
+                throw new UsageException("either --site or --archive must be given, and not both");
             }
+            return archive == null ? fromBus() : fromArchive();
         } catch (UsageException | SettingsRefusedException e) {
             terminal.err().println("sweeptally: " + e.getMessage());
             return Main.USAGE;
@@ -75,14 +80,30 @@ final class ReplayCommand implements Callable<Integer> {
         }
     }
 
-    private int replay(RecordedSource source, List<String> regions, Span span) {
-        ReplayProgress progress = new ReplayProgress(terminal, regions);
-        Replay replay = new Replay(source, progress);
-        List<RegionReport> reports = new ArrayList<>();
-        for (String region : regions) {
-            reports.add(replay.region(region, span));
+    private int fromBus() {
+        Optional<Site> site = SiteOption.read(siteFile, terminal.err());
+        if (site.isEmpty()) {
+            return Main.USAGE;
         }
-        terminal.endProgress();
-        return new ReplaySummary(reports, span).print(terminal.out()) ? Main.DONE : Main.FAILED;
+        Span span = spanOptions.span();
+        List<String> all = site.get().regions().stream().map(RegionSettings::name).toList();
+        List<String> regions = spanOptions.regions(all);
+        try (RecordedSource source = new BusSource(busOptions.clients(), busOptions.topics(site.get()), all)) {
+            return replay(source, regions, span);
+        }
+    }
+
+    private int fromArchive() {
+        try (ArchiveSource source = new ArchiveSource(archive, Optional.ofNullable(digest))) {
+            terminal.out().println("archive of site " + source.site() + ", " + source.span().text() + ", written by "
+                    + source.program() + ": " + source.fileCount() + " files are as they were written"
+                    + (digest == null ? "" : ", and the manifest is that of the digest"));
+            return replay(source, spanOptions.regions(source.regions()), spanOptions.span(source.span()));
+        }
+    }
+
+    private int replay(RecordedSource source, List<String> regions, Span span) {
+        ReplaySummary summary = ReplayProgress.replayAll(source, regions, span, terminal);
+        return summary.print(terminal.out()) ? Main.DONE : Main.FAILED;
     }
 }

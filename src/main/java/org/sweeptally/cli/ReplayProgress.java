@@ -1,11 +1,27 @@
 package org.sweeptally.cli;
 
+import java.util.ArrayList;
 import java.util.List;
 import java.util.Locale;
 import org.sweeptally.replay.LogRun;
+import org.sweeptally.replay.RecordedSource;
+import org.sweeptally.replay.RegionReport;
+import org.sweeptally.replay.Replay;
+import org.sweeptally.replay.Span;
 
 /** Tells a person who watches how far a replay is. */
 record ReplayProgress(Terminal terminal, List<String> regions) implements LogRun.Progress {
+
+    /** Replays regions one after the other. */
+    static ReplaySummary replayAll(RecordedSource source, List<String> regions, Span span, Terminal terminal) {
+        Replay replay = new Replay(source, new ReplayProgress(terminal, regions));
+        List<RegionReport> reports = new ArrayList<>();
+        for (String region : regions) {
+            reports.add(replay.region(region, span));
+        }
+        terminal.endProgress();
+        return new ReplaySummary(reports, span);
+    }
 
     @Override
     public void at(String region, long entries, double share) {

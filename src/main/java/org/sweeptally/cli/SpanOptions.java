@@ -30,8 +30,19 @@ final class SpanOptions {
 
     /** @throws UsageException if a time is none, or there is nothing between the two */
     Span span() {
-        Span span = new Span(
-                micros("--from", from, Long.MIN_VALUE), micros("--to", to, Long.MAX_VALUE));
+        return span(Span.ALL);
+    }
+
+    /**
+     * @param all what there is, and what is meant unless the options say otherwise
+     * @throws UsageException also if a time lies outside of what there is
+     */
+    Span span(Span all) {
+        Span span = new Span(micros("--from", from, all.fromMicros()), micros("--to", to, all.toMicros()));
+        if (span.fromMicros() < all.fromMicros() || span.toMicros() > all.toMicros()) {
+            throw new UsageException("the archive holds what is " + all.text() + ", and not all that is "
+                    + span.text());
+        }
         if (span.fromMicros() >= span.toMicros()) {
             throw new UsageException("--from " + from + " is not before --to " + to);
         }

@@ -15,8 +15,8 @@ import org.sweeptally.replay.RegionReport.Stretch;
 
 /**
  * Compares what a replay makes with what was published of one region, record by record as they come, so that its memory
- * does not grow with the stretch (by rejects it does, 32 bytes each). It notes the first difference and goes on looking at
- * nothing but the published counts, which tell what versions made the stretch.
+ * does not grow with the stretch (by rejects it does, 32 bytes each). It notes the first difference, and goes on reading
+ * what was published: the counts tell what versions made the stretch, and an archive keeps what is read.
  */
 final class Comparison implements RecordOutputs.Taker, AutoCloseable {
 
@@ -53,9 +53,7 @@ final class Comparison implements RecordOutputs.Taker, AutoCloseable {
             made.merge(kind, 1L, Long::sum);
             lastSequence = RecordKind.sequence(record);
             lastMicros = RecordKind.timeMicros(record);
-            if (difference == null || kind == RecordKind.COUNTS) {
-                compare(kind, record);
-            }
+            compare(kind, record);
         }
     }
 
@@ -142,20 +140,27 @@ final class Comparison implements RecordOutputs.Taker, AutoCloseable {
      */
     void finish(boolean cameToEnd) {
         for (RecordKind kind : TIMED) {
-            if (difference == null) {
-                difference = leftOver(kind, recorded.get(kind).next(), cameToEnd);
+            Difference left = null;
+            for (RecordCursor.Recorded next = recorded.get(kind).next(); next != null && !isBeyond(kind, next);
+                    next = recorded.get(kind).next()) {
+                left = left == null ? leftOver(kind, next, cameToEnd) : left;
             }
+            difference = difference == null ? left : difference;
         }
-        if (difference == null) {
-            difference = rejects.compare(recorded.get(RecordKind.REJECTS)).orElse(null);
-            reproduced.put(RecordKind.REJECTS, difference == null ? (long) rejects.size() : 0L);
+        Optional<Difference> rejected = rejects.compare(recorded.get(RecordKind.REJECTS));
+        reproduced.put(RecordKind.REJECTS, rejected.isEmpty() ? (long) rejects.size() : 0L);
+        difference = difference == null ? rejected.orElse(null) : difference;
+    }
+
+    private boolean isBeyond(RecordKind kind, RecordCursor.Recorded next) {
+        try {
+            return RecordKind.timeMicros(kind.decode(next.value())) >= span.toMicros();
+        } catch (IllegalArgumentException e) {
+            return false;
         }
     }
 
     private Difference leftOver(RecordKind kind, RecordCursor.Recorded next, boolean cameToEnd) {
-        if (next == null) {
-            return null;
-        }
         try {
             SpecificRecordBase record = kind.decode(next.value());
             boolean expected = span.holds(RecordKind.timeMicros(record))

@@ -14,8 +14,10 @@ import java.util.ArrayList;
 import java.util.Comparator;
 import java.util.List;
 import java.util.OptionalLong;
+import java.util.SplittableRandom;
 import java.util.concurrent.ExecutionException;
 import java.util.function.Function;
+import java.util.stream.Stream;
 import org.apache.kafka.clients.admin.Admin;
 import org.junit.jupiter.api.BeforeAll;
 import org.junit.jupiter.api.Test;
@@ -94,11 +96,19 @@ class ReplayOnBusTest {
     private record Run(int exitCode, String out, String err) {}
 
     private static Run replay(String... further) {
-        ByteArrayOutputStream out = new ByteArrayOutputStream();
-        ByteArrayOutputStream err = new ByteArrayOutputStream();
-        List<String> args = new ArrayList<>(List.of("replay", "--site", siteFile.toString(), "--bus",
+        return onBus("replay", further);
+    }
+
+    private static Run onBus(String command, String... further) {
+        List<String> args = new ArrayList<>(List.of(command, "--site", siteFile.toString(), "--bus",
                 TestBus.address(), "--detections", names.detections()));
         args.addAll(List.of(further));
+        return run(args);
+    }
+
+    private static Run run(List<String> args) {
+        ByteArrayOutputStream out = new ByteArrayOutputStream();
+        ByteArrayOutputStream err = new ByteArrayOutputStream();
         int exitCode = Main.run(args.toArray(String[]::new), new ByteArrayInputStream(new byte[0]),
                 new PrintStream(out, true, StandardCharsets.UTF_8), new PrintStream(err, true, StandardCharsets.UTF_8));
         return new Run(exitCode, out.toString(StandardCharsets.UTF_8), err.toString(StandardCharsets.UTF_8));
@@ -193,6 +203,68 @@ class ReplayOnBusTest {
         assertThat(tampered(region, Span.ALL, kind, 1, change).difference())
                 .as("%s: the first %s", kind, how)
                 .hasValueSatisfying(difference -> assertThat(difference.kind()).isEqualTo(kind));
+    }
+
+    @Test
+    void anArchiveGivesTheSameAnswerWithoutABus() throws IOException {
+        Path archive = folder.resolve("archive");
+        Run made = onBus("archive", "--from", Times.text(FROM), "--to", Times.text(TO), "--out", archive.toString());
+        assertThat(made.exitCode).as(made.out + made.err).isZero();
+        String digest = made.out.strip().substring(made.out.strip().lastIndexOf('\n') + 1);
+        assertThat(digest).matches("[0-9a-f]{64}");
+        Run bus = replay("--from", Times.text(FROM), "--to", Times.text(TO));
+        Run again = run(List.of("replay", "--archive", archive.toString(), "--digest", digest));
+        assertThat(again.exitCode).as(again.out + again.err).isZero();
+        assertThat(again.out).startsWith("archive of site " + names.site() + ", from 2031-05-01T04:00:35.000000Z to ");
+        assertThat(again.out).endsWith(bus.out);
+        Run narrower = run(List.of("replay", "--archive", archive.toString(), "--from", "2031-05-01T04:00:50Z",
+                "--to", "2031-05-01T04:01:00Z"));
+        assertThat(narrower.exitCode).as(narrower.out + narrower.err).isZero();
+        assertThat(run(List.of("replay", "--archive", archive.toString(), "--from", "2031-05-01T04:00:00Z")).err)
+                .contains("the archive holds what is from 2031-05-01T04:00:35.000000Z");
+        Run other = run(List.of("replay", "--archive", archive.toString(), "--digest", "0".repeat(64)));
+        assertThat(other.exitCode).isEqualTo(1);
+        assertThat(other.err).contains("the archive was altered, or is another: manifest.json has SHA-256 " + digest);
+        assertThat(onBus("archive", "--out", archive.toString()).err).contains("is not empty");
+        assertEveryFlippedBitIsFound(archive);
+    }
+
+    private static void assertEveryFlippedBitIsFound(Path archive) throws IOException {
+        List<Path> files;
+        try (Stream<Path> all = Files.walk(archive)) {
+            files = all.filter(Files::isRegularFile).sorted().toList();
+        }
+        long seed = 6;
+        SplittableRandom random = new SplittableRandom(seed);
+        int flips = 0;
+        for (Path file : files) {
+            byte[] bytes = Files.readAllBytes(file);
+            for (int i = 0; i < 5; i++) {
+                int bit = random.nextInt(8 * bytes.length);
+                byte[] flipped = bytes.clone();
+                flipped[bit / 8] ^= (byte) (1 << (bit % 8));
+                Files.write(file, flipped);
+                Run run = run(List.of("replay", "--archive", archive.toString()));
+                String name = archive.relativize(file).toString();
+                assertThat(run.exitCode).as("bit %d of %s, seed %d", bit, name, seed).isEqualTo(1);
+                assertThat(run.err).contains("the archive was altered").contains(name);
+                flips++;
+            }
+            Files.write(file, bytes);
+        }
+        Path gone = files.get(3);
+        byte[] bytes = Files.readAllBytes(gone);
+        Files.delete(gone);
+        assertThat(run(List.of("replay", "--archive", archive.toString())).err)
+                .contains(archive.relativize(gone) + " is missing");
+        Files.write(gone, bytes);
+        Path added = Files.writeString(archive.resolve("note.txt"), "by somebody");
+        assertThat(run(List.of("replay", "--archive", archive.toString())).err)
+                .contains("note.txt was not there when it was written");
+        Files.delete(added);
+        assertThat(run(List.of("replay", "--archive", archive.toString())).exitCode).isZero();
+        System.out.println("ReplayOnBusTest: " + flips + " single bits flipped in " + files.size()
+                + " files of an archive, seed " + seed + ": each found, its file named");
     }
 
     @Test
