@@ -7,6 +7,7 @@ import java.util.concurrent.Callable;
 import org.apache.kafka.common.KafkaException;
 import org.sweeptally.replay.ArchiveSource;
 import org.sweeptally.replay.BusSource;
+import org.sweeptally.replay.Explanations;
 import org.sweeptally.replay.RecordedSource;
 import org.sweeptally.replay.ReplayFailedException;
 import org.sweeptally.replay.Span;
@@ -39,6 +40,8 @@ import picocli.CommandLine.Option;
         })
 final class ReplayCommand implements Callable<Integer> {
 
+    private static final String ALL = "all";
+
     private final Terminal terminal;
 
     @Option(names = "--site", paramLabel = "FILE", description = "The site file, to replay from a bus.")
@@ -52,6 +55,16 @@ final class ReplayCommand implements Callable<Integer> {
             paramLabel = "SHA256",
             description = "The digest that was printed when the archive was made: with it, nobody can have altered it.")
     private String digest;
+
+    @Option(
+            names = "--explain",
+            paramLabel = "OBJECT",
+            description = "Also explains, scan by scan, why the object exists or not, or all objects: all. Writes"
+                    + " evidence.ndjson and a text for each object to --out.")
+    private String explained;
+
+    @Option(names = "--out", paramLabel = "DIR", description = "Folder for what --explain writes.")
+    private Path out;
 
     @Mixin
     private BusOptions busOptions;
@@ -68,6 +81,9 @@ final class ReplayCommand implements Callable<Integer> {
         try {
             if ((siteFile == null) == (archive == null)) {
                 throw new UsageException("either --site or --archive must be given, and not both");
+            }
+            if ((explained == null) != (out == null)) {
+                throw new UsageException("--explain and --out belong together");
             }
             return archive == null ? fromBus() : fromArchive();
         } catch (UsageException | SettingsRefusedException e) {
@@ -103,7 +119,24 @@ final class ReplayCommand implements Callable<Integer> {
     }
 
     private int replay(RecordedSource source, List<String> regions, Span span) {
-        ReplaySummary summary = ReplayProgress.replayAll(source, regions, span, terminal);
+        if (explained == null) {
+            return print(ReplayProgress.replayAll(source, regions, span, terminal));
+        }
+        Optional<String> only = explained.equals(ALL) ? Optional.empty() : Optional.of(explained);
+        try (Explanations explanations = new Explanations(only, out)) {
+            int exitCode = print(ReplayProgress.replayAll(source, regions, span, Optional.of(explanations), terminal));
+            explanations.finish();
+            List<Path> texts = explanations.textFiles();
+            if (only.isPresent() && texts.isEmpty()) {
+                throw new CommandFailedException("no region held object " + explained + " " + span.text());
+            }
+            terminal.out().println("explained " + (only.isPresent() ? explained : texts.size() + " objects") + ": "
+                    + (texts.size() == 1 ? texts.get(0) : "texts by region and evidence.ndjson are in " + out));
+            return exitCode;
+        }
+    }
+
+    private int print(ReplaySummary summary) {
         return summary.print(terminal.out()) ? Main.DONE : Main.FAILED;
     }
 }

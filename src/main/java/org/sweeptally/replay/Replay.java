@@ -1,6 +1,7 @@
 package org.sweeptally.replay;
 
 import java.util.Map;
+import java.util.Optional;
 import org.sweeptally.region.RegionMachine;
 import org.sweeptally.stream.Snapshot;
 
@@ -21,9 +22,15 @@ public final class Replay {
      * @throws ReplayFailedException if the source does not hold what is needed
      */
     public RegionReport region(String region, Span span) {
+        return region(region, span, Optional.empty());
+    }
+
+    /** The same, and explains meanwhile why objects exist. */
+    public RegionReport region(String region, Span span, Optional<Explanations> explanations) {
         RecordedSource.Beginning beginning = source.before(region, span.fromMicros());
         LogRun run = new LogRun(source, region, beginning, progress);
         RegionMachine machine = run.machine();
+        explanations.ifPresent(written -> machine.observe(written.of(region, span)));
         try (Comparison comparison = new Comparison(source, region, beginning, span)) {
             boolean cameToEnd = run.run(machine, span, comparison);
             comparison.finish(cameToEnd);

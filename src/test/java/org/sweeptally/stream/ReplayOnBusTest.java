@@ -17,6 +17,7 @@ import java.util.OptionalLong;
 import java.util.SplittableRandom;
 import java.util.concurrent.ExecutionException;
 import java.util.function.Function;
+import java.util.stream.Collectors;
 import java.util.stream.Stream;
 import org.apache.kafka.clients.admin.Admin;
 import org.junit.jupiter.api.BeforeAll;
@@ -265,6 +266,28 @@ class ReplayOnBusTest {
         assertThat(run(List.of("replay", "--archive", archive.toString())).exitCode).isZero();
         System.out.println("ReplayOnBusTest: " + flips + " single bits flipped in " + files.size()
                 + " files of an archive, seed " + seed + ": each found, its file named");
+    }
+
+    @Test
+    void anObjectIsExplainedScanByScanInTheWordsOfAPerson() throws IOException {
+        String object = "north-shore-20310501T040000.000000Z-0-11";
+        Path out = folder.resolve("explained");
+        Run run = onBus("replay", "--from", Times.text(FROM), "--to", Times.text(TO), "--explain", object, "--out",
+                out.toString());
+        assertThat(run.exitCode).as(run.out + run.err).isZero();
+        assertThat(run.out).contains("reproduced 334 of 334 records bit for bit");
+        String text = Files.readString(out.resolve("east-side").resolve(object + ".txt"));
+        System.out.println("ReplayOnBusTest: " + text.lines().limit(30).collect(Collectors.joining("\n")));
+        assertThat(text).startsWith("Object " + object + " in region east-side\n")
+                .contains("The steps sum to the\nwhole change.")
+                .contains("look of north-shore, region east-side", "one detection may be its",
+                        "time has passed, in which it may have gone", "; shown where it is in the region");
+        assertThat(Files.readAllLines(out.resolve("evidence.ndjson"))).isNotEmpty().allSatisfy(line ->
+                assertThat(line).contains("\"object\":\"" + object + "\"", "\"logOddsAfter\":", "\"steps\":["));
+        Run nobody = onBus("replay", "--explain", "nobody", "--out", out.toString());
+        assertThat(nobody.exitCode).isEqualTo(1);
+        assertThat(nobody.err).contains("no region held object nobody");
+        assertThat(replay("--explain", "all").exitCode).isEqualTo(2);
     }
 
     @Test
