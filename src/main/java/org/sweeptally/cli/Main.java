@@ -35,7 +35,7 @@ import picocli.CommandLine.Spec;
         },
         subcommands = {
             CheckCommand.class, DryRunCommand.class, DemoCommand.class, TopicsCommand.class, RunCommand.class,
-            PublishCommand.class
+            PublishCommand.class, ReplayCommand.class, ArchiveCommand.class
         })
 public final class Main implements Runnable {
 
@@ -87,7 +87,7 @@ public final class Main implements Runnable {
     @Override
     public void run() {
         throw new ParameterException(
-                spec.commandLine(), "a command is missing: check, dry-run, demo, topics, run or publish");
+                spec.commandLine(), "a command is missing: check, dry-run, demo, topics, run, publish, replay or archive");
     }
 
     /** Gives every command its terminal. */
@@ -111,6 +111,12 @@ public final class Main implements Runnable {
             }
             if (type == PublishCommand.class) {
                 return type.cast(new PublishCommand(terminal));
+            }
+            if (type == ReplayCommand.class) {
+                return type.cast(new ReplayCommand(terminal));
+            }
+            if (type == ArchiveCommand.class) {
+                return type.cast(new ArchiveCommand(terminal));
             }
             return CommandLine.defaultFactory().create(type);
         }

@@ -19,8 +19,12 @@ final class SiteOption {
             description = "The site file (YAML): sensors, regions, motion, thresholds.")
     private Path file;
 
-    /** The site, or nothing after every fault of the file was printed on a line of its own. */
     Optional<Site> read(PrintStream err) {
+        return read(file, err);
+    }
+
+    /** The site, or nothing after every fault of the file was printed on a line of its own. */
+    static Optional<Site> read(Path file, PrintStream err) {
         SiteResult result = SiteReader.read(file);
         if (result instanceof SiteResult.Faulty faulty) {
             faulty.faults().forEach((Fault fault) -> err.println(fault));

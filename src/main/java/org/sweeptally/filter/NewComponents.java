@@ -24,6 +24,9 @@ final class NewComponents {
     private final Counters counters;
     private final SortedSet<Identity> alive = new TreeSet<>();
 
+    /** Null where nobody wants to know. */
+    private final EvidenceNotes notes;
+
     NewComponents(
             Scan scan,
             long logTimeMicros,
@@ -32,7 +35,8 @@ final class NewComponents {
             double[] clutter,
             List<Component> components,
             FilterSettings settings,
-            Counters counters) {
+            Counters counters,
+            EvidenceNotes notes) {
         this.scan = scan;
         this.logTimeMicros = logTimeMicros;
         this.unseen = unseen;
@@ -40,6 +44,7 @@ final class NewComponents {
         this.clutter = clutter;
         this.recyclingBelow = settings.recyclingBelow();
         this.counters = counters;
+        this.notes = notes;
         for (Component component : components) {
             alive.add(component.identity());
         }
@@ -91,7 +96,7 @@ final class NewComponents {
         Component.Use use = new Component.Use(observation.part(), observation.index(), observation.id(), 1);
         Heir heir = unseen.heir(evidence, j);
         boolean inherits = heir != null && Integer.valueOf(j).equals(heirs.get(heir.tag().identity()));
-        return new Component(
+        Component component = new Component(
                 history(observation, inherits ? heir : null),
                 unseen.firstSeen(scan, evidence, j),
                 Unseen.detected(
@@ -99,6 +104,10 @@ final class NewComponents {
                 logOdds,
                 false,
                 List.of(use));
+        if (notes != null) {
+            notes.begun(component, observation, inherits, e, clutter[j], hypotheses.nobodys(j));
+        }
+        return component;
     }
 
     private ObjectHistory history(Observation observation, Heir heir) {

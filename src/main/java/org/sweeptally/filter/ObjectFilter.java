@@ -8,6 +8,7 @@ import java.util.Collections;
 import java.util.Comparator;
 import java.util.List;
 import java.util.Optional;
+import java.util.function.Consumer;
 import org.sweeptally.filter.association.Association;
 import org.sweeptally.filter.association.AssociationProblem;
 import org.sweeptally.filter.count.NumberDistribution;
@@ -42,6 +43,12 @@ public final class ObjectFilter {
     private FilterSettings settings;
     private Modes modes;
     private List<Component> components = new ArrayList<>();
+
+    /** Null where nobody wants to know why existence changes; then nothing is noted. */
+    private Consumer<ScanEvidence> observer;
+
+    /** Log-odds of the components before time passed; only where they are observed. */
+    private double[] beforeSurvival;
 
     /**
      * @param core        the area that the region answers for, in its plane
@@ -85,14 +92,28 @@ public final class ObjectFilter {
         return clutterMap;
     }
 
+    /** From now on tells after every scan why existence changed; what the filter does stays the same to the last bit. */
+    public void observe(Consumer<ScanEvidence> evidence) {
+        observer = evidence;
+    }
+
     /** Lets time pass, 0 seconds or more: survival, motion, births, inflow. */
     public void predict(double seconds) {
+        beforeSurvival = observer == null ? null : logOdds();
         double[] survival = modes.survival(seconds);
         for (Component component : components) {
             component.logOdds = LogOdds.survive(component.logOdds, modes.survive(component.bank, survival));
             modes.move(component.bank, seconds);
         }
         unseen.predict(survival, seconds);
+    }
+
+    private double[] logOdds() {
+        double[] values = new double[components.size()];
+        for (int i = 0; i < values.length; i++) {
+            values[i] = components.get(i).logOdds;
+        }
+        return values;
     }
 
     /**
@@ -112,8 +133,9 @@ public final class ObjectFilter {
         clutterMap.learn(
                 scan, j -> hypotheses.nobodys(j) * (clutter[j] / (clutter[j] + evidence.total(j))), logTimeMicros);
 
+        EvidenceNotes notes = observer == null ? null : notes(hypotheses);
         List<Component> begun = new NewComponents(
-                        scan, logTimeMicros, unseen, evidence, clutter, components, settings, counters)
+                        scan, logTimeMicros, unseen, evidence, clutter, components, settings, counters, notes)
                 .begin(hypotheses);
         new Posteriors(hypotheses, modes, logTimeMicros).update();
         unseen.missed(scan.look());
@@ -122,7 +144,17 @@ public final class ObjectFilter {
         components.addAll(begun);
         ScanResult result = sortOut();
         unseen.tidy();
+        if (notes != null) {
+            observer.accept(notes.finish(scan, logTimeMicros, result));
+        }
         return result;
+    }
+
+    private EvidenceNotes notes(ScanHypotheses hypotheses) {
+        EvidenceNotes notes = new EvidenceNotes(components, beforeSurvival == null ? logOdds() : beforeSurvival);
+        beforeSurvival = null;
+        notes.associated(hypotheses);
+        return notes;
     }
 
     /** Confirms, recycles and lets go. */

@@ -210,6 +210,33 @@ final class ScanHypotheses {
                 : marginals.missed(i);
     }
 
+    /** Probability that the scan detects component i, if it exists. */
+    double detection(int i) {
+        return detection[i];
+    }
+
+    /** Probability that the scan detects component i if it is detectable; 0 where misses have no runs here. */
+    double whenDetectable(int i) {
+        return whenDetectable[i];
+    }
+
+    /** How much more probable a pair's observation is if component i exists than if nobody known caused it. */
+    double likelihoodRatio(int i, int pair) {
+        return problem.weight(pair) / existence[i] / problem.nobodyWeight(problem.column(pair));
+    }
+
+    /** The component of a pair. */
+    int rowOf(int pair) {
+        int low = 0;
+        int high = components.size();
+        while (high - low > 1) {
+            int middle = (low + high) / 2;
+            low = problem.rowStart(middle) <= pair ? middle : low;
+            high = problem.rowStart(middle) <= pair ? high : middle;
+        }
+        return low;
+    }
+
     /** Whether the scan tells anything of component i's detectability. */
     boolean tellsDetectability(int i) {
         return whenDetectable[i] > 0;

@@ -4,6 +4,7 @@ import java.util.Collections;
 import java.util.Map;
 import java.util.OptionalInt;
 import java.util.OptionalLong;
+import java.util.function.Consumer;
 import java.util.function.Function;
 import org.sweeptally.event.EndOfInputBody;
 import org.sweeptally.event.EndedBody;
@@ -19,6 +20,7 @@ import org.sweeptally.event.RejectReason;
 import org.sweeptally.event.SettingsBody;
 import org.sweeptally.event.SilentBody;
 import org.sweeptally.event.TickBody;
+import org.sweeptally.filter.ScanEvidence;
 import org.sweeptally.site.SensorSettings;
 import org.sweeptally.site.Site;
 
@@ -47,6 +49,7 @@ public final class RegionMachine {
     private final Findings findings;
     private final PartArrivals arrivals;
     private final TickWatch watch;
+    private Consumer<ScanEvidence> observer;
 
     /**
      * The machine at the beginning of its region's log.
@@ -63,6 +66,17 @@ public final class RegionMachine {
         this.findings = new Findings(state.region);
         this.arrivals = new PartArrivals(state, findings);
         this.watch = new TickWatch(state, findings);
+    }
+
+    /**
+     * From now on tells after every scan why the existence of its objects changed. Records, state and counters stay the
+     * same to the last bit.
+     */
+    public void observe(Consumer<ScanEvidence> evidence) {
+        observer = evidence;
+        if (state.effect != null) {
+            state.effect.filter().observe(evidence);
+        }
     }
 
     /**
@@ -141,6 +155,7 @@ public final class RegionMachine {
         state.counters.add(RegionCounters.Name.SETTINGS);
         state.timeline = new SettingsTimeline(first);
         state.effect = new ScanEffect(first);
+        state.effect.filter().observe(observer);
         state.meetSensors();
         for (LogEntry entry : state.raw.takeAll()) {
             take(entry, out);

@@ -177,7 +177,7 @@ public final class ClientSettings {
         return settings;
     }
 
-    Map<String, Object> admin(String clientId) {
+    public Map<String, Object> admin(String clientId) {
         return client(ADMIN, AdminClientConfig.configNames(), clientId);
     }
 

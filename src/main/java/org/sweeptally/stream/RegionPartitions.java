@@ -13,13 +13,13 @@ import org.apache.kafka.streams.processor.StreamPartitioner;
  * Which partition a region's records go to: its place in the order of the site's regions by name, counted round and
  * round through the partitions. Keys are the region's name, or the region's name, a slash and an object.
  */
-final class RegionPartitions implements StreamPartitioner<byte[], byte[]> {
+public final class RegionPartitions implements StreamPartitioner<byte[], byte[]> {
 
     private static final byte SLASH = '/';
 
     private final List<String> regions;
 
-    RegionPartitions(Collection<String> regions) {
+    public RegionPartitions(Collection<String> regions) {
         this.regions = regions.stream().sorted().toList();
     }
 
@@ -33,7 +33,7 @@ final class RegionPartitions implements StreamPartitioner<byte[], byte[]> {
      *
      * @throws IllegalArgumentException if the site has no such region
      */
-    int partition(String region, int partitions) {
+    public int partition(String region, int partitions) {
         int place = Collections.binarySearch(regions, region);
         if (place < 0) {
             throw new IllegalArgumentException("the site has no region " + region + ", its regions are " + regions);
@@ -52,12 +52,12 @@ final class RegionPartitions implements StreamPartitioner<byte[], byte[]> {
         return found;
     }
 
-    static byte[] key(String region) {
+    public static byte[] key(String region) {
         return region.getBytes(StandardCharsets.UTF_8);
     }
 
     /** The region that a key begins with. */
-    static String region(byte[] key) {
+    public static String region(byte[] key) {
         int length = 0;
         while (length < key.length && key[length] != SLASH) {
             length++;

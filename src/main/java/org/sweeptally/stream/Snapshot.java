@@ -15,7 +15,7 @@ import org.sweeptally.region.wire.Digests;
  * The whole state of a region as records that fit any bus: pieces under 512 KiB, and a head that tells what they add up
  * to.
  */
-record Snapshot(SnapshotHead head, List<SnapshotPiece> pieces) {
+public record Snapshot(SnapshotHead head, List<SnapshotPiece> pieces) {
 
     /** With the record around it a piece stays under 512 KiB. */
     static final int PIECE_BYTES = 500 * 1024;
@@ -57,7 +57,7 @@ record Snapshot(SnapshotHead head, List<SnapshotPiece> pieces) {
      *
      * @throws IllegalStateException if they are not what the head says
      */
-    byte[] state() {
+    public byte[] state() {
         ByteArrayOutputStream state = new ByteArrayOutputStream((int) head.getLengthBytes());
         for (SnapshotPiece piece : pieces) {
             ByteBuffer bytes = piece.getBytes().duplicate();

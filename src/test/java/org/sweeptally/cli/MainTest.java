@@ -42,7 +42,7 @@ class MainTest {
         assertThat(run.exitCode()).isEqualTo(2);
         assertThat(run.out()).isEmpty();
         assertThat(run.err())
-                .startsWith("a command is missing: check, dry-run, demo, topics, run or publish\n")
+                .startsWith("a command is missing: check, dry-run, demo, topics, run, publish, replay or archive\n")
                 .contains("Usage: sweeptally");
     }
 
