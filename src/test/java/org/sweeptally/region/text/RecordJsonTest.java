@@ -45,7 +45,7 @@ class RecordJsonTest {
                 "object", "region", "sequence", "sensor", "scanTime", "scan", "time", "latitude", "longitude",
                         "eastMetres",
                 "northMetres", "eastMetresPerSecond", "northMetresPerSecond", "covariance", "existence", "moving",
-                        "firstSeen",
+                "identityProbability", "mayBe", "firstSeen",
                 "lastDetected", "used", "declaredIdentity");
         assertThat(json.get("object").asText()).isEqualTo(OBJECT);
         assertThat(json.get("scanTime").asText()).isEqualTo("2031-05-01T04:00:42.500000Z");
