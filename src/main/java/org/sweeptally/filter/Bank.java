@@ -5,8 +5,9 @@ import org.sweeptally.model.Gaussian;
 
 /**
  * What is known of one object, if it exists: for each {@linkplain Modes way of moving} its probability and a Gaussian
- * over [east, north, east velocity, north velocity], as interacting multiple models keep it (Blom and Bar-Shalom 1988, "The
- * interacting multiple model algorithm for systems with Markovian switching coefficients", IEEE TAC 33(8):780-783).
+ * over [east, north, east velocity, north velocity], as interacting multiple models keep it (Blom and Bar-Shalom 1988,
+ * "The interacting multiple model algorithm for systems with Markovian switching coefficients", IEEE TAC
+ * 33(8):780-783).
  */
 final class Bank {
 

@@ -9,19 +9,21 @@ import org.sweeptally.model.Gaussian;
 /**
  * Deals out what may have become of a few close objects so that each component's share is as compact as can be.
  *
- * <p>After a scan, component i is a mixture over the observations that it may have caused. Where two objects are so close that
- * each may have caused either of two observations, both mixtures have the same two humps, and their means fall together
- * although nobody believes that the objects do. But a set of objects has no order: which component stands for which hump is
- * ours to choose. So all pasts (component, observation or missed), with their marginal probabilities, are dealt out anew
- * among the components, shares q of past h for component j with sums kept both ways, to make
+ * <p>After a scan, component i is a mixture over the observations that it may have caused. Where two objects are so
+ * close that each may have caused either of two observations, both mixtures have the same two humps, and their means
+ * fall together although nobody believes that the objects do. But a set of objects has no order: which component
+ * stands for which hump is ours to choose. So all pasts (component, observation or missed), with their marginal
+ * probabilities, are dealt out anew among the components, shares q of past h for component j with sums kept both ways,
+ * to make
  *
  * <pre>
  *   sum over h, j of q(h, j) * (cross-entropy of h's Bernoulli to component j's)
  * </pre>
  *
  * least: the variational best-fitting multi-Bernoulli of Williams 2015, "An efficient, variational approximation of the
- * best fitting multi-Bernoulli filter", IEEE TSP 63(1):258-273. Shares and components' moments are improved by turns, neither
- * of which can make the sum greater; the shares (a transport problem) by exchange between two components at a time.
+ * best fitting multi-Bernoulli filter", IEEE TSP 63(1):258-273. Shares and components' moments are improved by turns,
+ * neither of which can make the sum greater; the shares (a transport problem) by exchange between two components at a
+ * time.
  *
  * <p>Between two that sail alike only places are compared: their velocities then hold no more than the noise of earlier
  * choices, and would go on with these. Two that cross are compared with their velocities, which keep them apart.
@@ -197,7 +199,10 @@ final class BestFit {
         }
     }
 
-    /** Expected -log density of a Gaussian g under another f, but for a constant: (log |G| + tr(G^-1 (F + d d'))) / 2. */
+    /**
+     * Expected -log density of a Gaussian g under another f, but for a constant: (log |G| + tr(G^-1 (F + d d'))) /
+     * 2.
+     */
     private static final class CrossEntropy {
 
         private final DMatrix4 mean;

@@ -6,7 +6,10 @@ import java.io.IOException;
 import java.util.LinkedHashMap;
 import java.util.Map;
 
-/** How often what happened, and how often each bound bit. Part of the state, so that a restored filter goes on counting. */
+/**
+ * How often what happened, and how often each bound bit. Part of the state, so that a restored filter goes on
+ * counting.
+ */
 public final class Counters {
 
     /** What is counted. The order is the order in snapshots. */

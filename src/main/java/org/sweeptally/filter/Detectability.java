@@ -8,8 +8,8 @@ import org.sweeptally.model.MissRuns;
  * values, of which only looks tell. For a sensor that has not looked yet it is the stationary share. Never changed.
  *
  * <p>With share s of time detectable and mean time h hidden, detectable times last h s / (1 - s) on average, and what
- * was known at one time is forgotten exponentially with the time constant h s: the two-state Markov chain (Gilbert 1960,
- * "Capacity of a burst-noise channel", from memory).
+ * was known at one time is forgotten exponentially with the time constant h s: the two-state Markov chain (Gilbert
+ * 1960, "Capacity of a burst-noise channel", from memory).
  */
 final class Detectability {
 

@@ -126,7 +126,8 @@ final class DetectionIndex {
     }
 
     /**
-     * Finds all measurements within a box around the gates of a bank's modes; some may lie outside the gates themselves.
+     * Finds all measurements within a box around the gates of a bank's modes; some may lie outside the gates
+     * themselves.
      *
      * @return how many; {@link #found} names them, in order of the scan
      */

@@ -25,8 +25,8 @@ final class ModeMixing {
     private Gaussian[] mixedDensities = new Gaussian[0];
 
     /**
-     * Replaces weights and densities, as they were after the last scan, by those with which the modes are predicted. The
-     * Gaussians handed in are not changed; no two modes share one afterwards. A mode of weight 0 keeps its density.
+     * Replaces weights and densities, as they were after the last scan, by those with which the modes are predicted.
+     * The Gaussians handed in are not changed; no two modes share one afterwards. A mode of weight 0 keeps its density.
      *
      * @param weights    of the modes, 0 or more; their sum stays
      * @param densities  one a mode

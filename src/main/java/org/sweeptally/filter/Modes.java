@@ -9,8 +9,8 @@ import org.sweeptally.model.MotionMode;
 import org.sweeptally.model.MotionProfile;
 
 /**
- * All ways of moving of a site, profile after profile, as the {@linkplain Bank banks} of its objects number them, and how
- * time passes for a bank.
+ * All ways of moving of a site, profile after profile, as the {@linkplain Bank banks} of its objects number them, and
+ * how time passes for a bank.
  */
 final class Modes {
 
@@ -203,8 +203,9 @@ final class Modes {
     }
 
     /**
-     * Probability that a density's speed is one that its profile has, by the Gaussian along its mean velocity; the normal
-     * distribution function as a logistic one, within 0.01 (Haley 1952, from memory). Never 0, so that no scan ends all modes.
+     * Probability that a density's speed is one that its profile has, by the Gaussian along its mean velocity; the
+     * normal distribution function as a logistic one, within 0.01 (Haley 1952, from memory). Never 0, so that no scan
+     * ends all modes.
      */
     private double withinSpeed(int mode, Gaussian density) {
         double largest = profiles.get(profileOf[mode]).largestSpeed();

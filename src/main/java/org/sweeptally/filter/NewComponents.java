@@ -9,9 +9,9 @@ import java.util.TreeSet;
 import org.sweeptally.filter.Unseen.Heir;
 
 /**
- * Begins a component at every observation of a scan, from the unseen part. Alone in the world, observation j would be an
- * object seen for the first time with probability e / (clutter + e) (Williams 2015); here it is that times the marginal
- * probability that no component caused it.
+ * Begins a component at every observation of a scan, from the unseen part. Alone in the world, observation j would be
+ * an object seen for the first time with probability e / (clutter + e) (Williams 2015); here it is that times the
+ * marginal probability that no component caused it.
  */
 final class NewComponents {
 

@@ -3,8 +3,8 @@ package org.sweeptally.filter;
 import java.util.List;
 
 /**
- * Why the existence of one component is after a scan what it is. All of it is in natural log-odds: before plus the steps
- * is after, and for a component that this scan began the steps alone are.
+ * Why the existence of one component is after a scan what it is. All of it is in natural log-odds: before plus the
+ * steps is after, and for a component that this scan began the steps alone are.
  *
  * @param before                 log-odds of existence after the scan before; NaN where this scan began it
  * @param steps                  what changed them, in order

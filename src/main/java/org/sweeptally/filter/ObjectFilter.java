@@ -27,7 +27,10 @@ import org.sweeptally.geo.PlaneArea;
  */
 public final class ObjectFilter {
 
-    /** Probability of moving below which a moving object counts as still, and from which a still one counts as moving. */
+    /**
+     * Probability of moving below which a moving object counts as still, and from which a still one counts as
+     * moving.
+     */
     private static final double STOPPED = 0.3;
 
     private static final double STARTED = 0.7;
@@ -92,7 +95,10 @@ public final class ObjectFilter {
         return clutterMap;
     }
 
-    /** From now on tells after every scan why existence changed; what the filter does stays the same to the last bit. */
+    /**
+     * From now on tells after every scan why existence changed; what the filter does stays the same to the last
+     * bit.
+     */
     public void observe(Consumer<ScanEvidence> evidence) {
         observer = evidence;
     }
@@ -213,7 +219,10 @@ public final class ObjectFilter {
         return kept;
     }
 
-    /** Distribution of the number of components' objects in the core, each weighted with its probability of being there. */
+    /**
+     * Distribution of the number of components' objects in the core, each weighted with its probability of being
+     * there.
+     */
     public NumberDistribution count() {
         double[] probabilities = new double[components.size()];
         for (int i = 0; i < probabilities.length; i++) {

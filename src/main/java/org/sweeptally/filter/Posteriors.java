@@ -159,7 +159,10 @@ final class Posteriors {
         }
     }
 
-    /** Everything that may have become of the members of a crowd: for each, that it was missed, then its observations. */
+    /**
+     * Everything that may have become of the members of a crowd: for each, that it was missed, then its
+     * observations.
+     */
     private final class Pasts {
 
         final int count;
@@ -291,12 +294,12 @@ final class Posteriors {
         }
 
         /** A member's shares of another's pasts. */
-        void some(Pasts all, int from, int to, double[][] dealt, int to1) {
+        void some(Pasts all, int from, int to, double[][] dealt, int receiver) {
             pasts = all;
             first = from;
             count = to - from;
             shares = dealt;
-            member = to1;
+            member = receiver;
         }
 
         @Override

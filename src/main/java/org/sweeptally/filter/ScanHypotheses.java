@@ -12,11 +12,13 @@ import org.sweeptally.model.Measurement;
 import org.sweeptally.model.MissRuns;
 
 /**
- * Which component may have caused which observation of a scan, and how probable each pair is in the light of all others.
+ * Which component may have caused which observation of a scan, and how probable each pair is in the light of all
+ * others.
  *
  * <p>With existence r, probability of detection pd and likelihood l: a pair weighs r pd l(z), a missed component
- * 1 - r pd, an observation of nobody's clutter + e (Williams 2015). The marginal probabilities of one-to-one associations
- * with these weights come from {@link Association}; what they make of the components is up to {@link Posteriors}.
+ * 1 - r pd, an observation of nobody's clutter + e (Williams 2015). The marginal probabilities of one-to-one
+ * associations with these weights come from {@link Association}; what they make of the components is up to {@link
+ * Posteriors}.
  */
 final class ScanHypotheses {
 
@@ -35,7 +37,10 @@ final class ScanHypotheses {
 
     private final double[] absence;
 
-    /** Probability that the scan detects each component, if it exists: averaged over its density and its detectability. */
+    /**
+     * Probability that the scan detects each component, if it exists: averaged over its density and its
+     * detectability.
+     */
     private final double[] detection;
 
     /** Probability that a look detects each component if it is detectable; 0 where misses have no runs here. */
@@ -92,8 +97,9 @@ final class ScanHypotheses {
     }
 
     /**
-     * Adds component i's row to the problem. Near an edge the probability of detection of a pair is taken where the sensor
-     * measured, since that decided whether it would report it: of two looks side by side the one that reported has it.
+     * Adds component i's row to the problem. Near an edge the probability of detection of a pair is taken where the
+     * sensor measured, since that decided whether it would report it: of two looks side by side the one that reported
+     * has it.
      */
     private void gate(Component component, int i, DetectionIndex index) {
         Look look = scan.look();

@@ -11,20 +11,21 @@ import org.sweeptally.model.Look;
 import org.sweeptally.model.MotionProfile;
 
 /**
- * Expected number of objects of one kind never detected so far, cell by cell, over a region's core and apron. Their velocity has
- * mean 0 and the standard deviation of the settings along each axis.
+ * Expected number of objects of one kind never detected so far, cell by cell, over a region's core and apron. Their
+ * velocity has mean 0 and the standard deviation of the settings along each axis.
  *
  * <p>Between scans a cell's mass m obeys
  *
  * <pre>
- *   dm/dt = a (sum of its four neighbours' m  -  4 m)  -  m / lifetime  +  births,      a = speedSigma / (sqrt(2 pi) side)
+ *   dm/dt = a (sum of its four neighbours' m  -  4 m)  -  m / lifetime  +  births,      a = speedSigma / (sqrt(2 pi)
+ * side)
  * </pre>
  *
  * since the flux of a Gaussian velocity through a side is density times speedSigma / sqrt(2 pi). Across an open border
- * the neighbour is the outside, whose density never changes. The equation is linear, so that its exact solution over any
- * time step exists, and predicting over 3 s is predicting over 1 s and then over 2 s. It is computed by uniformisation
- * (Jensen 1953, "Markoff chains as an aid in the study of Markoff processes"): all terms are positive, nothing cancels,
- * and the series ends where what is left is below the rounding of a double.
+ * the neighbour is the outside, whose density never changes. The equation is linear, so that its exact solution over
+ * any time step exists, and predicting over 3 s is predicting over 1 s and then over 2 s. It is computed by
+ * uniformisation (Jensen 1953, "Markoff chains as an aid in the study of Markoff processes"): all terms are positive,
+ * nothing cancels, and the series ends where what is left is below the rounding of a double.
  */
 final class UnseenGrid {
 
@@ -268,8 +269,8 @@ final class UnseenGrid {
     }
 
     /**
-     * Takes over a share of another grid's density wherever the other has one; elsewhere this grid keeps its own. A cell
-     * takes the mean over points spread evenly in it.
+     * Takes over a share of another grid's density wherever the other has one; elsewhere this grid keeps its own. A
+     * cell takes the mean over points spread evenly in it.
      */
     void takeFrom(UnseenGrid other, double share) {
         for (int row = 0; row < rows; row++) {

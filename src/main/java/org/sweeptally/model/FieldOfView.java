@@ -33,7 +33,8 @@ public final class FieldOfView {
     private double seenSquareMetres = Double.NaN;
 
     /**
-     * @param position         of the sensor; not a number where it is beyond the plane's horizon, and then it sees nothing
+     * @param position         of the sensor; not a number where it is beyond the plane's horizon, and then it sees
+     * nothing
      * @param leastRangeMetres nearer than this it sees nothing
      * @param reachMetres      nor farther
      * @param sectors          that it looks into, in the plane; none for all around

@@ -17,7 +17,10 @@ public final class Gaussian {
         this.covariance = covariance;
     }
 
-    /** At a place with a 2 x 2 position covariance, and with a velocity of mean 0 that has the same spread along each axis. */
+    /**
+     * At a place with a 2 x 2 position covariance, and with a velocity of mean 0 that has the same spread along each
+     * axis.
+     */
     public static Gaussian atRest(
             double east, double north, double varEast, double covEastNorth, double varNorth, double speedSigma) {
         double varSpeed = speedSigma * speedSigma;

@@ -67,7 +67,10 @@ public final class MeasurementUpdate {
         gainOf = null;
     }
 
-    /** Takes one measurement; false where the innovation covariance is not positive definite, and then nothing may be read. */
+    /**
+     * Takes one measurement; false where the innovation covariance is not positive definite, and then nothing may be
+     * read.
+     */
     public boolean measure(Measurement measurement) {
         if (measurement instanceof PolarMeasurement z) {
             isPolar = polar.measure(prior, z);
@@ -99,8 +102,8 @@ public final class MeasurementUpdate {
     }
 
     /**
-     * Squared distance of the measurement in standard deviations: the innovation's Mahalanobis distance, of two numbers,
-     * or of three with a range rate.
+     * Squared distance of the measurement in standard deviations: the innovation's Mahalanobis distance, of two
+     * numbers, or of three with a range rate.
      */
     public double distanceSquared() {
         if (isPolar) {

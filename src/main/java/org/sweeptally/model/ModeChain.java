@@ -4,13 +4,14 @@ import java.util.List;
 
 /**
  * How an object changes between the modes of one profile: a Markov chain in continuous time. It leaves a mode at the
- * rate 1 / dwellSeconds, for one of the others in proportion to their shares; a mode beside others of no share at all is
- * never left.
+ * rate 1 / dwellSeconds, for one of the others in proportion to their shares; a mode beside others of no share at all
+ * is never left.
  *
- * <p>Its transition matrix over t seconds, exp(Q t), is found by uniformisation (Jensen 1953): with the greatest rate L,
- * S = I + Q / L has no negative entry, and exp(Q t) is proportional to the sum over k of (L t)^k / k! S^k, all terms of
- * which are 0 or more, so nothing cancels. Scaling and squaring keeps L t small in the series (Moler and Van Loan 2003,
- * SIAM Review 45:3-49, method 3). Rows are made to sum to 1 after each squaring, or their error would double each time.
+ * <p>Its transition matrix over t seconds, exp(Q t), is found by uniformisation (Jensen 1953): with the greatest rate
+ * L, S = I + Q / L has no negative entry, and exp(Q t) is proportional to the sum over k of (L t)^k / k! S^k, all
+ * terms of which are 0 or more, so nothing cancels. Scaling and squaring keeps L t small in the series (Moler and Van
+ * Loan 2003, SIAM Review 45:3-49, method 3). Rows are made to sum to 1 after each squaring, or their error would
+ * double each time.
  */
 public final class ModeChain {
 

@@ -15,8 +15,8 @@ import org.ejml.data.DMatrix4x4;
  *
  * <p>What the circle leaves its tangent by, over what is uncertain of the object across, is noise to a linear filter:
  * the variance of the second order is added to that of the range and of the range rate (second-order filter: Athans,
- * Wishner and Bertolini 1968, IEEE Transactions on Automatic Control 13(5), from memory). Without it two circles that are
- * nearly the same would seem to cross at a place.
+ * Wishner and Bertolini 1968, IEEE Transactions on Automatic Control 13(5), from memory). Without it two circles that
+ * are nearly the same would seem to cross at a place.
  *
  * <p>With an azimuth of the innovation that is uncertain by over {@link #MOST_AZIMUTH_VARIANCE}, near the sensor and
  * before anything is known of an object, polar coordinates are no good to linearise in, nor where the steps do not

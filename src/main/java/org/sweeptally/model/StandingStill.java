@@ -4,10 +4,10 @@ import org.ejml.data.DMatrix4;
 import org.ejml.data.DMatrix4x4;
 
 /**
- * Standing still: moored, anchored or built there. The position is a random walk of small spectral density q, P + q t I,
- * so that a vessel may swing at its anchor and an old estimate go on learning; the velocity is 0. Its small variance says
- * how fast an object may be at the moment when it begins to move, and does not move this one. Exact for any step: a
- * prediction over 3 s equals one over 1 s and then one over 2 s.
+ * Standing still: moored, anchored or built there. The position is a random walk of small spectral density q, P + q t
+ * I, so that a vessel may swing at its anchor and an old estimate go on learning; the velocity is 0. Its small
+ * variance says how fast an object may be at the moment when it begins to move, and does not move this one. Exact for
+ * any step: a prediction over 3 s equals one over 1 s and then one over 2 s.
  *
  * @param positionNoise spectral density q along each axis, square metres a second
  * @param speedSigma    standard deviation of the velocity along each axis, metres a second, more than 0

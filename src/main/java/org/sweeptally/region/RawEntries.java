@@ -5,8 +5,8 @@ import java.util.List;
 import org.sweeptally.event.LogEntry;
 
 /**
- * Entries that came before the first settings, without which they cannot be understood. Whoever runs a region writes its
- * settings first, so that only few can come before; a log without settings must not fill the memory.
+ * Entries that came before the first settings, without which they cannot be understood. Whoever runs a region writes
+ * its settings first, so that only few can come before; a log without settings must not fill the memory.
  */
 final class RawEntries {
 

@@ -95,8 +95,8 @@ final class SensorOrder {
     }
 
     /**
-     * Ends the sensor's being passed over, if it is: from here on the region waits for it again. A part that could not be
-     * used does not do that, or a sensor whose times are of no use would hold the region for ever.
+     * Ends the sensor's being passed over, if it is: from here on the region waits for it again. A part that could not
+     * be used does not do that, or a sensor whose times are of no use would hold the region for ever.
      *
      * @return whether it was passed over
      */

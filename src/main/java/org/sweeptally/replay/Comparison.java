@@ -15,8 +15,8 @@ import org.sweeptally.replay.RegionReport.Stretch;
 
 /**
  * Compares what a replay makes with what was published of one region, record by record as they come, so that its memory
- * does not grow with the stretch (by rejects it does, 32 bytes each). It notes the first difference, and goes on reading
- * what was published: the counts tell what versions made the stretch, and an archive keeps what is read.
+ * does not grow with the stretch (by rejects it does, 32 bytes each). It notes the first difference, and goes on
+ * reading what was published: the counts tell what versions made the stretch, and an archive keeps what is read.
  */
 final class Comparison implements RecordOutputs.Taker, AutoCloseable {
 

@@ -31,7 +31,10 @@ final class RejectMatch {
         return replayed.size();
     }
 
-    /** Looks for a run of the recorded rejects that holds those of the replay as a set; what differs if there is none. */
+    /**
+     * Looks for a run of the recorded rejects that holds those of the replay as a set; what differs if there is
+     * none.
+     */
     Optional<Difference> compare(RecordCursor recorded) {
         TreeMap<Digest, Integer> open = new TreeMap<>();
         replayed.forEach(digest -> add(open, digest, 1));

@@ -50,7 +50,10 @@ public record SensorSettings(
         Optional<PolarSettings> polar,
         double timeOffsetSeconds) {
 
-    /** A sensor that measures positions, sees all within its reach, with independent misses, clutter as it is said to be and a right clock. */
+    /**
+     * A sensor that measures positions, sees all within its reach, with independent misses, clutter as it is said to
+     * be and a right clock.
+     */
     public SensorSettings(
             String name,
             Optional<LatLon> position,

@@ -158,10 +158,10 @@ public final class ClientSettings {
     }
 
     /**
-     * Settings of a producer of raw bytes that are written once each and in order. One request is under way at a time: a
-     * broker that does not know the producer yet takes any of its batches for the first. Where a topic has just been
-     * created, the first may be turned away because the broker has not heard of the topic, and the second be taken; then
-     * the first could never follow (out of order sequence), or would follow in the wrong place.
+     * Settings of a producer of raw bytes that are written once each and in order. One request is under way at a time:
+     * a broker that does not know the producer yet takes any of its batches for the first. Where a topic has just been
+     * created, the first may be turned away because the broker has not heard of the topic, and the second be taken;
+     * then the first could never follow (out of order sequence), or would follow in the wrong place.
      */
     public Map<String, Object> producer(String clientId) {
         Map<String, Object> settings = client(PRODUCER, ProducerConfig.configNames(), clientId);

@@ -12,7 +12,8 @@ public interface LogReader {
      * Hands over every committed record from one offset to another, both included, in their order. Offsets may be
      * missing: the bus uses some for itself.
      *
-     * @param toInclusive {@code from - 1} where there is nothing to hand over; that the log goes on there is checked all
+     * @param toInclusive {@code from - 1} where there is nothing to hand over; that the log goes on there is checked
+     * all
      *                    the same
      * @return how many records were handed over
      * @throws OperatorStoppedException if the log no longer reaches back so far, ends before, or cannot be read

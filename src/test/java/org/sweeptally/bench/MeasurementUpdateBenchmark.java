@@ -20,7 +20,10 @@ import org.sweeptally.model.MeasurementUpdate;
 import org.sweeptally.model.PolarMeasurement;
 import org.sweeptally.model.PositionMeasurement;
 
-/** One update of one density by one measurement, likelihood and covariance included: a place, a range and an azimuth. */
+/**
+ * One update of one density by one measurement, likelihood and covariance included: a place, a range and an
+ * azimuth.
+ */
 @State(Scope.Thread)
 @BenchmarkMode(Mode.AverageTime)
 @OutputTimeUnit(TimeUnit.NANOSECONDS)

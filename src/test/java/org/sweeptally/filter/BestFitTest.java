@@ -12,7 +12,10 @@ import org.sweeptally.model.Gaussian;
 
 class BestFitTest {
 
-    /** Two components between two observations, each as likely to have caused either: each gets one observation whole. */
+    /**
+     * Two components between two observations, each as likely to have caused either: each gets one observation
+     * whole.
+     */
     @Test
     void twoCoinTossesBecomeTwoPlaces() {
         Gaussian[] densities = {at(-10, 0), at(10, 0), at(-10.5, 0), at(9.5, 0)};
@@ -56,7 +59,10 @@ class BestFitTest {
         assertStay(shares);
     }
 
-    /** Whatever is dealt out: pasts go out whole, every component keeps its whole probability, and so existence its sum. */
+    /**
+     * Whatever is dealt out: pasts go out whole, every component keeps its whole probability, and so existence its
+     * sum.
+     */
     @Test
     void nothingIsLostInDealing() {
         for (long seed = 1; seed <= 300; seed++) {

@@ -19,7 +19,10 @@ import org.sweeptally.model.Look;
 import org.sweeptally.model.MissRuns;
 import org.sweeptally.model.SensorModel;
 
-/** Misses that come in runs, against the forward recursion of a hidden Markov chain written out (Rabiner 1989, from memory). */
+/**
+ * Misses that come in runs, against the forward recursion of a hidden Markov chain written out (Rabiner 1989, from
+ * memory).
+ */
 class DetectabilityTest {
 
     private static final double PERIOD_SECONDS = 2;

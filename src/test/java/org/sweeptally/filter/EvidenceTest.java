@@ -73,7 +73,10 @@ class EvidenceTest {
         }
     }
 
-    /** One object, any returns: r' = (1 - D) r / (1 - D r), D = pd (1 - sum l / clutter): Ristic et al. 2013 (from memory). */
+    /**
+     * One object, any returns: r' = (1 - D) r / (1 - D r), D = pd (1 - sum l / clutter): Ristic et al. 2013 (from
+     * memory).
+     */
     @ParameterizedTest
     @CsvSource({
         "1, 0, 0.5", "10, 0, 0.900990099009901", "100, 0, 0.9890230515916575", "10, 2, 0.9159663865546218",

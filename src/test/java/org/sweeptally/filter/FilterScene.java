@@ -15,7 +15,10 @@ import org.sweeptally.model.NearlyConstantVelocity;
 import org.sweeptally.model.PositionMeasurement;
 import org.sweeptally.model.SensorModel;
 
-/** An invented stretch of water for tests of the filter: a square, a sensor in its middle, and settings near to hand. */
+/**
+ * An invented stretch of water for tests of the filter: a square, a sensor in its middle, and settings near to
+ * hand.
+ */
 public final class FilterScene {
 
     public static final double SIGMA_METRES = 15;

@@ -18,9 +18,9 @@ class ModeMixingTest {
     private static final double WIDE = 1e13;
 
     /**
-     * One cycle of interacting multiple models by Blom and Bar-Shalom 1988, IEEE TAC 33(8):780-783; layout of the cycle in
-     * Bar-Shalom, Li and Kirubarajan 2001, section 11.6.6 (from memory). The numbers were computed outside this project: along
-     * one axis, nearly constant velocity with q = 0.01 and q = 10, T = 1, R = 4, z = 13.
+     * One cycle of interacting multiple models by Blom and Bar-Shalom 1988, IEEE TAC 33(8):780-783; layout of the
+     * cycle in Bar-Shalom, Li and Kirubarajan 2001, section 11.6.6 (from memory). The numbers were computed outside
+     * this project: along one axis, nearly constant velocity with q = 0.01 and q = 10, T = 1, R = 4, z = 13.
      */
     @Test
     void oneCycleGivesTheNumbersComputedElsewhere() {
@@ -50,8 +50,9 @@ class ModeMixingTest {
     }
 
     /**
-     * The four ways through two modes, each with its own Kalman filter, are what the mixing approximates: modes .8435918 and
-     * .1564082, mean (11.5273325, 10.87077878), computed outside this project. One cycle must be within 0.05 of it.
+     * The four ways through two modes, each with its own Kalman filter, are what the mixing approximates: modes
+     * .8435918 and .1564082, mean (11.5273325, 10.87077878), computed outside this project. One cycle must be within
+     * 0.05 of it.
      */
     @Test
     void oneCycleIsCloseToAllWaysThroughTheModes() {
@@ -170,7 +171,10 @@ class ModeMixingTest {
 
     private record Updated(Gaussian density, double likelihood) {}
 
-    /** One prediction over 1 s and one update with z = 13, R = 4 along the east axis; the likelihood of that axis alone. */
+    /**
+     * One prediction over 1 s and one update with z = 13, R = 4 along the east axis; the likelihood of that axis
+     * alone.
+     */
     private static Updated updated(Gaussian density, double noise) {
         new NearlyConstantVelocity(noise).predict(density, 1);
         MeasurementUpdate update = new MeasurementUpdate();

@@ -68,7 +68,10 @@ class OutsideChecksTest {
         assertThat(needed).isEqualTo(scans);
     }
 
-    /** One object, any returns: r' = (1 - D) r / (1 - D r), D = pd (1 - sum l / clutter): Ristic et al. 2013 (from memory). */
+    /**
+     * One object, any returns: r' = (1 - D) r / (1 - D r), D = pd (1 - sum l / clutter): Ristic et al. 2013 (from
+     * memory).
+     */
     @ParameterizedTest
     @CsvSource({
         "0, 0, 0.09090909090909091", "1, 0, 0.5", "10, 0, 0.900990099009901", "100, 0, 0.9890230515916575",
@@ -94,9 +97,9 @@ class OutsideChecksTest {
 
     /**
      * A whole scan by hand (enumerated; the update is that of Williams 2015, IEEE TAES 51(3)): two objects (0.8, at 0,
-     * variance 4) and (0.6, at 5, variance 4), measurement variance 1, probability of detection 0.9, clutter 0.02 and unseen
-     * 0.005 per metre, measurements 1, 4 and 20, all along one axis. The other axis is the same for everything, so that
-     * it scales likelihoods, clutter and unseen alike.
+     * variance 4) and (0.6, at 5, variance 4), measurement variance 1, probability of detection 0.9, clutter 0.02 and
+     * unseen 0.005 per metre, measurements 1, 4 and 20, all along one axis. The other axis is the same for everything,
+     * so that it scales likelihoods, clutter and unseen alike.
      */
     @Test
     void aWholeScanByHand() throws IOException {
@@ -145,7 +148,10 @@ class OutsideChecksTest {
         assertThat(e / (clutter + e)).isCloseTo(expected, within(1e-12));
     }
 
-    /** A Gaussian unseen intensity: weight 0.05, P = 150^2 I, R = 100 I, pd 0.9, clutter 2.5e-6 (quadrature agrees to 1e-9). */
+    /**
+     * A Gaussian unseen intensity: weight 0.05, P = 150^2 I, R = 100 I, pd 0.9, clutter 2.5e-6 (quadrature agrees to
+     * 1e-9).
+     */
     @ParameterizedTest
     @CsvSource({
         "0, 0, 3.169014353599687e-7", "150, 0, 1.9263615173175568e-7", "300, 300, 5.9078e-9", "600, 0, 1.1013e-10"
@@ -155,7 +161,10 @@ class OutsideChecksTest {
         assertThat(evidence.total(0)).isCloseTo(expected, within(1e-4 * expected));
     }
 
-    /** Two terms, (0.02, N(0, 100^2 I)) and (0.03, N((200, 0), 50^2 I)), seen at (120, 30): weights and moments of the mixture. */
+    /**
+     * Two terms, (0.02, N(0, 100^2 I)) and (0.03, N((200, 0), 50^2 I)), seen at (120, 30): weights and moments of the
+     * mixture.
+     */
     @Test
     void aNewObjectOutOfTwoTerms() {
         UnseenTerm first = term(0.02, 0, 100);

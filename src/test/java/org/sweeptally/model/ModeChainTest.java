@@ -28,7 +28,10 @@ class ModeChainTest {
         assertThat(chain(10, 20, 5).transition(0)).isDeepEqualTo(new double[][] {{1, 0, 0}, {0, 1, 0}, {0, 0, 1}});
     }
 
-    /** Two modes left at rates a and b: p11(t) = b/(a+b) + a/(a+b) exp(-(a+b) t); Norris 1997, "Markov Chains", section 2.1 (from memory). */
+    /**
+     * Two modes left at rates a and b: p11(t) = b/(a+b) + a/(a+b) exp(-(a+b) t); Norris 1997, "Markov Chains",
+     * section 2.1 (from memory).
+     */
     @ParameterizedTest
     @ValueSource(doubles = {1e-6, .1, 1, 2.5, 30, 3600, 1e7})
     void twoModesFollowTheClosedForm(double seconds) {
@@ -43,7 +46,10 @@ class ModeChainTest {
         assertThat(p[0][1]).isCloseTo(left, within(1e-13 * left));
     }
 
-    /** Dwells of 20 and 10 s: two thirds and one third of the time, as of the chain [[.95, .05], [.10, .90]] a second. */
+    /**
+     * Dwells of 20 and 10 s: two thirds and one third of the time, as of the chain [[.95, .05], [.10, .90]] a
+     * second.
+     */
     @Test
     void inTheLongRunModesHaveTheirShareOfTheTime() {
         assertThat(chain(20, 10).transition(1e6)[0]).containsExactly(new double[] {2.0 / 3, 1.0 / 3}, within(1e-14));

@@ -19,7 +19,10 @@ class MotionModelsTest {
         new CoordinatedTurn(1e-7, .3), new CoordinatedTurn(0, .3), new CoordinatedTurn(120, 0), new StandingStill(.01, .1)
     };
 
-    /** Predicting over two steps is predicting over their sum, whatever the steps: the matrix exponential's semigroup. */
+    /**
+     * Predicting over two steps is predicting over their sum, whatever the steps: the matrix exponential's
+     * semigroup.
+     */
     @Test
     void twoStepsAreOne() {
         long seed = 1;
@@ -38,7 +41,10 @@ class MotionModelsTest {
         }
     }
 
-    /** F and Q of a turn against the series of the matrix exponential of [-A, G q G'; 0, A'] (Van Loan 1978, IEEE TAC 23:395, from memory). */
+    /**
+     * F and Q of a turn against the series of the matrix exponential of [-A, G q G'; 0, A'] (Van Loan 1978, IEEE TAC
+     * 23:395, from memory).
+     */
     @ParameterizedTest
     @ValueSource(doubles = {0, 1e-9, .001, 1, 5.7, 5.75, 9, -9, 60, -170})
     void aTurnIsTheMatrixExponentialOfItsEquation(double degreesPerSecond) {
@@ -82,7 +88,10 @@ class MotionModelsTest {
         assertClose(turned, straight, 1e-13, "rate 0");
     }
 
-    /** A quarter turn to the left at 8 m/s in 10 s, from the north: on a circle of radius 8 m/s / w it ends to the west. */
+    /**
+     * A quarter turn to the left at 8 m/s in 10 s, from the north: on a circle of radius 8 m/s / w it ends to the
+     * west.
+     */
     @Test
     void aQuarterTurnToTheLeftEndsWhereTheCircleDoes() {
         double rate = Math.toRadians(9);

@@ -19,8 +19,9 @@ class OutsideChecksTest {
 
     /**
      * Steady state of the Kalman filter for continuous white noise acceleration: Bar-Shalom, Li and Kirubarajan 2001,
-     * "Estimation with Applications to Tracking and Navigation", sections 6.2.2 and 6.5 (from memory); the closed relation
-     * beta = 3 (2 - alpha) - sqrt(3 (alpha^2 - 12 alpha + 12)), beta^2 / (1 - alpha) = q T^3 / R gives the same.
+     * "Estimation with Applications to Tracking and Navigation", sections 6.2.2 and 6.5 (from memory); the closed
+     * relation beta = 3 (2 - alpha) - sqrt(3 (alpha^2 - 12 alpha + 12)), beta^2 / (1 - alpha) = q T^3 / R gives the
+     * same.
      */
     @ParameterizedTest
     @CsvSource({
@@ -97,8 +98,9 @@ class OutsideChecksTest {
     }
 
     /**
-     * Irregular times: the matrix exponential is a semigroup (Van Loan 1978, IEEE TAC 23:395, from memory). With T = 0.7 + 1.6
-     * and q = 1, Q(2.3) = [[4.05566666666667, 2.645], [2.645, 2.3]]. A piecewise constant acceleration fails this.
+     * Irregular times: the matrix exponential is a semigroup (Van Loan 1978, IEEE TAC 23:395, from memory). With T =
+     * 0.7 + 1.6 and q = 1, Q(2.3) = [[4.05566666666667, 2.645], [2.645, 2.3]]. A piecewise constant acceleration fails
+     * this.
      */
     @Test
     void twoStepsAreOne() {
@@ -171,7 +173,10 @@ class OutsideChecksTest {
         assertThat(DecompositionFactory_DDRM.chol(4, true).decompose(p)).as("positive definite, seed %s", seed).isTrue();
     }
 
-    /** Gates: P(chi-squared with 2 degrees of freedom up to g^2) = 1 - exp(-g^2 / 2); NIST/SEMATECH e-Handbook 1.3.6.7.4 (from memory). */
+    /**
+     * Gates: P(chi-squared with 2 degrees of freedom up to g^2) = 1 - exp(-g^2 / 2); NIST/SEMATECH e-Handbook
+     * 1.3.6.7.4 (from memory).
+     */
     @ParameterizedTest
     @CsvSource({"1, 0.3934693403", "2, 0.8646647168", "3, 0.9888910035", "4, 0.9996645374", "5, 0.9999962733"})
     void aGateHoldsItsShare(double sigmas, double share) {

@@ -90,8 +90,8 @@ class PolarMeasurementTest {
     }
 
     /**
-     * Mean normalised squared error of a converted place given the truth, by quadrature: 2 would be consistent. The plain
-     * conversion with its linearised covariance is what the rule r sigma^2 / sigma_r < 0.4 warns of (Lerro and
+     * Mean normalised squared error of a converted place given the truth, by quadrature: 2 would be consistent. The
+     * plain conversion with its linearised covariance is what the rule r sigma^2 / sigma_r < 0.4 warns of (Lerro and
      * Bar-Shalom 1993, IEEE Transactions on Aerospace and Electronic Systems 29(3), from memory); the unbiased one
      * holds beyond.
      */

@@ -12,8 +12,8 @@ import org.sweeptally.site.SensorSettings;
 import org.sweeptally.site.Site;
 
 /**
- * Applies a short invented log and prints the digest of what was published: a program of its own, so that a test can run
- * it under different compilers.
+ * Applies a short invented log and prints the digest of what was published: a program of its own, so that a test can
+ * run it under different compilers.
  */
 public final class LogDigest {
 

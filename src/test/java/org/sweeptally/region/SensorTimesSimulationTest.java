@@ -26,8 +26,8 @@ import org.sweeptally.site.Site;
 
 /**
  * What it costs not to know when a sensor saw what: eight objects that make 15 m/s, seen by a rotating sensor, by a
- * camera beside it, by a sensor whose clock is off. Errors are root mean squares over the tracks, at the times that they
- * say. Seeded; the figures are printed.
+ * camera beside it, by a sensor whose clock is off. Errors are root mean squares over the tracks, at the times that
+ * they say. Seeded; the figures are printed.
  */
 class SensorTimesSimulationTest {
 

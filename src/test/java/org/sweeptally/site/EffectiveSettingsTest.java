@@ -84,7 +84,10 @@ class EffectiveSettingsTest {
                 .isEqualTo(new ThresholdSettings(0.7, 0.3));
     }
 
-    /** Shares that are not given are what is left, in equal parts; a turn of known rate is one to the left and one to the right. */
+    /**
+     * Shares that are not given are what is left, in equal parts; a turn of known rate is one to the left and one to
+     * the right.
+     */
     @Test
     void profilesHaveTheDefaultsThatTheyAreSaidToHave() {
         Site site = valid(SiteReader.readText(withMotion("""

@@ -12,8 +12,8 @@ import org.sweeptally.model.MotionProfile;
 import org.sweeptally.model.NearlyConstantVelocity;
 
 /**
- * A filter whose modes all move alike is the filter with one, to rounding. There is little clutter: among close components
- * rounding may decide how pasts are dealt out that fit equally well.
+ * A filter whose modes all move alike is the filter with one, to rounding. There is little clutter: among close
+ * components rounding may decide how pasts are dealt out that fit equally well.
  */
 class AlikeModesTest {
 

@@ -3,8 +3,8 @@ package org.sweeptally.world;
 import java.util.List;
 
 /**
- * The course of one simulated craft: legs one after the other, on each of which speed and heading change evenly. Between
- * and after legs it goes on as it was.
+ * The course of one simulated craft: legs one after the other, on each of which speed and heading change evenly.
+ * Between and after legs it goes on as it was.
  */
 final class Course {
 
@@ -41,7 +41,10 @@ final class Course {
         this.legs = List.of(legs);
     }
 
-    /** States [east, north, east velocity, north velocity] at 0, one period, two and so on, by steps of the midpoint rule. */
+    /**
+     * States [east, north, east velocity, north velocity] at 0, one period, two and so on, by steps of the midpoint
+     * rule.
+     */
     double[][] states(double periodSeconds, int count) {
         double[][] states = new double[count][];
         double[] now = {east, north, headingRadians, speed};

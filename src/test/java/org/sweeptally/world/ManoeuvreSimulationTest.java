@@ -11,8 +11,8 @@ import org.sweeptally.model.MotionProfile;
 import org.sweeptally.world.Course.Leg;
 
 /**
- * A craft at 8 m/s that twice turns by 90 degrees in 10 s, among clutter: the mean error scan by scan, over stated seeds,
- * of a filter with one model of motion and of one with several. Limits are our own; there is no source for them.
+ * A craft at 8 m/s that twice turns by 90 degrees in 10 s, among clutter: the mean error scan by scan, over stated
+ * seeds, of a filter with one model of motion and of one with several. Limits are our own; there is no source for them.
  */
 class ManoeuvreSimulationTest {
 

@@ -10,8 +10,8 @@ import org.sweeptally.filter.Component;
 import org.sweeptally.world.Course.Leg;
 
 /**
- * Piles, moored craft and craft that pass, seen every 2.5 s with 15 m sigma among 20 false detections: what stands still
- * is shown as still and counted apart, and keeps its identity when it departs. Stated seeds; limits are our own.
+ * Piles, moored craft and craft that pass, seen every 2.5 s with 15 m sigma among 20 false detections: what stands
+ * still is shown as still and counted apart, and keeps its identity when it departs. Stated seeds; limits are our own.
  */
 class StandingStillSimulationTest {
 
@@ -98,7 +98,10 @@ class StandingStillSimulationTest {
         assertThat(late).isLessThanOrEqualTo(SEEDS / 4);
     }
 
-    /** Three piles and a craft that departs with 0.25 m/s2 up to 5 m/s; six that pass at 3 to 8 m/s, 150 m off or more. */
+    /**
+     * Three piles and a craft that departs with 0.25 m/s2 up to 5 m/s; six that pass at 3 to 8 m/s, 150 m off or
+     * more.
+     */
     private static List<Course> courses(long seed) {
         List<Course> courses = new ArrayList<>();
         for (int pile = 0; pile < PILES; pile++) {
