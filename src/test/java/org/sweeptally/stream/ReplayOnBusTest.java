@@ -28,6 +28,7 @@ import org.junit.jupiter.api.io.TempDir;
 import org.sweeptally.cli.Main;
 import org.sweeptally.event.Part;
 import org.sweeptally.event.Track;
+import org.sweeptally.region.RegionMachine;
 import org.sweeptally.region.intake.Times;
 import org.sweeptally.region.wire.Wire;
 import org.sweeptally.replay.BusSource;
@@ -128,7 +129,8 @@ class ReplayOnBusTest {
         assertThat(run.out)
                 .containsPattern("east-side: from snapshot \\d+ \\(picture of 2031-05-01T04:00:")
                 .containsPattern("west-side: from snapshot \\d+ \\(picture of 2031-05-01T04:00:")
-                .contains("settings revision 1, machine version 1", "settings revision 2, machine version 1")
+                .contains("settings revision 1, machine version " + RegionMachine.MACHINE_VERSION,
+                        "settings revision 2, machine version " + RegionMachine.MACHINE_VERSION)
                 .containsPattern("\nreproduced [\\d,]+ of [\\d,]+ records bit for bit\n");
     }
 
