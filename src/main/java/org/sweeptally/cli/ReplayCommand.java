@@ -1,16 +1,20 @@
 package org.sweeptally.cli;
 
 import java.nio.file.Path;
+import java.util.ArrayList;
 import java.util.List;
 import java.util.Optional;
 import java.util.concurrent.Callable;
 import org.apache.kafka.common.KafkaException;
 import org.sweeptally.replay.ArchiveSource;
+import org.sweeptally.replay.Beside;
 import org.sweeptally.replay.BusSource;
 import org.sweeptally.replay.Explanations;
 import org.sweeptally.replay.RecordedSource;
 import org.sweeptally.replay.ReplayFailedException;
+import org.sweeptally.replay.SettingsChange;
 import org.sweeptally.replay.Span;
+import org.sweeptally.replay.WhatIfFiles;
 import org.sweeptally.site.RegionSettings;
 import org.sweeptally.site.Site;
 import org.sweeptally.stream.OperatorStoppedException;
@@ -63,7 +67,15 @@ final class ReplayCommand implements Callable<Integer> {
                     + " evidence.ndjson and a text for each object to --out.")
     private String explained;
 
-    @Option(names = "--out", paramLabel = "DIR", description = "Folder for what --explain writes.")
+    @Option(
+            names = "--with",
+            paramLabel = "SETTING=VALUE",
+            description = "Also says what would have been other with this setting, such as"
+                    + " sensors.north-shore.detectionProbability=0.7; keys are those of the site file. May be given"
+                    + " several times, all hold together.")
+    private List<String> changes = new ArrayList<>();
+
+    @Option(names = "--out", paramLabel = "DIR", description = "Folder for what --explain and --with write.")
     private Path out;
 
     @Mixin
@@ -82,8 +94,8 @@ final class ReplayCommand implements Callable<Integer> {
             if ((siteFile == null) == (archive == null)) {
                 throw new UsageException("either --site or --archive must be given, and not both");
             }
-            if ((explained == null) != (out == null)) {
-                throw new UsageException("--explain and --out belong together");
+            if (explained != null && out == null || out != null && explained == null && changes.isEmpty()) {
+                throw new UsageException("--explain needs --out, and --out is for what --explain and --with write");
             }
             return archive == null ? fromBus() : fromArchive();
         } catch (UsageException | SettingsRefusedException e) {
@@ -93,6 +105,18 @@ final class ReplayCommand implements Callable<Integer> {
             throw new CommandFailedException(e.getMessage());
         } finally {
             terminal.endProgress();
+        }
+    }
+
+    private void checkChanges(RecordedSource source) {
+        if (changes.isEmpty()) {
+            return;
+        }
+        try {
+            SettingsChange change = new SettingsChange(changes);
+            source.settings().forEach(body -> change.text(body.getText()));
+        } catch (IllegalArgumentException e) {
+            throw new UsageException("--with " + e.getMessage());
         }
     }
 
@@ -119,24 +143,32 @@ final class ReplayCommand implements Callable<Integer> {
     }
 
     private int replay(RecordedSource source, List<String> regions, Span span) {
-        if (explained == null) {
-            return print(ReplayProgress.replayAll(source, regions, span, terminal));
-        }
-        Optional<String> only = explained.equals(ALL) ? Optional.empty() : Optional.of(explained);
-        try (Explanations explanations = new Explanations(only, out)) {
-            int exitCode = print(ReplayProgress.replayAll(source, regions, span, Optional.of(explanations), terminal));
-            explanations.finish();
-            List<Path> texts = explanations.textFiles();
-            if (only.isPresent() && texts.isEmpty()) {
-                throw new CommandFailedException("no region held object " + explained + " " + span.text());
+        checkChanges(source);
+        Optional<String> only = Optional.ofNullable(explained).filter(object -> !object.equals(ALL));
+        try (WhatIfFiles files = new WhatIfFiles(changes.isEmpty() ? Optional.empty() : Optional.ofNullable(out))) {
+            Optional<Explanations> explanations =
+                    explained == null ? Optional.empty() : Optional.of(new Explanations(only, out));
+            Optional<SettingsChange> change =
+                    changes.isEmpty() ? Optional.empty() : Optional.of(new SettingsChange(changes));
+            ReplaySummary summary = ReplayProgress.replayAll(
+                    source, regions, span, new Beside(explanations, change, files), terminal);
+            boolean same = summary.print(terminal.out());
+            if (change.isPresent()) {
+                new WhatIfSummary(changes, summary.reports()).print(terminal.out());
             }
-            terminal.out().println("explained " + (only.isPresent() ? explained : texts.size() + " objects") + ": "
-                    + (texts.size() == 1 ? texts.get(0) : "texts by region and evidence.ndjson are in " + out));
-            return exitCode;
+            explanations.ifPresent(written -> finish(written, only, span));
+            return same ? Main.DONE : Main.FAILED;
         }
     }
 
-    private int print(ReplaySummary summary) {
-        return summary.print(terminal.out()) ? Main.DONE : Main.FAILED;
+    private void finish(Explanations explanations, Optional<String> only, Span span) {
+        explanations.finish();
+        explanations.close();
+        List<Path> texts = explanations.textFiles();
+        if (only.isPresent() && texts.isEmpty()) {
+            throw new CommandFailedException("no region held object " + explained + " " + span.text());
+        }
+        terminal.out().println("explained " + (only.isPresent() ? explained : texts.size() + " objects") + ": "
+                + (texts.size() == 1 ? texts.get(0) : "texts by region and evidence.ndjson are in " + out));
     }
 }

@@ -3,8 +3,7 @@ package org.sweeptally.cli;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Locale;
-import java.util.Optional;
-import org.sweeptally.replay.Explanations;
+import org.sweeptally.replay.Beside;
 import org.sweeptally.replay.LogRun;
 import org.sweeptally.replay.RecordedSource;
 import org.sweeptally.replay.RegionReport;
@@ -16,20 +15,20 @@ record ReplayProgress(Terminal terminal, List<String> regions) implements LogRun
 
     /** Replays regions one after the other. */
     static ReplaySummary replayAll(RecordedSource source, List<String> regions, Span span, Terminal terminal) {
-        return replayAll(source, regions, span, Optional.empty(), terminal);
+        return replayAll(source, regions, span, Beside.NOTHING, terminal);
     }
 
-    /** The same, and explains meanwhile why objects exist. */
+    /** The same, with more beside it. */
     static ReplaySummary replayAll(
             RecordedSource source,
             List<String> regions,
             Span span,
-            Optional<Explanations> explanations,
+            Beside beside,
             Terminal terminal) {
         Replay replay = new Replay(source, new ReplayProgress(terminal, regions));
         List<RegionReport> reports = new ArrayList<>();
         for (String region : regions) {
-            reports.add(replay.region(region, span, explanations));
+            reports.add(replay.region(region, span, beside));
         }
         terminal.endProgress();
         return new ReplaySummary(reports, span);

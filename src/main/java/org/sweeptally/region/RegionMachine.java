@@ -2,6 +2,7 @@ package org.sweeptally.region;
 
 import java.util.Collections;
 import java.util.Map;
+import java.util.Optional;
 import java.util.OptionalInt;
 import java.util.OptionalLong;
 import java.util.function.Consumer;
@@ -364,6 +365,11 @@ public final class RegionMachine {
     /** Revision of the settings in force, if there are any yet. */
     public OptionalInt settingsRevision() {
         return state.timeline == null ? OptionalInt.empty() : OptionalInt.of(state.rules().revision());
+    }
+
+    /** The settings in force, if there are any yet. */
+    public Optional<SettingsBody> settings() {
+        return state.timeline == null ? Optional.empty() : Optional.of(state.rules().body());
     }
 
     /** What the region has counted. */

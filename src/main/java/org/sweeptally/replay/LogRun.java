@@ -1,5 +1,6 @@
 package org.sweeptally.replay;
 
+import java.util.function.Consumer;
 import java.util.function.Function;
 import org.sweeptally.event.LogEntry;
 import org.sweeptally.region.LocalSite;
@@ -52,9 +53,10 @@ public final class LogRun {
     /**
      * Applies entries until the machine has come to the end of the span.
      *
+     * @param beside takes every entry's bytes too
      * @return whether it came there; else the log ended before
      */
-    boolean run(RegionMachine machine, Span span, RecordOutputs.Taker taker) {
+    boolean run(RegionMachine machine, Span span, RecordOutputs.Taker taker, Consumer<byte[]> beside) {
         boolean[] passed = new boolean[1];
         MachineOutputs out = new RecordOutputs((kind, record) -> {
             passed[0] |= kind == RecordKind.COUNTS && RecordKind.timeMicros(record) >= span.toMicros();
@@ -68,6 +70,7 @@ public final class LogRun {
                     break;
                 }
                 apply(machine, next, out);
+                beside.accept(next.value());
                 entries++;
                 if (entries % PROGRESS_ENTRIES == 0) {
                     progress.at(region, entries, (next.offset() - first) / (double) Math.max(1, log.end() - first));

@@ -14,6 +14,7 @@ import org.sweeptally.event.SnapshotHead;
  * @param reproduced how many of them are what was published, bit for bit, up to the first difference
  * @param stretches  what made the published scans, in their order
  * @param lastMicros log time of the last record, {@link Long#MIN_VALUE} where there was none
+ * @param whatIf     what would have been other under other settings, where they were asked for
  * @param cameToEnd  whether the picture came to the end of the span; else the log ended before
  */
 public record RegionReport(
@@ -25,7 +26,8 @@ public record RegionReport(
         List<Stretch> stretches,
         long lastMicros,
         boolean cameToEnd,
-        Optional<Difference> difference) {
+        Optional<Difference> difference,
+        Optional<WhatIfReport> whatIf) {
 
     /** Scans one after the other that one machine version made with one revision of the settings. */
     public record Stretch(int machineVersion, int settingsRevision, long scans, long fromMicros, long untilMicros) {}

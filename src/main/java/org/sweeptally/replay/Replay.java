@@ -22,21 +22,31 @@ public final class Replay {
      * @throws ReplayFailedException if the source does not hold what is needed
      */
     public RegionReport region(String region, Span span) {
-        return region(region, span, Optional.empty());
+        return region(region, span, Beside.NOTHING);
     }
 
-    /** The same, and explains meanwhile why objects exist. */
-    public RegionReport region(String region, Span span, Optional<Explanations> explanations) {
+    /** The same, with more beside it. */
+    public RegionReport region(String region, Span span, Beside beside) {
         RecordedSource.Beginning beginning = source.before(region, span.fromMicros());
         LogRun run = new LogRun(source, region, beginning, progress);
         RegionMachine machine = run.machine();
-        explanations.ifPresent(written -> machine.observe(written.of(region, span)));
+        beside.explanations().ifPresent(written -> machine.observe(written.of(region, span)));
         try (Comparison comparison = new Comparison(source, region, beginning, span)) {
-            boolean cameToEnd = run.run(machine, span, comparison);
+            Optional<WhatIf> whatIf = beside.change()
+                    .map(change -> new WhatIf(region, span, change, run.machine(), beside.files()));
+            boolean cameToEnd = run.run(
+                    machine,
+                    span,
+                    (kind, record) -> {
+                        comparison.take(kind, record);
+                        whatIf.ifPresent(other -> other.recorded().take(kind, record));
+                    },
+                    logged -> whatIf.ifPresent(other -> other.apply(logged)));
             comparison.finish(cameToEnd);
             return new RegionReport(region, beginning.snapshot().map(Snapshot::head), run.entries(),
                     Map.copyOf(comparison.made()), Map.copyOf(comparison.reproduced()), comparison.stretches(),
-                    comparison.lastMicros(), cameToEnd, comparison.difference());
+                    comparison.lastMicros(), cameToEnd, comparison.difference(),
+                    whatIf.map(WhatIf::report));
         }
     }
 }

@@ -2,6 +2,8 @@ package org.sweeptally.stream;
 
 import static org.assertj.core.api.Assertions.assertThat;
 
+import com.fasterxml.jackson.databind.JsonNode;
+import com.fasterxml.jackson.databind.ObjectMapper;
 import java.io.ByteArrayInputStream;
 import java.io.ByteArrayOutputStream;
 import java.io.IOException;
@@ -26,6 +28,7 @@ import org.junit.jupiter.api.io.TempDir;
 import org.sweeptally.cli.Main;
 import org.sweeptally.event.Part;
 import org.sweeptally.event.Track;
+import org.sweeptally.region.RegionMachine;
 import org.sweeptally.region.intake.Times;
 import org.sweeptally.region.wire.Wire;
 import org.sweeptally.replay.BusSource;
@@ -36,6 +39,8 @@ import org.sweeptally.replay.Replay;
 import org.sweeptally.replay.Span;
 import org.sweeptally.site.EffectiveSettings;
 import org.sweeptally.site.Site;
+import org.sweeptally.site.SiteReader;
+import org.sweeptally.site.SiteResult;
 
 /**
  * What an operator published is made anew from a bus: an operator that was killed and came back, whose settings changed
@@ -53,6 +58,7 @@ class ReplayOnBusTest {
     private static TopicNames names;
     private static Path siteFile;
     private static Published published;
+    private static List<Part> parts;
 
     /** After the middle of the recording of ninety seconds, which two revisions of the settings share. */
     private static final long FROM = Times.parse("2031-05-01T04:00:35Z").orElseThrow();
@@ -64,7 +70,7 @@ class ReplayOnBusTest {
         site = TestSite.withSnapshotScans(TestSite.twins(), 40);
         names = TestBus.names(site);
         TestBus.createTopics(site, 1, 2);
-        List<Part> parts = new ArrayList<>(TestSite.recording(site));
+        parts = new ArrayList<>(TestSite.recording(site));
         parts.add(70, late(parts.get(10)));
         parts.add(90, late(parts.get(20)));
         int half = parts.size() / 2;
@@ -123,7 +129,8 @@ class ReplayOnBusTest {
         assertThat(run.out)
                 .containsPattern("east-side: from snapshot \\d+ \\(picture of 2031-05-01T04:00:")
                 .containsPattern("west-side: from snapshot \\d+ \\(picture of 2031-05-01T04:00:")
-                .contains("settings revision 1, machine version 1", "settings revision 2, machine version 1")
+                .contains("settings revision 1, machine version " + RegionMachine.MACHINE_VERSION,
+                        "settings revision 2, machine version " + RegionMachine.MACHINE_VERSION)
                 .containsPattern("\nreproduced [\\d,]+ of [\\d,]+ records bit for bit\n");
     }
 
@@ -288,6 +295,70 @@ class ReplayOnBusTest {
         assertThat(nobody.exitCode).isEqualTo(1);
         assertThat(nobody.err).contains("no region held object nobody");
         assertThat(replay("--explain", "all").exitCode).isEqualTo(2);
+    }
+
+    @Test
+    void aSettingThatChangesNothingGivesNoDifference() {
+        Run run = replay("--with", "sensors.north-shore.detectionProbability=0.9", "--with", "bounds.gateSigmas=5.0");
+        assertThat(run.exitCode).as(run.out + run.err).isZero();
+        assertThat(run.out).contains("With sensors.north-shore.detectionProbability=0.9, bounds.gateSigmas=5.0")
+                .containsPattern("east-side: nothing would have been other, in \\d+ scans")
+                .containsPattern("west-side: nothing would have been other, in \\d+ scans");
+        Run middle = replay("--with", "lifetimeSeconds=" + site.lifetimeSeconds(), "--from", Times.text(FROM));
+        assertThat(middle.out).containsPattern("east-side: nothing would have been other, in \\d+ scans");
+    }
+
+    /** What a change gives from the beginning of the log is what a site with that setting makes of the same parts. */
+    @Test
+    void aChangeGivesWhatASiteWithThatSettingMakes() throws IOException {
+        Path out = folder.resolve("what-if");
+        Run run = onBus("replay", "--with", "sensors.north-shore.detectionProbability=0.6", "--out", out.toString());
+        assertThat(run.exitCode).as(run.out + run.err).isZero();
+        System.out.println("ReplayOnBusTest: " + run.out.substring(run.out.indexOf("With ")));
+        assertThat(run.out).containsPattern("[1-9]\\d* of [\\d,]+ scans would have been other");
+        String text = EffectiveSettings.text(site);
+        String changed = text.replaceFirst("(?s)(north-shore:.*?detectionProbability: )0\\.9\n", "$10.6\n");
+        assertThat(changed).isNotEqualTo(text);
+        Published dryRun = DryRunOf.of(((SiteResult.Valid) SiteReader.readText(changed)).site(), parts);
+        ObjectMapper json = new ObjectMapper();
+        List<String> lines = Files.readAllLines(out.resolve("numbers.ndjson"));
+        assertThat((long) lines.size()).isEqualTo(dryRun.counts());
+        for (String region : List.of("east-side", "west-side")) {
+            List<Double> expected = new ArrayList<>();
+            for (String count : dryRun.of("counts", region)) {
+                expected.add(json.readTree(count).get("all").get("mean").asDouble());
+            }
+            List<Double> means = new ArrayList<>();
+            for (String line : lines) {
+                JsonNode numbers = json.readTree(line);
+                if (numbers.get("region").asText().equals(region)) {
+                    means.add(numbers.get("changedMean").asDouble());
+                }
+            }
+            assertThat(means).as(region).isEqualTo(expected);
+        }
+        assertThat(Files.readAllLines(out.resolve("existence.ndjson"))).isNotEmpty();
+    }
+
+    /** Asking for more before an object is shown shows some later, and the table says by how many scans. */
+    @Test
+    void aHigherThresholdShowsObjectsLater() {
+        Run run = replay("--with", "thresholds.confirming=0.999");
+        System.out.println("ReplayOnBusTest: " + run.out.substring(run.out.indexOf("With ")));
+        assertThat(run.exitCode).as(run.out + run.err).isZero();
+        assertThat(run.out).containsPattern("\\n(north|south|pilot)-\\S+ .* [1-9]\\d* scans? later\\n")
+                .doesNotContain("earlier");
+    }
+
+    @Test
+    void aChangeThatIsNoneIsRefused() {
+        assertThat(replay("--with", "sensors.north-pole.detectionProbability=0.6").err)
+                .contains("there is no north-pole that has settings; there are [north-shore");
+        assertThat(replay("--with", "sensors.north-shore.detectionProbability=6").err)
+                .contains("detectionProbability is 6");
+        assertThat(replay("--with", "sensors.north-shore.detectionprobability=0.6").exitCode).isEqualTo(2);
+        assertThat(replay("--with", "revision=7").err).contains("are those of the log");
+        assertThat(replay("--with", "nothing").exitCode).isEqualTo(2);
     }
 
     @Test
