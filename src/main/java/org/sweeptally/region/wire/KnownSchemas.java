@@ -8,6 +8,7 @@ import java.util.TreeMap;
 import org.apache.avro.Schema;
 import org.apache.avro.SchemaNormalization;
 import org.apache.avro.message.SchemaStore;
+import org.sweeptally.event.ArchivedMessage;
 import org.sweeptally.event.Birth;
 import org.sweeptally.event.End;
 import org.sweeptally.event.Finding;
@@ -37,7 +38,8 @@ public final class KnownSchemas implements SchemaStore {
             Heartbeat.getClassSchema(),
             Finding.getClassSchema(),
             SnapshotHead.getClassSchema(),
-            SnapshotPiece.getClassSchema());
+            SnapshotPiece.getClassSchema(),
+            ArchivedMessage.getClassSchema());
 
     private static final KnownSchemas OURS = new KnownSchemas();
 
