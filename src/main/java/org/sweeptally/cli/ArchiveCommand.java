@@ -7,12 +7,9 @@ import java.util.concurrent.Callable;
 import org.apache.kafka.common.KafkaException;
 import org.sweeptally.replay.ArchiveWriter;
 import org.sweeptally.replay.BusSource;
-import org.sweeptally.replay.ReplayFailedException;
 import org.sweeptally.replay.Span;
 import org.sweeptally.site.RegionSettings;
 import org.sweeptally.site.Site;
-import org.sweeptally.stream.OperatorStoppedException;
-import org.sweeptally.stream.SettingsRefusedException;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Mixin;
 import picocli.CommandLine.Option;
@@ -67,10 +64,7 @@ final class ArchiveCommand implements Callable<Integer> {
         }
         try {
             return archive(site.get());
-        } catch (UsageException | SettingsRefusedException e) {
-            terminal.err().println("sweeptally: " + e.getMessage());
-            return Main.USAGE;
-        } catch (ReplayFailedException | OperatorStoppedException | KafkaException e) {
+        } catch (KafkaException e) {
             throw new CommandFailedException(e.getMessage());
         } finally {
             terminal.endProgress();

@@ -10,7 +10,6 @@ import java.util.concurrent.CountDownLatch;
 import java.util.concurrent.TimeUnit;
 import org.sweeptally.demo.Demo;
 import org.sweeptally.demo.DemoReport;
-import org.sweeptally.stream.OperatorStoppedException;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Option;
 
@@ -69,8 +68,6 @@ final class DemoCommand implements Callable<Integer> {
             write(result);
             exitCode = Main.DONE;
             return exitCode;
-        } catch (OperatorStoppedException e) {
-            throw new CommandFailedException(e.getMessage());
         } catch (IOException e) {
             throw new CommandFailedException("the demo cannot have its files: " + e.getMessage());
         } catch (NoClassDefFoundError e) {

@@ -6,6 +6,9 @@ import java.io.PrintWriter;
 import java.nio.charset.StandardCharsets;
 import org.slf4j.Logger;
 import org.slf4j.LoggerFactory;
+import org.sweeptally.replay.ReplayFailedException;
+import org.sweeptally.stream.OperatorStoppedException;
+import org.sweeptally.stream.SettingsRefusedException;
 import picocli.CommandLine;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Model.CommandSpec;
@@ -73,10 +76,15 @@ public final class Main implements Runnable {
         return line.execute(args);
     }
 
+    /** What went wrong in a sentence; whatever carries none is a fault of the program. */
     private static int failed(Exception e, Terminal terminal) {
-        if (e instanceof CommandFailedException) {
+        boolean refused = e instanceof UsageException || e instanceof SettingsRefusedException;
+        if (refused
+                || e instanceof CommandFailedException
+                || e instanceof OperatorStoppedException
+                || e instanceof ReplayFailedException) {
             terminal.err().println("sweeptally: " + e.getMessage());
-            return FAILED;
+            return refused ? USAGE : FAILED;
         }
         terminal.err().println("sweeptally: a fault of this program, not of its input: " + e
                 + " (the log, on standard error, has the details)");

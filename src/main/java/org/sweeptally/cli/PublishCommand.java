@@ -12,9 +12,7 @@ import java.util.concurrent.Callable;
 import org.sweeptally.region.intake.Intake;
 import org.sweeptally.region.text.PartLines;
 import org.sweeptally.site.Site;
-import org.sweeptally.stream.OperatorStoppedException;
 import org.sweeptally.stream.PartPublisher;
-import org.sweeptally.stream.SettingsRefusedException;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Mixin;
 import picocli.CommandLine.Parameters;
@@ -67,11 +65,6 @@ final class PublishCommand implements Callable<Integer> {
                         new PartPublisher(busOptions.clients(), busOptions.topics(site.get()).detections())) {
             publish(new PartLines(in, site.get()), publisher);
             return refused == 0 ? Main.DONE : Main.FAILED;
-        } catch (SettingsRefusedException e) {
-            terminal.err().println("sweeptally: " + e.getMessage());
-            return Main.USAGE;
-        } catch (OperatorStoppedException e) {
-            throw new CommandFailedException(e.getMessage());
         } catch (NoSuchFileException e) {
             throw new CommandFailedException(e.getFile() + ": there is no such file");
         } catch (IOException e) {

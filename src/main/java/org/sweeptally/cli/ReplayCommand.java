@@ -11,14 +11,11 @@ import org.sweeptally.replay.Beside;
 import org.sweeptally.replay.BusSource;
 import org.sweeptally.replay.Explanations;
 import org.sweeptally.replay.RecordedSource;
-import org.sweeptally.replay.ReplayFailedException;
 import org.sweeptally.replay.SettingsChange;
 import org.sweeptally.replay.Span;
 import org.sweeptally.replay.WhatIfFiles;
 import org.sweeptally.site.RegionSettings;
 import org.sweeptally.site.Site;
-import org.sweeptally.stream.OperatorStoppedException;
-import org.sweeptally.stream.SettingsRefusedException;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Mixin;
 import picocli.CommandLine.Option;
@@ -98,10 +95,7 @@ final class ReplayCommand implements Callable<Integer> {
                 throw new UsageException("--explain needs --out, and --out is for what --explain and --with write");
             }
             return archive == null ? fromBus() : fromArchive();
-        } catch (UsageException | SettingsRefusedException e) {
-            terminal.err().println("sweeptally: " + e.getMessage());
-            return Main.USAGE;
-        } catch (ReplayFailedException | OperatorStoppedException | KafkaException e) {
+        } catch (KafkaException e) {
             throw new CommandFailedException(e.getMessage());
         } finally {
             terminal.endProgress();

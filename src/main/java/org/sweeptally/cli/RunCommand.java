@@ -8,8 +8,6 @@ import java.util.concurrent.Callable;
 import org.sweeptally.site.Site;
 import org.sweeptally.stream.Operator;
 import org.sweeptally.stream.OperatorSettings;
-import org.sweeptally.stream.OperatorStoppedException;
-import org.sweeptally.stream.SettingsRefusedException;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Mixin;
 import picocli.CommandLine.Option;
@@ -59,16 +57,9 @@ final class RunCommand implements Callable<Integer> {
         if (site.isEmpty()) {
             return Main.USAGE;
         }
-        try {
-            return run(new Operator(
-                    new OperatorSettings(site.get(), busOptions.topics(site.get()), busOptions.clients(), state),
-                    this::say));
-        } catch (SettingsRefusedException e) {
-            terminal.err().println("sweeptally: " + e.getMessage());
-            return Main.USAGE;
-        } catch (OperatorStoppedException e) {
-            throw new CommandFailedException(e.getMessage());
-        }
+        return run(new Operator(
+                new OperatorSettings(site.get(), busOptions.topics(site.get()), busOptions.clients(), state),
+                this::say));
     }
 
     private int run(Operator operator) throws InterruptedException {
@@ -78,7 +69,7 @@ final class RunCommand implements Callable<Integer> {
             operator.start();
             Optional<String> failure = operator.await();
             if (failure.isPresent()) {
-                throw new OperatorStoppedException(failure.get());
+                throw new CommandFailedException(failure.get());
             }
             return Main.DONE;
         } finally {

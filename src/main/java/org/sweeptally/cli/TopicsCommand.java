@@ -6,8 +6,6 @@ import java.util.Optional;
 import java.util.concurrent.Callable;
 import org.sweeptally.site.Site;
 import org.sweeptally.stream.ClientSettings;
-import org.sweeptally.stream.OperatorStoppedException;
-import org.sweeptally.stream.SettingsRefusedException;
 import org.sweeptally.stream.TopicNames;
 import org.sweeptally.stream.TopicPlan;
 import org.sweeptally.stream.TopicState;
@@ -57,17 +55,9 @@ final class TopicsCommand implements Callable<Integer> {
             return Main.USAGE;
         }
         if (partitions != null && partitions < 1) {
-            terminal.err().println("--partitions " + partitions + ": must be 1 or more");
-            return Main.USAGE;
+            throw new UsageException("--partitions " + partitions + ": must be 1 or more");
         }
-        try {
-            return run(site.get(), busOptions.clients());
-        } catch (SettingsRefusedException e) {
-            terminal.err().println("sweeptally: " + e.getMessage());
-            return Main.USAGE;
-        } catch (OperatorStoppedException e) {
-            throw new CommandFailedException(e.getMessage());
-        }
+        return run(site.get(), busOptions.clients());
     }
 
     private int run(Site site, ClientSettings clients) {

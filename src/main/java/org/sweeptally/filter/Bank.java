@@ -69,12 +69,4 @@ final class Bank {
     void changed() {
         overall = null;
     }
-
-    Bank copy() {
-        Gaussian[] copies = new Gaussian[densities.length];
-        for (int m = 0; m < copies.length; m++) {
-            copies[m] = densities[m] == null ? null : densities[m].copy();
-        }
-        return new Bank(weights.clone(), copies);
-    }
 }

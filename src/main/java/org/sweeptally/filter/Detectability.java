@@ -26,18 +26,42 @@ final class Detectability {
         this.timesMicros = timesMicros;
     }
 
-    /** The share of time that an object is detectable where the probability of detection is so. */
-    static double share(MissRuns runs, double probabilityOfDetection) {
-        return probabilityOfDetection / whenDetectable(runs, probabilityOfDetection);
+    /**
+     * What a look may find of an object.
+     *
+     * @param detectable     probability that the object is detectable
+     * @param whenDetectable probability that the look detects it then
+     * @param times          how many times as probable as on average detection is
+     */
+    record Prospect(double detectable, double whenDetectable, double times) {
+
+        /** Of a look that tells nothing of detectability: its misses have no runs, or it cannot see the object. */
+        static final Prospect AS_USUAL = new Prospect(Double.NaN, Double.NaN, 1);
+
+        boolean tells() {
+            return !Double.isNaN(detectable);
+        }
+
+        /** Probability that the object is detectable, if it exists and the look missed it. */
+        double thoughMissed() {
+            double missed = 1 - detectable * whenDetectable;
+            return missed > 0 ? detectable * (1 - whenDetectable) / missed : 0;
+        }
     }
 
-    /** Probability that a look detects a detectable object. */
-    static double whenDetectable(MissRuns runs, double probabilityOfDetection) {
-        return Math.max(runs.detectableProbability(), probabilityOfDetection);
+    /** @param onAverage probability that the look detects an object of which nothing else is known, at its place */
+    Prospect prospect(Scan scan, long timeMicros, double onAverage) {
+        MissRuns runs = scan.look().sensor().misses();
+        if (runs.hiddenSeconds() == 0 || onAverage == 0) {
+            return Prospect.AS_USUAL;
+        }
+        double whenDetectable = Math.max(runs.detectableProbability(), onAverage);
+        double share = onAverage / whenDetectable;
+        double detectable = at(scan.sensor(), timeMicros, share, runs);
+        return new Prospect(detectable, whenDetectable, detectable / share);
     }
 
-    /** Probability that the object is detectable for a sensor at a time; the share must be more than 0. */
-    double at(String sensor, long timeMicros, double share, MissRuns runs) {
+    private double at(String sensor, long timeMicros, double share, MissRuns runs) {
         int i = indexOf(sensor);
         if (i < 0) {
             return share;

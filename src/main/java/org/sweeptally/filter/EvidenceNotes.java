@@ -4,6 +4,7 @@ import java.util.ArrayList;
 import java.util.List;
 import java.util.SortedSet;
 import java.util.TreeSet;
+import org.sweeptally.filter.Detectability.Prospect;
 import org.sweeptally.filter.ObjectEvidence.Beginning;
 import org.sweeptally.filter.ObjectEvidence.Fate;
 import org.sweeptally.filter.ObjectEvidence.Gated;
@@ -35,8 +36,7 @@ final class EvidenceNotes {
         final List<Step> steps = new ArrayList<>();
         double noted;
         double detection = Double.NaN;
-        double detectable = Double.NaN;
-        double whenDetectable = Double.NaN;
+        Prospect prospect = Prospect.AS_USUAL;
         List<Gated> gated = List.of();
         Beginning beginning;
 
@@ -68,10 +68,7 @@ final class EvidenceNotes {
         for (int i = 0; i < notes.size(); i++) {
             Note note = notes.get(i);
             note.detection = hypotheses.detection(i);
-            if (hypotheses.tellsDetectability(i)) {
-                note.whenDetectable = hypotheses.whenDetectable(i);
-                note.detectable = note.detection / note.whenDetectable;
-            }
+            note.prospect = hypotheses.prospect(i);
             note.gated = gated(hypotheses, i, pairsOf);
             steps(hypotheses, i, note);
         }
@@ -180,6 +177,7 @@ final class EvidenceNotes {
         Identity identity = component.identity();
         Fate fate = recycled.contains(identity) ? Fate.RECYCLED : gone.contains(identity) ? Fate.LEFT : Fate.KEPT;
         return new ObjectEvidence(identity, note.before, note.steps, component.logOdds, note.detection,
-                note.detectable, note.whenDetectable, note.gated, note.beginning, fate, component.confirmed());
+                note.prospect.detectable(), note.prospect.whenDetectable(), note.gated, note.beginning, fate,
+                component.confirmed());
     }
 }

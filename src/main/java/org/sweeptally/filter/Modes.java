@@ -17,6 +17,21 @@ final class Modes {
     /** A mode less probable than this is let go; its profile's chain may bring it back. */
     private static final double LEAST_WEIGHT = 1e-9;
 
+    /** Below this share of the largest speed, a speed is not asked whether it is allowed. */
+    private static final double CLEARLY_ALLOWED = 0.5;
+
+    /** Makes the logistic function the normal distribution function, within 0.01 (Haley 1952, from memory). */
+    private static final double LOGISTIC_SCALE = 1.702;
+
+    /** Farther above the largest speed than so many standard deviations nothing more is known. */
+    private static final double CLEARLY_TOO_FAST_SIGMAS = 20;
+
+    /** Never 0, so that no scan ends all modes. */
+    private static final double LEAST_WITHIN_SPEED = 1e-15;
+
+    /** A density knows its speed no better than this, metres a second. */
+    private static final double LEAST_SPEED_SIGMA = 1e-3;
+
     private final List<MotionProfile> profiles;
     private final List<MotionMode> modes = new ArrayList<>();
     private final List<ModeChain> chains = new ArrayList<>();
@@ -42,10 +57,6 @@ final class Modes {
 
     int count() {
         return profileOf.length;
-    }
-
-    int profileOf(int mode) {
-        return profileOf[mode];
     }
 
     List<MotionProfile> profiles() {
@@ -203,16 +214,16 @@ final class Modes {
     }
 
     /**
-     * Probability that a density's speed is one that its profile has, by the Gaussian along its mean velocity; the
-     * normal distribution function as a logistic one, within 0.01 (Haley 1952, from memory). Never 0, so that no scan
-     * ends all modes.
+     * Probability that a density's speed is one that its profile has, by the Gaussian along its mean velocity. It
+     * weighs the mode after every scan: a craft that keeps close to its limit counts against its profile again and
+     * again.
      */
     private double withinSpeed(int mode, Gaussian density) {
         double largest = profiles.get(profileOf[mode]).largestSpeed();
         double east = density.mean.a3;
         double north = density.mean.a4;
         double squared = east * east + north * north;
-        if (squared <= 0.25 * largest * largest) {
+        if (squared <= CLEARLY_ALLOWED * CLEARLY_ALLOWED * largest * largest) {
             return 1;
         }
         double speed = Math.sqrt(squared);
@@ -220,7 +231,9 @@ final class Modes {
                         + 2 * east * north * density.covariance.a34
                         + north * north * density.covariance.a44)
                 / squared;
-        double sigmas = (speed - largest) / Math.sqrt(Math.max(variance, 1e-6));
-        return sigmas > 20 ? 1e-15 : 1 / (1 + StrictMath.exp(1.702 * sigmas));
+        double sigmas = (speed - largest) / Math.max(Math.sqrt(Math.max(0, variance)), LEAST_SPEED_SIGMA);
+        return sigmas > CLEARLY_TOO_FAST_SIGMAS
+                ? LEAST_WITHIN_SPEED
+                : 1 / (1 + StrictMath.exp(LOGISTIC_SCALE * sigmas));
     }
 }

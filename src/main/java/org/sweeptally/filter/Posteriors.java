@@ -1,8 +1,8 @@
 package org.sweeptally.filter;
 
 import java.util.ArrayList;
-import java.util.Arrays;
 import java.util.List;
+import org.sweeptally.filter.Detectability.Prospect;
 import org.sweeptally.model.Gaussian;
 import org.sweeptally.model.Measurement;
 
@@ -12,12 +12,6 @@ import org.sweeptally.model.Measurement;
  * associations. Components that share observations are first {@linkplain BestFit dealt out anew}.
  */
 final class Posteriors {
-
-    /** Detections used with less than this probability are not named in what is published. */
-    private static final double LEAST_USE = 0.01;
-
-    /** Two components are close if both caused one observation with at least this probability. */
-    private static final double LEAST_SHARED = 0.1;
 
     private final ScanHypotheses hypotheses;
     private final List<Component> components;
@@ -35,69 +29,13 @@ final class Posteriors {
     }
 
     void update() {
-        int[] crowdOf = crowds();
-        int[] sizes = new int[crowdOf.length];
-        for (int crowd : crowdOf) {
-            sizes[crowd]++;
-        }
-        for (int i = 0; i < crowdOf.length; i++) {
-            if (sizes[i] == 1) {
-                alone(i);
-            } else if (sizes[i] > 1) {
-                together(members(crowdOf, i, sizes[i]));
+        for (int[] members : Crowds.of(hypotheses)) {
+            if (members.length == 1) {
+                alone(members[0]);
+            } else {
+                together(members);
             }
         }
-    }
-
-    // Who is close to whom.
-
-    /** For each component the first one of its crowd: itself, if it shares no observation with an earlier one. */
-    private int[] crowds() {
-        int[] crowd = new int[components.size()];
-        int[] firstUser = new int[hypotheses.scan().observations().size()];
-        Arrays.fill(firstUser, -1);
-        for (int i = 0; i < crowd.length; i++) {
-            crowd[i] = i;
-            for (int pair = hypotheses.firstPair(i); pair < hypotheses.endPair(i); pair++) {
-                if (hypotheses.probability(pair) >= LEAST_SHARED) {
-                    int j = hypotheses.observationOf(pair);
-                    if (firstUser[j] < 0) {
-                        firstUser[j] = i;
-                    } else {
-                        unite(crowd, firstUser[j], i);
-                    }
-                }
-            }
-        }
-        for (int i = 0; i < crowd.length; i++) {
-            crowd[i] = root(crowd, i);
-        }
-        return crowd;
-    }
-
-    private static void unite(int[] crowd, int a, int b) {
-        int rootA = root(crowd, a);
-        int rootB = root(crowd, b);
-        crowd[Math.max(rootA, rootB)] = Math.min(rootA, rootB);
-    }
-
-    private static int root(int[] crowd, int i) {
-        int at = i;
-        while (crowd[at] != at) {
-            at = crowd[at];
-        }
-        return at;
-    }
-
-    private static int[] members(int[] crowdOf, int first, int count) {
-        int[] members = new int[count];
-        int at = 0;
-        for (int i = first; at < count; i++) {
-            if (crowdOf[i] == first) {
-                members[at++] = i;
-            }
-        }
-        return members;
     }
 
     // A component that nobody else's observations concern.
@@ -118,7 +56,7 @@ final class Posteriors {
         component.used = List.of();
         if (there > 0) {
             component.bank = sum.matched();
-            Uses uses = new Uses();
+            Uses uses = new Uses(hypotheses.scan());
             for (int pair = hypotheses.firstPair(i); pair < hypotheses.endPair(i); pair++) {
                 uses.add(hypotheses.observationOf(pair), hypotheses.probability(pair) / there);
             }
@@ -126,8 +64,8 @@ final class Posteriors {
             if (detected > 0.5 * there) {
                 component.history = component.history.detected(logTimeMicros);
             }
-            if (hypotheses.tellsDetectability(i)) {
-                double detectable = missedThere * hypotheses.detectableThoughMissed(i) + detected;
+            if (hypotheses.prospect(i).tells()) {
+                double detectable = missedThere * hypotheses.prospect(i).thoughMissed() + detected;
                 learn(component, detectable / there);
             }
         }
@@ -236,15 +174,14 @@ final class Posteriors {
         double absent = 0;
         double detected = 0;
         double detectable = 0;
-        Uses uses = new Uses();
+        Uses uses = new Uses(hypotheses.scan());
         int h = 0;
         while (h < pasts.count) {
             int owner = pasts.owners[h];
             double missed = shares[h][a] * pasts.there[h];
             absent += shares[h][a] * pasts.absent[h];
-            detectable += hypotheses.tellsDetectability(members[owner])
-                    ? missed * hypotheses.detectableThoughMissed(members[owner])
-                    : 0;
+            Prospect prospect = hypotheses.prospect(members[owner]);
+            detectable += prospect.tells() ? missed * prospect.thoughMissed() : 0;
             sum.add(missed, banks.get(owner));
             int first = h + 1;
             for (h = first; h < pasts.count && pasts.owners[h] == owner; h++) {
@@ -265,7 +202,7 @@ final class Posteriors {
             if (detected > 0.5 * there) {
                 component.history = component.history.detected(logTimeMicros);
             }
-            if (hypotheses.tellsDetectability(members[a])) {
+            if (hypotheses.prospect(members[a]).tells()) {
                 learn(component, (detectable + detected) / there);
             }
         }
@@ -321,57 +258,6 @@ final class Posteriors {
         @Override
         public Measurement measurement(int i) {
             return hypotheses.measurementOf(pair(i));
-        }
-    }
-
-    /** Which observations a component used, and how probably. */
-    private final class Uses {
-
-        private int[] observations = new int[8];
-        private double[] probabilities = new double[8];
-        private int count;
-
-        void add(int observation, double probability) {
-            for (int k = 0; k < count; k++) {
-                if (observations[k] == observation) {
-                    probabilities[k] += probability;
-                    return;
-                }
-            }
-            if (count == observations.length) {
-                observations = Arrays.copyOf(observations, 2 * count);
-                probabilities = Arrays.copyOf(probabilities, 2 * count);
-            }
-            int at = count++;
-            while (at > 0 && observations[at - 1] > observation) {
-                observations[at] = observations[at - 1];
-                probabilities[at] = probabilities[at - 1];
-                at--;
-            }
-            observations[at] = observation;
-            probabilities[at] = probability;
-        }
-
-        void divide(double by) {
-            for (int k = 0; k < count; k++) {
-                probabilities[k] /= by;
-            }
-        }
-
-        void into(Component component) {
-            List<Component.Use> used = new ArrayList<>();
-            for (int k = 0; k < count; k++) {
-                if (probabilities[k] >= LEAST_USE) {
-                    Observation observation = hypotheses.scan().observations().get(observations[k]);
-                    double probability = Math.min(1, probabilities[k]);
-                    used.add(new Component.Use(
-                            observation.part(), observation.index(), observation.id(), probability));
-                    if (observation.declared() != null) {
-                        component.history = component.history.declaredAs(observation.declared(), probability);
-                    }
-                }
-            }
-            component.used = List.copyOf(used);
         }
     }
 }

@@ -2,6 +2,7 @@ package org.sweeptally.filter;
 
 import java.util.Arrays;
 import java.util.List;
+import org.sweeptally.filter.Detectability.Prospect;
 import org.sweeptally.filter.association.Association;
 import org.sweeptally.filter.association.AssociationBounds;
 import org.sweeptally.filter.association.AssociationCounts;
@@ -9,7 +10,6 @@ import org.sweeptally.filter.association.AssociationMarginals;
 import org.sweeptally.filter.association.AssociationProblem;
 import org.sweeptally.model.Look;
 import org.sweeptally.model.Measurement;
-import org.sweeptally.model.MissRuns;
 
 /**
  * Which component may have caused which observation of a scan, and how probable each pair is in the light of all
@@ -43,8 +43,8 @@ final class ScanHypotheses {
      */
     private final double[] detection;
 
-    /** Probability that a look detects each component if it is detectable; 0 where misses have no runs here. */
-    private final double[] whenDetectable;
+    /** What the scan may find of each component, by what is known of its detectability. */
+    private final Prospect[] prospects;
 
     /** Probabilities of the modes given a pair, modes of one pair side by side. */
     private double[] modeShares = new double[64];
@@ -78,7 +78,7 @@ final class ScanHypotheses {
         existence = new double[components.size()];
         absence = new double[components.size()];
         detection = new double[components.size()];
-        whenDetectable = new double[components.size()];
+        prospects = new Prospect[components.size()];
         problem.clear();
         for (int j = 0; j < scan.observations().size(); j++) {
             problem.addColumn(clutter[j] + evidence.total(j));
@@ -107,7 +107,8 @@ final class ScanHypotheses {
         existence[i] = component.existence();
         absence[i] = LogOdds.complement(component.logOdds);
         double atPlace = Double.isNaN(constant) ? look.averageOver(component.density()) : constant;
-        double times = timesAsDetectable(component, i, atPlace);
+        prospects[i] = component.detectability.prospect(scan, logTimeMicros, atPlace);
+        double times = prospects[i].times();
         detection[i] = atPlace * times;
         problem.addRow(absence[i] + existence[i] * (1 - detection[i]));
         if (detection[i] == 0) {
@@ -133,17 +134,6 @@ final class ScanHypotheses {
             gate.modeShares(c, modeShares, at);
             problem.addPair(j, existence[i] * there * gate.likelihood(c));
         }
-    }
-
-    /** How many times as probable as usual detection is, by what is known of the component's detectability. */
-    private double timesAsDetectable(Component component, int i, double probabilityOfDetection) {
-        MissRuns runs = scan.look().sensor().misses();
-        if (runs.hiddenSeconds() == 0 || probabilityOfDetection == 0) {
-            return 1;
-        }
-        whenDetectable[i] = Detectability.whenDetectable(runs, probabilityOfDetection);
-        double share = Detectability.share(runs, probabilityOfDetection);
-        return component.detectability.at(scan.sensor(), logTimeMicros, share, runs) / share;
     }
 
     private void count(AssociationCounts counts) {
@@ -221,11 +211,6 @@ final class ScanHypotheses {
         return detection[i];
     }
 
-    /** Probability that the scan detects component i if it is detectable; 0 where misses have no runs here. */
-    double whenDetectable(int i) {
-        return whenDetectable[i];
-    }
-
     /** How much more probable a pair's observation is if component i exists than if nobody known caused it. */
     double likelihoodRatio(int i, int pair) {
         return problem.weight(pair) / existence[i] / problem.nobodyWeight(problem.column(pair));
@@ -243,15 +228,8 @@ final class ScanHypotheses {
         return low;
     }
 
-    /** Whether the scan tells anything of component i's detectability. */
-    boolean tellsDetectability(int i) {
-        return whenDetectable[i] > 0;
-    }
-
-    /** Probability that component i is detectable, given that it exists and was missed. */
-    double detectableThoughMissed(int i) {
-        double before = detection[i] / whenDetectable[i];
-        double missed = 1 - detection[i];
-        return missed > 0 ? before * (1 - whenDetectable[i]) / missed : 0;
+    /** What the scan may find of component i, by what is known of its detectability. */
+    Prospect prospect(int i) {
+        return prospects[i];
     }
 }

@@ -6,14 +6,12 @@ import java.util.List;
 import java.util.SortedMap;
 import java.util.SortedSet;
 import java.util.TreeMap;
+import org.sweeptally.filter.Detectability.Prospect;
 import org.sweeptally.geo.PlaneArea;
 import org.sweeptally.model.Gaussian;
 import org.sweeptally.model.Look;
 import org.sweeptally.model.Measurement;
-import org.sweeptally.model.MeasurementUpdate;
-import org.sweeptally.model.MissRuns;
 import org.sweeptally.model.MotionProfile;
-import org.sweeptally.model.PolarMeasurement;
 
 /**
  * The Poisson part: the intensity of objects that no component stands for. Never detected ones are in the grid; what is
@@ -25,12 +23,11 @@ final class Unseen {
     private final PlaneArea core;
     private double apronMetres;
     private final Counters counters;
-    private final MeasurementUpdate update = new MeasurementUpdate();
     private final BankGate gate = new BankGate();
 
     private FilterSettings settings;
     private Modes modes;
-    private BankSum sum;
+    private FirstSight sight;
 
     /** By profile. */
     private List<UnseenGrid> grids;
@@ -43,7 +40,7 @@ final class Unseen {
     Unseen(FilterSettings settings, Modes modes, PlaneArea core, double apronMetres, Counters counters) {
         this.settings = settings;
         this.modes = modes;
-        this.sum = new BankSum(modes);
+        this.sight = new FirstSight(modes);
         this.core = core;
         this.apronMetres = apronMetres;
         this.counters = counters;
@@ -77,7 +74,7 @@ final class Unseen {
         settings = changed;
         apronMetres = changedApronMetres;
         modes = changedModes;
-        sum = new BankSum(modes);
+        sight = new FirstSight(modes);
         if (otherKinds) {
             UnseenGrid all = before.get(0);
             before.subList(1, before.size()).forEach(all::add);
@@ -115,7 +112,7 @@ final class Unseen {
             double detection = scan.look().probabilityOfDetection(z);
             for (int p = 0; p < grids.size(); p++) {
                 double density = detection > 0 ? detection * grids.get(p).density(z.east(), z.north()) : 0;
-                evidence.addGrid(j, p, density > 0 && hasRangeRate(z) ? density * rangeRateRatio(z, p) : density);
+                evidence.addGrid(j, p, density > 0 ? density * sight.gridRatio(z, p) : density);
             }
         }
         for (int t = 0; t < terms.size(); t++) {
@@ -131,7 +128,11 @@ final class Unseen {
         Gaussian density = term.density();
         double everywhere = scan.look().constantNear(density.east(), density.north(), term.sigmaMetres);
         double atPlace = Double.isNaN(everywhere) ? scan.look().averageOver(density) : everywhere;
-        double times = timesAsDetectable(term, scan, logTimeMicros, atPlace);
+        Prospect prospect = term.detectability.prospect(scan, logTimeMicros, atPlace);
+        double times = prospect.times();
+        term.thoughMissed = prospect.tells()
+                ? term.detectability.with(scan.sensor(), prospect.thoughMissed(), logTimeMicros)
+                : term.detectability;
         term.detection = atPlace * times;
         if (term.detection == 0) {
             return;
@@ -152,93 +153,16 @@ final class Unseen {
         }
     }
 
-    /** How many times as probable as usual detection is, by what is known of the term's detectability. */
-    private static double timesAsDetectable(UnseenTerm term, Scan scan, long logTimeMicros, double atPlace) {
-        MissRuns runs = scan.look().sensor().misses();
-        term.thoughMissed = null;
-        if (runs.hiddenSeconds() == 0 || atPlace == 0) {
-            return 1;
-        }
-        double share = Detectability.share(runs, atPlace);
-        double detectable = term.detectability.at(scan.sensor(), logTimeMicros, share, runs);
-        double when = Detectability.whenDetectable(runs, atPlace);
-        double missed = 1 - detectable * when;
-        double thoughMissed = missed > 0 ? detectable * (1 - when) / missed : 0;
-        term.thoughMissed = term.detectability.with(scan.sensor(), thoughMissed, logTimeMicros);
-        return detectable / share;
-    }
-
     /** The bank of an object first seen by an observation: the unseen part, updated by it. */
     Bank firstSeen(Scan scan, UnseenEvidence evidence, int j) {
-        Measurement z = scan.observations().get(j).measurement();
-        sum.reset(z);
+        sight.begin(scan.observations().get(j).measurement());
         for (int p = 0; p < grids.size(); p++) {
-            addFromGrid(evidence.fromGrid(j, p), p, z);
+            sight.addGrid(evidence.fromGrid(j, p), p);
         }
         for (int pair = evidence.firstPair(j); pair < evidence.endPair(j); pair++) {
-            addTerm(evidence.value(pair), terms.get(evidence.term(pair)), z);
+            sight.addTerm(evidence.value(pair), terms.get(evidence.term(pair)).bank);
         }
-        return sum.matched();
-    }
-
-    /** Adds objects of a profile's grid; a range rate says how probable it is under each of the profile's modes. */
-    private void addFromGrid(double weight, int profile, Measurement z) {
-        double ratio = weight > 0 && hasRangeRate(z) ? rangeRateRatio(z, profile) : 1;
-        for (int m = modes.firstOf(profile); weight > 0 && m < modes.endOf(profile); m++) {
-            double speedSigma = speedSigma(profile, m);
-            double times = hasRangeRate(z) ? MeasurementUpdate.firstSeenRatio(z, speedSigma) / ratio : 1;
-            if (times > 0) {
-                sum.add(
-                        weight * modes.shareInProfile(m) * times, MeasurementUpdate.firstSeen(z, speedSigma), m);
-            }
-        }
-    }
-
-    /** What a range rate says for unseen objects of a profile, against a false detection. */
-    private double rangeRateRatio(Measurement z, int profile) {
-        double ratio = 0;
-        for (int m = modes.firstOf(profile); m < modes.endOf(profile); m++) {
-            ratio += modes.shareInProfile(m) * MeasurementUpdate.firstSeenRatio(z, speedSigma(profile, m));
-        }
-        return ratio;
-    }
-
-    private double speedSigma(int profile, int mode) {
-        return modes.moves(mode) ? modes.profiles().get(profile).speedSigma() : 0;
-    }
-
-    private static boolean hasRangeRate(Measurement z) {
-        return z instanceof PolarMeasurement polar && polar.hasRangeRate();
-    }
-
-    /** Adds a term updated by an observation. */
-    private void addTerm(double weight, UnseenTerm term, Measurement z) {
-        double[] likelihoods = new double[modes.count()];
-        double all = 0;
-        for (int m = 0; m < likelihoods.length; m++) {
-            if (term.bank.weights[m] > 0) {
-                update.prior(term.bank.densities[m]);
-                likelihoods[m] = update.measure(z) ? term.bank.weights[m] * update.likelihood() : 0;
-                all += likelihoods[m];
-            }
-        }
-        double total = all;
-        sum.add(term.bank, new BankSum.Pairs() {
-            @Override
-            public int count() {
-                return 1;
-            }
-
-            @Override
-            public double weight(int i, int mode) {
-                return total > 0 ? weight * (likelihoods[mode] / total) : 0;
-            }
-
-            @Override
-            public Measurement measurement(int i) {
-                return z;
-            }
-        });
+        return sight.bank();
     }
 
     /** The tag from which over half of the evidence for an observation comes, with its share; null if there is none. */
@@ -271,12 +195,13 @@ final class Unseen {
 
     /** Thins the unseen part by the look whose {@link #evidence} was taken, which could have detected what is in it. */
     void missed(Look look) {
+        double[] probability = grids.get(0).probabilityByCell(look);
         for (UnseenGrid grid : grids) {
-            grid.missed(look);
+            grid.missed(probability);
         }
         for (UnseenTerm term : terms) {
             term.weight *= 1 - term.detection;
-            term.detectability = term.thoughMissed == null ? term.detectability : term.thoughMissed;
+            term.detectability = term.thoughMissed;
         }
         terms.addAll(entering);
         entering.clear();
@@ -320,12 +245,12 @@ final class Unseen {
             fromGrid += perEvidence * evidence.fromGrid(j, p);
         }
         if (fromGrid >= settings.leastTermWeight()) {
-            sum.reset(z);
+            sight.begin(z);
             for (int p = 0; p < grids.size(); p++) {
-                addFromGrid(evidence.fromGrid(j, p), p, z);
+                sight.addGrid(evidence.fromGrid(j, p), p);
             }
             Detectability detectability = detected(Detectability.UNKNOWN, scan, logTimeMicros);
-            entering.add(new UnseenTerm(fromGrid, sum.matched(), detectability, fresh));
+            entering.add(new UnseenTerm(fromGrid, sight.bank(), detectability, fresh));
         } else {
             counters.add(Counters.Name.TERMS_TOO_LIGHT, 1);
             for (int p = 0; p < grids.size(); p++) {
@@ -340,12 +265,12 @@ final class Unseen {
                 deposit(z.east(), z.north(), weight, prior.bank);
             } else if (weight >= settings.leastTermWeight()) {
                 boolean taken = alive.contains(prior.tag.identity());
-                sum.reset(z);
-                addTerm(weight, prior, z);
-                if (sum.weight() > 0) {
+                sight.begin(z);
+                sight.addTerm(weight, prior.bank);
+                if (sight.weight() > 0) {
                     entering.add(new UnseenTerm(
                             weight,
-                            sum.matched(),
+                            sight.bank(),
                             detected(prior.detectability, scan, logTimeMicros),
                             taken ? fresh : prior.tag.detected(logTimeMicros)));
                 }

@@ -170,16 +170,18 @@ final class UnseenGrid {
         }
     }
 
-    /** Thins the grid by a look that could have detected what is in it. */
-    void missed(Look look) {
-        double[] probability = probabilityByCell(look);
+    /** Thins the grid by a look that could have detected what is in it with these probabilities, by cell. */
+    void missed(double[] probability) {
         for (int cell = 0; cell < mass.length; cell++) {
             mass[cell] *= 1 - probability[cell];
         }
     }
 
-    /** Probability of detection by cell, kept for as long as looks of the sensor see the same. */
-    private double[] probabilityByCell(Look look) {
+    /**
+     * Probability of detection by cell, kept for as long as looks of the sensor see the same; it is that of every grid
+     * of the same raster.
+     */
+    double[] probabilityByCell(Look look) {
         Seen before = seen.get(look.sensor().name());
         if (before != null && look.seesAs(before.look())) {
             return before.probability();

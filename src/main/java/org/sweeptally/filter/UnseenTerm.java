@@ -20,7 +20,7 @@ final class UnseenTerm {
     /** Probability that the scan at hand detects it, averaged over its density. */
     double detection;
 
-    /** What a miss of the scan at hand leaves of its detectability; null where it tells nothing. */
+    /** What a miss of the scan at hand leaves of its detectability. */
     Detectability thoughMissed;
 
     UnseenTerm(double weight, Bank bank, Detectability detectability, ObjectHistory tag) {

@@ -91,12 +91,7 @@ public record CoordinatedTurn(double degreesPerSecond, double accelerationNoise)
         p.a23 -= accelerationNoise * skew;
         p.a33 += accelerationNoise * velocity;
         p.a44 += accelerationNoise * velocity;
-        p.a21 = p.a12;
-        p.a31 = p.a13;
-        p.a41 = p.a14;
-        p.a32 = p.a23;
-        p.a42 = p.a24;
-        p.a43 = p.a34;
+        Gaussian.mirror(p);
     }
 
     private static double sineOverAngle(double angle) {

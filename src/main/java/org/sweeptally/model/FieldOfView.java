@@ -34,7 +34,7 @@ public final class FieldOfView {
 
     /**
      * @param position         of the sensor; not a number where it is beyond the plane's horizon, and then it sees
-     * nothing
+     *                         nothing
      * @param leastRangeMetres nearer than this it sees nothing
      * @param reachMetres      nor farther
      * @param sectors          that it looks into, in the plane; none for all around

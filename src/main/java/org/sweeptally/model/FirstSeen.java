@@ -93,12 +93,7 @@ final class FirstSeen {
         p.a33 -= c3 * c3 / variance;
         p.a34 -= c3 * c4 / variance;
         p.a44 -= c4 * c4 / variance;
-        p.a21 = p.a12;
-        p.a31 = p.a13;
-        p.a41 = p.a14;
-        p.a32 = p.a23;
-        p.a42 = p.a24;
-        p.a43 = p.a34;
+        Gaussian.mirror(p);
         rateRatio = 2 * largestRate * StrictMath.exp(-0.5 * innovation * gain)
                 / Math.sqrt(2 * StrictMath.PI * variance);
     }

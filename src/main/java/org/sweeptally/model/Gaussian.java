@@ -37,6 +37,16 @@ public final class Gaussian {
         return new Gaussian(new DMatrix4(mean), new DMatrix4x4(covariance));
     }
 
+    /** Copies the upper triangle of a covariance into the lower one. */
+    static void mirror(DMatrix4x4 p) {
+        p.a21 = p.a12;
+        p.a31 = p.a13;
+        p.a41 = p.a14;
+        p.a32 = p.a23;
+        p.a42 = p.a24;
+        p.a43 = p.a34;
+    }
+
     public double east() {
         return mean.a1;
     }

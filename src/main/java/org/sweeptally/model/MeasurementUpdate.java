@@ -240,11 +240,6 @@ public final class MeasurementUpdate {
         u.a33 = p.a33 - (k31 * c31 + k32 * c32);
         u.a34 = p.a34 - (k31 * c41 + k32 * c42);
         u.a44 = p.a44 - (k41 * c41 + k42 * c42);
-        u.a21 = u.a12;
-        u.a31 = u.a13;
-        u.a41 = u.a14;
-        u.a32 = u.a23;
-        u.a42 = u.a24;
-        u.a43 = u.a34;
+        Gaussian.mirror(u);
     }
 }

@@ -8,7 +8,7 @@ import java.util.List;
  *
  * @param name                        the site's word for it
  * @param share                       probability that an object new to the picture is of this kind; all profiles' sum
- * to 1
+ *                                    to 1
  * @param lifetimeSeconds             mean lifetime
  * @param speedSigma                  standard deviation of the velocity of unseen objects along each axis, metres a
  *                                    second; 0 for objects that never move

@@ -45,10 +45,6 @@ public record NearlyConstantVelocity(double accelerationNoise) implements Motion
         p.a24 += t * p.a44 + cross;
         p.a33 += velocity;
         p.a44 += velocity;
-        p.a21 = p.a12;
-        p.a31 = p.a13;
-        p.a41 = p.a14;
-        p.a32 = p.a23;
-        p.a42 = p.a24;
+        Gaussian.mirror(p);
     }
 }

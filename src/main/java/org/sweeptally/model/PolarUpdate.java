@@ -303,12 +303,7 @@ final class PolarUpdate {
         u.a33 = p.a33 - less(2, 2, rate);
         u.a34 = p.a34 - less(2, 3, rate);
         u.a44 = p.a44 - less(3, 3, rate);
-        u.a21 = u.a12;
-        u.a31 = u.a13;
-        u.a41 = u.a14;
-        u.a32 = u.a23;
-        u.a42 = u.a24;
-        u.a43 = u.a34;
+        Gaussian.mirror(u);
     }
 
     private double less(int i, int j, double rate) {

@@ -32,6 +32,12 @@ public final class BusSource implements RecordedSource {
     /** Rejects are looked for from so long before the snapshot was appended: other topics may have been slower. */
     private static final long REJECTS_BEFORE_MILLIS = 600_000;
 
+    /** Records of other regions, and marks of transactions, that may stand between a head and its pieces. */
+    private static final int RECORDS_BETWEEN = 16;
+
+    /** And so many times as far where that was not enough. */
+    private static final int FARTHER = 8;
+
     private final ClientSettings clients;
     private final TopicNames names;
     private final RegionPartitions regions;
@@ -124,14 +130,14 @@ public final class BusSource implements RecordedSource {
     /** The pieces stand before their head, close by. */
     private Snapshot assemble(BusPartition snapshots, ConsumerRecord<byte[], byte[]> headRecord) {
         SnapshotHead head = Wire.decode(headRecord.value(), SnapshotHead.class);
-        long back = head.getPieces() + 16;
+        long back = head.getPieces() + RECORDS_BETWEEN;
         while (true) {
             long from = Math.max(snapshots.begin(), headRecord.offset() - back);
             List<SnapshotPiece> pieces = pieces(snapshots, head, from, headRecord.offset());
             if (pieces.size() == head.getPieces() || from == snapshots.begin()) {
                 return new Snapshot(head, pieces);
             }
-            back *= 8;
+            back *= FARTHER;
         }
     }
 

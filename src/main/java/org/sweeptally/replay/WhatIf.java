@@ -21,7 +21,8 @@ import org.sweeptally.replay.ScanOutputs.Scan;
 
 /**
  * A machine under other settings beside the one that makes the record again: both get the same log, entry by entry, and
- * what they put out is compared scan by scan. Memory grows with the number of objects, not with the stretch.
+ * what they put out is compared scan by scan. Memory grows with the number of objects, and with scans that only one of
+ * the two puts out, not with the stretch.
  */
 final class WhatIf {
 

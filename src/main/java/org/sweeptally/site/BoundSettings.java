@@ -16,7 +16,7 @@ package org.sweeptally.site;
  * @param snapshotSeconds      time by the ticks of a region between two snapshots, where scans are fewer or wait
  * @param leastTermWeight      expected objects below which a weak new object goes to the grid at once
  * @param gatedPairs           pairs of a scan's detections with the components, and with the unseen terms, in whose
- * gates
+ *                             gates
  *                             they lie
  */
 public record BoundSettings(

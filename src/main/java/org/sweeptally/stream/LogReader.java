@@ -13,7 +13,7 @@ public interface LogReader {
      * missing: the bus uses some for itself.
      *
      * @param toInclusive {@code from - 1} where there is nothing to hand over; that the log goes on there is checked
-     * all
+     *                    all
      *                    the same
      * @return how many records were handed over
      * @throws OperatorStoppedException if the log no longer reaches back so far, ends before, or cannot be read

@@ -41,11 +41,7 @@ final class ScanScene {
     private final byte[] state;
 
     ScanScene(int objects, long seed) {
-        this(objects, seed, SceneSight.DISC);
-    }
-
-    ScanScene(int objects, long seed, SceneSight sight) {
-        this(objects, seed, sight, SceneMotion.STRAIGHT);
+        this(objects, seed, SceneSight.DISC, SceneMotion.STRAIGHT);
     }
 
     ScanScene(int objects, long seed, SceneSight sight, SceneMotion motion) {

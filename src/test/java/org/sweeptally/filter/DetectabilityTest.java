@@ -11,6 +11,7 @@ import java.util.SplittableRandom;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.CsvSource;
+import org.sweeptally.demo.Chance;
 import org.sweeptally.geo.PlanePoint;
 import org.sweeptally.model.ClutterLearning;
 import org.sweeptally.model.DetectionProfile;
@@ -99,7 +100,7 @@ class DetectabilityTest {
     void anObjectHiddenForAMinuteKeepsItsIdentity() {
         FilterScene scene = new FilterScene(4000, 200, 8000);
         for (long seed = 1; seed <= 10; seed++) {
-            SplittableRandom random = new SplittableRandom(seed);
+            Chance chance = new Chance(new SplittableRandom(seed));
             ObjectFilter filter = scene.filter(FilterScene.settings());
             SensorModel sensor = new SensorModel(
                     "mast", 8000, DetectionProfile.constant(0.8), 20, new MissRuns(60, 0.95), ClutterLearning.OFF);
@@ -108,10 +109,10 @@ class DetectabilityTest {
             for (int k = 0; k <= 60; k++) {
                 double seconds = 2.5 * k;
                 boolean hidden = seconds > 60 && seconds <= 120;
-                double east = -300 + 4 * seconds + 15 * gaussian(random);
-                double north = 100 + 15 * gaussian(random);
-                double clutterEast = 4000 * (random.nextDouble() - 0.5);
-                double clutterNorth = 4000 * (random.nextDouble() - 0.5);
+                double east = -300 + 4 * seconds + 15 * chance.gaussian();
+                double north = 100 + 15 * chance.gaussian();
+                double clutterEast = chance.between(-2000, 2000);
+                double clutterNorth = chance.between(-2000, 2000);
                 long micros = Math.round(seconds * 1e6);
                 filter.predict(k == 0 ? 0 : 2.5);
                 filter.update(
@@ -133,11 +134,6 @@ class DetectabilityTest {
                 .filter(c -> Math.abs(c.density().east() - east) < 60 && Math.abs(c.density().north() - north) < 60)
                 .findFirst()
                 .orElseThrow(() -> new AssertionError("nothing shown near " + east + ", " + north));
-    }
-
-    private static double gaussian(SplittableRandom random) {
-        double u = 1 - random.nextDouble();
-        return Math.sqrt(-2 * StrictMath.log(u)) * StrictMath.cos(2 * StrictMath.PI * random.nextDouble());
     }
 
     private static double existenceAfterMisses(MissRuns runs, int misses) {

@@ -107,7 +107,7 @@ class ShadowTest {
         Look look = look(List.of(half));
         for (int scan = 0; scan < 240; scan++) {
             grid.predict(still, still.profiles().get(0), PERIOD);
-            grid.missed(look);
+            grid.missed(grid.probabilityByCell(look));
         }
         // Mean of an M/M/infinity queue from empty, Takacs 1962 (from memory).
         double unseen = births * lifetime * (1 - Math.exp(-240 * PERIOD / lifetime));
@@ -139,7 +139,7 @@ class ShadowTest {
     private double thinned(List<PlaneArea> shadows) {
         UnseenGrid grid = new UnseenGrid(settings, scene.core(), scene.apronMetres());
         grid.fill(1e-6);
-        grid.missed(look(shadows));
+        grid.missed(grid.probabilityByCell(look(shadows)));
         return grid.total();
     }
 }

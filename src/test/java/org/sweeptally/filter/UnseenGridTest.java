@@ -78,7 +78,7 @@ class UnseenGridTest {
         Look look = scene.look(0.8, 1e-6);
         UnseenGrid grid = new UnseenGrid(still, scene.core(), 0);
         grid.fill(1e-6);
-        grid.missed(look);
+        grid.missed(grid.probabilityByCell(look));
         assertThat(grid.density(0, 0)).isCloseTo(0.2e-6, within(1e-18));
         assertThat(grid.density(900, 900)).isCloseTo(1e-6, within(1e-18));
         double seenArea = Math.PI * 400 * 400;
@@ -95,7 +95,7 @@ class UnseenGridTest {
         UnseenGrid grid = new UnseenGrid(steady, scene.core(), 0);
         Look look = scene.look(0.9, 1e-6);
         for (int k = 0; k < 50; k++) {
-            grid.missed(look);
+            grid.missed(grid.probabilityByCell(look));
             grid.predict(steady, steady.profiles().get(0), 1);
         }
         assertThat(grid.density(0, 0) * 4e6).isCloseTo(0.110987791342953, within(1e-12));

@@ -1,7 +1,6 @@
 package org.sweeptally.stream;
 
 import static org.assertj.core.api.Assertions.assertThat;
-import static org.assertj.core.api.Assertions.within;
 
 import com.fasterxml.jackson.databind.JsonNode;
 import com.fasterxml.jackson.databind.ObjectMapper;
@@ -283,6 +282,7 @@ class ReplayOnBusTest {
         Run run = onBus("replay", "--from", Times.text(FROM), "--to", Times.text(TO), "--explain", object, "--out",
                 out.toString());
         assertThat(run.exitCode).as(run.out + run.err).isZero();
+        // Rejects have no log time: those since the snapshot count, and when that was taken depends on the clock.
         assertThat(run.out).containsPattern("reproduced (3\\d\\d) of \\1 records bit for bit");
         String text = Files.readString(out.resolve("east-side").resolve(object + ".txt"));
         System.out.println("ReplayOnBusTest: " + text.lines().limit(30).collect(Collectors.joining("\n")));
@@ -336,11 +336,7 @@ class ReplayOnBusTest {
                     means.add(numbers.get("changedMean").asDouble());
                 }
             }
-            // What neighbours said is as it was recorded; where it differs, a sum may run in another order.
-            assertThat(means).as(region).hasSameSizeAs(expected);
-            for (int i = 0; i < means.size(); i++) {
-                assertThat(means.get(i)).as("%s, scan %s", region, i).isCloseTo(expected.get(i), within(1e-9));
-            }
+            assertThat(means).as(region).isEqualTo(expected);
         }
         assertThat(Files.readAllLines(out.resolve("existence.ndjson"))).isNotEmpty();
     }

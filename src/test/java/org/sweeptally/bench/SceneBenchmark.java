@@ -15,17 +15,23 @@ import org.openjdk.jmh.annotations.State;
 import org.openjdk.jmh.annotations.Warmup;
 import org.sweeptally.filter.ObjectFilter;
 
-/** One scan of a region with 1,000 objects, by how its objects are said to move. What counts are ratios to STRAIGHT. */
+/**
+ * One scan of a region with 1,000 objects, by what is said of what its sensor sees and of how its objects
+ * move. What counts are ratios to DISC and STRAIGHT; a case is chosen by {@code -p sight=RUNS -p motion=STRAIGHT}.
+ */
 @State(Scope.Thread)
 @BenchmarkMode(Mode.AverageTime)
 @OutputTimeUnit(TimeUnit.MICROSECONDS)
 @Warmup(iterations = 5, time = 1)
 @Measurement(iterations = 10, time = 1)
 @Fork(value = 1, jvmArgsAppend = "-Xmx2g")
-public class MotionBenchmark {
+public class SceneBenchmark {
+
+    @Param({"DISC", "CHARTED", "LEARNING", "RUNS"})
+    public SceneSight sight = SceneSight.DISC;
 
     @Param({"STRAIGHT", "RESTLESS", "TURNING", "TWO_KINDS"})
-    public SceneMotion motion;
+    public SceneMotion motion = SceneMotion.STRAIGHT;
 
     public int objects = 1000;
 
@@ -34,7 +40,7 @@ public class MotionBenchmark {
 
     @Setup(Level.Trial)
     public void scene() {
-        scene = new ScanScene(objects, 1, SceneSight.DISC, motion);
+        scene = new ScanScene(objects, 1, sight, motion);
     }
 
     @Setup(Level.Invocation)
